@@ -1,0 +1,206 @@
+package spec
+
+// Spec is one cam, read and complete: defaults filled in, times turned into
+// angles. Lengths are in Units, angles in degrees.
+type Spec struct {
+	File   string // as the user named it, for messages
+	SHA256 string // of the spec's bytes and of every file it names, hexadecimal
+
+	Part, Title, Revision string
+	Units                 Units
+	Camshaft              Camshaft
+	Motion                Motion
+	Follower              Follower
+	Cam                   Cam
+	Limits                Limits
+	Tolerance             Tolerance
+	Blank                 *Blank
+	Operations            []Operation
+	Control               Control
+
+	Material, Hardness, Finish, Drawn, Checked, Date string
+	Notes                                            []string
+}
+
+// Units is the unit of length of a spec.
+type Units string
+
+const (
+	MM   Units = "mm"
+	Inch Units = "inch"
+)
+
+// Short returns "mm" or "in".
+func (u Units) Short() string {
+	if u == Inch {
+		return "in"
+	}
+	return "mm"
+}
+
+// Camshaft turns at a constant speed.
+type Camshaft struct {
+	Speed     float64 // rpm, above 0
+	Clockwise bool    // as seen on the marked face; else counterclockwise
+}
+
+// Place is where something stands in the spec, from 1.
+type Place struct{ Line, Column int }
+
+// Motion is the specification of the lift; Events is set.
+type Motion struct {
+	StartAt   float64 // cam angle where the first event begins, degrees, 0 <= StartAt < 360
+	StartLift float64 // lift at the start of the first event, length
+	Events    []Event
+	Place     Place
+}
+
+// EventKind says what an event does.
+type EventKind string
+
+const (
+	Dwell EventKind = "dwell"
+	Rise  EventKind = "rise"
+	Fall  EventKind = "fall"
+)
+
+// Event is one stretch of the motion.
+type Event struct {
+	Kind  EventKind
+	Lift  float64 // length, positive for rise and fall; 0 for a dwell
+	Over  float64 // degrees of cam angle, above 0
+	Law   Law     // rise and fall
+	Timed bool    // Over was given as a time
+	Place Place
+}
+
+// Law names a motion law with its parameters.
+type Law struct {
+	Name                   string  // a contract name, or "trigonometric" for the general family
+	ConstantShare          float64 // modified-constant-velocity; default 0.5
+	Sine, Constant, Cosine float64 // trigonometric: shares of the angle, sum 1
+	Place                  Place
+}
+
+// Follower is the follower; this version knows Kind "translating-roller".
+type Follower struct {
+	Kind           string
+	RollerDiameter float64 // length
+	Offset         float64 // length, positive towards +Y
+	Place          Place
+}
+
+// Cam is the body of the cam; this version knows Kind "plate".
+type Cam struct {
+	Kind            string
+	BaseRadius      float64 // length
+	Thickness       float64 // length
+	Bore            *Bore   // nil when there is none
+	Holes           []Hole
+	OutsideDiameter float64 // length, 0 when not given
+	NoDatum         bool    // `datum: none` was said outright
+	Place           Place
+}
+
+// Bore is the hole about the camshaft axis.
+type Bore struct {
+	Diameter float64 // length
+	Fit      string
+	Keyway   *Keyway // nil when there is none
+	Place    Place
+}
+
+// Keyway is a hub keyway: Depth is measured on its center line from the bore circle.
+type Keyway struct {
+	Width, Depth float64 // length
+	At           float64 // polar angle of its center line, degrees
+	Fit          string
+	Place        Place
+}
+
+// Hole is a round through hole.
+type Hole struct {
+	Diameter, Radius float64 // length; Radius from the camshaft axis to its center
+	At               float64 // polar angle, degrees
+	Place            Place
+}
+
+// Limits hold what the spec limits; nil means not limited.
+type Limits struct {
+	PressureAngle       float64  // degrees; filled with the default
+	PressureAngleReturn *float64 // degrees
+	RadiusOfCurvature   *float64 // length, least convex radius of the contour
+	Velocity            *float64 // length/s
+	Acceleration        *float64 // length/s²
+	Jerk                *float64 // length/s³
+	Wall                *float64 // length
+}
+
+// Tolerance is the error budget as asked for.
+type Tolerance struct {
+	Profile      float64  // length, total width of the profile zone
+	Chord        float64  // length; 0 when left out
+	Acceleration *float64 // share of the design's peak, 0.1 for 10%
+	VelocityStep *float64 // length/s
+	MachineTool  *MachineTool
+	Combine      string // "fixed+rss", "worst" or "rss"; default "fixed+rss"
+	Place        Place
+}
+
+// MachineTool holds the machine's errors, each plus or minus on the contour, length.
+type MachineTool struct{ Resolution, Positioning, Runout, Tool float64 }
+
+// Blank is the disk the cam is cut from.
+type Blank struct {
+	Diameter    float64 // length
+	ClampRadius float64 // length, 0 when not given
+	Place       Place
+}
+
+// Operation is one program.
+type Operation struct {
+	Process string // "mill", "grind" or "wire"
+	Axes    string // "xy"; default "xy"
+
+	Tool         int     // tool number, default 1
+	ToolDiameter float64 // length, mill and grind
+	SpindleSpeed float64 // rpm
+	Feed         float64 // length/min
+	PlungeFeed   float64 // length/min
+	StepDown     float64 // length; 0 means full depth
+	Stock        []float64
+	Compensation string   // "path", "wear" or "control"; default "path"
+	Direction    string   // "climb" or "conventional"; default "climb"
+	StartAt      *float64 // start_at_cam_angle, degrees; nil for the default place
+	Moves        string   // "arcs" or "lines"; default "arcs"
+
+	WireDiameter float64 // length
+	Offsets      []float64
+	Tab          *Tab
+	StartHole    *StartHole
+
+	Place Place
+}
+
+// Tab holds the part in the blank while the wire roughs and skims it.
+type Tab struct {
+	Width float64 // length along the contour
+	At    float64 // polar angle, degrees
+}
+
+// StartHole is where the wire is threaded.
+type StartHole struct {
+	Radius float64 // length from the camshaft axis
+	At     float64 // polar angle, degrees
+}
+
+// Control describes the NC control that will read the programs.
+type Control struct {
+	Decimals     int     // default 3 mm, 4 inch
+	AbsoluteArcs bool    // arc_center: absolute; default incremental
+	ArcMismatch  float64 // length; default 0.002 mm, 0.0002 inch
+	BlockNumbers bool    // default true
+	MaxBlocks    int     // 0 when not limited
+	SafeZ        float64 // length above the top of the blank; default 5 mm, 0.2 inch
+	Place        Place
+}

@@ -1,0 +1,162 @@
+// Package synth turns a spec into an exact cam: the motion, the pitch curve, the
+// contour and every parallel curve as functions of the cam angle, and the gates
+// that judge them. No polyline stands in for a curve anywhere.
+package synth
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/synth/follower"
+	"lobewright/synth/motion"
+	"lobewright/synth/plane"
+	"lobewright/synth/spec"
+	"lobewright/synth/taylor"
+)
+
+// Cam is a plate cam with its follower, complete and not changed after Build.
+type Cam struct {
+	spec     *spec.Spec
+	cycle    *motion.Cycle
+	zones    []motion.Zone
+	lift     lift
+	follower follower.TranslatingRoller
+}
+
+// lift is the completed motion as series in the cam angle in degrees, by zone.
+type lift interface {
+	F(zone int, deg taylor.F) taylor.F
+	I(zone int, deg taylor.I) taylor.I
+}
+
+// zoneLift evaluates zones of polynomial plus sinusoids.
+type zoneLift []motion.Zone
+
+func (z zoneLift) F(zone int, deg taylor.F) taylor.F { return motion.Eval(z[zone], deg) }
+func (z zoneLift) I(zone int, deg taylor.I) taylor.I { return motion.Eval(z[zone], deg) }
+
+// Vocabulary tells the spec reader which laws and kinds exist, and how fast a
+// law starts and ends.
+func Vocabulary() spec.Vocabulary {
+	return spec.Vocabulary{
+		Laws:      motion.Names(),
+		Followers: []string{"translating-roller"},
+		Cams:      []string{"plate"},
+		Processes: []string{"mill", "wire"},
+		ShareLaws: []string{"modified-constant-velocity"},
+		EndSpeeds: func(l spec.Law) (start, end float64) {
+			law, err := lawOf(l)
+			if err != nil {
+				return 0, 0 // the reader has already said what is wrong with the law
+			}
+			return law.EndSpeeds()
+		},
+	}
+}
+
+func lawOf(l spec.Law) (motion.Law, error) {
+	if l.Name == "trigonometric" {
+		return motion.Trigonometric(l.Sine, l.Constant, l.Cosine)
+	}
+	return motion.Named(l.Name, l.ConstantShare)
+}
+
+func kindOf(k spec.EventKind) motion.Kind {
+	switch k {
+	case spec.Rise:
+		return motion.Rise
+	case spec.Fall:
+		return motion.Fall
+	}
+	return motion.Dwell
+}
+
+// Build completes the cam of a spec. It fails only where the spec contradicts
+// itself in a way its reader cannot see.
+func Build(s *spec.Spec) (*Cam, error) {
+	events := make([]motion.Event, len(s.Motion.Events))
+	for i, e := range s.Motion.Events {
+		events[i] = motion.Event{Kind: kindOf(e.Kind), Lift: e.Lift, Over: e.Over}
+		if e.Kind == spec.Dwell {
+			continue
+		}
+		law, err := lawOf(e.Law)
+		if err != nil {
+			return nil, fmt.Errorf("%s:%d:%d: %w", s.File, e.Law.Place.Line, e.Law.Place.Column, err)
+		}
+		events[i].Law = law
+	}
+	cycle, err := motion.Join(s.Motion.StartAt, s.Motion.StartLift, events)
+	if err != nil {
+		return nil, fmt.Errorf("%s:%d:%d: %w", s.File, s.Motion.Place.Line, s.Motion.Place.Column, err)
+	}
+	f, ok := follower.NewTranslatingRoller(s.Cam.BaseRadius, s.Follower.RollerDiameter/2, s.Follower.Offset, s.Camshaft.Clockwise)
+	if !ok {
+		return nil, fmt.Errorf("%s:%d:%d: follower.offset %g reaches past the prime circle of radius %g; make it smaller",
+			s.File, s.Follower.Place.Line, s.Follower.Place.Column, s.Follower.Offset, s.Cam.BaseRadius+s.Follower.RollerDiameter/2)
+	}
+	zones := cycle.Zones()
+	return &Cam{spec: s, cycle: cycle, zones: zones, lift: zoneLift(zones), follower: f}, nil
+}
+
+// Cycle returns the completed motion.
+func (c *Cam) Cycle() *motion.Cycle { return c.cycle }
+
+// Follower returns the follower.
+func (c *Cam) Follower() follower.TranslatingRoller { return c.follower }
+
+// Prime returns the radius of the prime circle, length.
+func (c *Cam) Prime() float64 { return c.spec.Cam.BaseRadius + c.follower.RollerRadius }
+
+// Omega returns the camshaft's speed in rad/s.
+func (c *Cam) Omega() float64 { return c.spec.Camshaft.Speed * math.Pi / 30 }
+
+// outward returns +1 when the outside of the cam lies to the left of travel: a
+// cam that turns clockwise has its curves run counterclockwise, outside to the right.
+func (c *Cam) outward() float64 {
+	if c.follower.Clockwise {
+		return -1
+	}
+	return 1
+}
+
+// Pitch returns the curve of the roller center.
+func (c *Cam) Pitch() *Curve { return c.curve(0) }
+
+// Contour returns the curve that is cut.
+func (c *Cam) Contour() *Curve { return c.Parallel(0) }
+
+// Parallel returns the curve at a distance outside the contour, length.
+func (c *Cam) Parallel(outside float64) *Curve { return c.curve(c.LeftOfPitch(outside)) }
+
+// LeftOfPitch turns a distance outside the contour into one to the left of the pitch curve's travel.
+func (c *Cam) LeftOfPitch(outside float64) float64 {
+	return c.outward() * (outside - c.follower.RollerRadius)
+}
+
+// OutsideIsLeft reports whether the outside of the cam lies to the left of travel with growing cam angle.
+func (c *Cam) OutsideIsLeft() bool { return c.outward() > 0 }
+
+// Lift is the motion at one cam angle: length, and length per radian, radian²,
+// radian³.
+type Lift struct{ S, V, A, J float64 }
+
+// LiftIn returns the motion at cam angle t, in degrees, of a zone.
+func (c *Cam) LiftIn(zone int, t float64) Lift {
+	const rad = 180 / math.Pi
+	f := c.liftF(zone, t)
+	return Lift{f.Deriv(0), f.Deriv(1) * rad, f.Deriv(2) * rad * rad, f.Deriv(3) * rad * rad * rad}
+}
+
+// LiftAt returns the motion at any cam angle in degrees; at a junction, of the
+// zone that begins there.
+func (c *Cam) LiftAt(deg float64) Lift {
+	zone, t := c.cycle.Zone(deg)
+	return c.LiftIn(zone, t)
+}
+
+// PressureAngleIn returns the pressure angle at cam angle t, in degrees, of a zone.
+func (c *Cam) PressureAngleIn(zone int, t float64) plane.Angle {
+	l := c.LiftIn(zone, t)
+	return c.follower.PressureAngle(l.S, l.V)
+}

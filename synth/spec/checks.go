@@ -1,0 +1,88 @@
+package spec
+
+import (
+	"fmt"
+	"math"
+)
+
+// Checks that compare keys with one another. Each is made only when the values
+// it compares were read without a fault, so that one mistake gives one message.
+
+// check makes the checks of the body, the blank and the operations.
+func (r *reader) check(s *Spec) {
+	r.checkBody(s)
+	r.checkBlank(s)
+	for i := range s.Operations {
+		path := fmt.Sprintf("operations[%d]", i+1)
+		switch op := &s.Operations[i]; op.Process {
+		case "mill":
+			r.checkStock(path+".stock", op.Stock)
+		case "wire":
+			r.checkWire(path, s, op)
+		}
+	}
+}
+
+func (r *reader) checkBody(s *Spec) {
+	c := s.Cam
+	if b := c.Bore; b != nil && r.ok("cam.bore.diameter", "cam.base_radius") && b.Diameter/2 >= c.BaseRadius {
+		r.faultAt("cam.bore.diameter", Fault{Found: figure(b.Diameter), Allowed: "a bore smaller than the base circle, whose diameter is " + figure(2*c.BaseRadius)})
+	}
+	if b := c.Bore; b != nil && b.Keyway != nil && r.ok("cam.bore.diameter", "cam.bore.keyway.width") && b.Keyway.Width >= b.Diameter {
+		r.faultAt("cam.bore.keyway.width", Fault{Found: figure(b.Keyway.Width), Allowed: "a keyway narrower than the bore, whose diameter is " + figure(b.Diameter)})
+	}
+	prime := c.BaseRadius + s.Follower.RollerDiameter/2
+	if r.ok("follower.offset", "follower.roller_diameter", "cam.base_radius") && math.Abs(s.Follower.Offset) >= prime {
+		r.faultAt("follower.offset", Fault{Found: figure(s.Follower.Offset),
+			Allowed: "an offset smaller than the prime radius (base radius and roller radius), which is " + figure(prime)})
+	}
+}
+
+func (r *reader) checkBlank(s *Spec) {
+	b := s.Blank
+	if b == nil {
+		if len(s.Operations) > 0 && r.ok("blank") {
+			r.faultAtKey("operations", Fault{Found: "operations without a blank", Allowed: "a map of keys: diameter, clamp_radius",
+				Advice: "add blank: {diameter: }, the disk the cam is cut from"})
+		}
+		return
+	}
+	if r.ok("blank.diameter", "cam.base_radius") && b.Diameter/2 <= s.Cam.BaseRadius {
+		r.faultAt("blank.diameter", Fault{Found: figure(b.Diameter), Allowed: "a blank larger than the base circle, whose diameter is " + figure(2*s.Cam.BaseRadius)})
+	}
+	if r.ok("blank.diameter", "blank.clamp_radius") && b.ClampRadius >= b.Diameter/2 {
+		r.faultAt("blank.clamp_radius", Fault{Found: figure(b.ClampRadius), Allowed: "a clamp within the blank, whose radius is " + figure(b.Diameter/2)})
+	}
+}
+
+func (r *reader) checkStock(path string, stock []float64) {
+	if !r.ok(path) {
+		return
+	}
+	for i := 1; i < len(stock); i++ {
+		if stock[i] > stock[i-1] {
+			r.faultAt(fmt.Sprintf("%s[%d]", path, i+1), Fault{Found: figure(stock[i]) + " after " + figure(stock[i-1]),
+				Allowed: "stock that does not grow from pass to pass", Advice: "put the finishing pass last"})
+		}
+	}
+}
+
+func (r *reader) checkWire(path string, s *Spec, op *Operation) {
+	if offsets := path + ".offsets"; r.ok(offsets, path+".wire_diameter") {
+		for i, off := range op.Offsets {
+			at := fmt.Sprintf("%s[%d]", offsets, i+1)
+			if off < op.WireDiameter/2 {
+				r.faultAt(at, Fault{Found: figure(off), Allowed: "at least the wire's radius, which is " + figure(op.WireDiameter/2),
+					Advice: "offsets are from the wire's center to the contour"})
+			}
+			if i > 0 && off >= op.Offsets[i-1] {
+				r.faultAt(at, Fault{Found: figure(off) + " after " + figure(op.Offsets[i-1]),
+					Allowed: "offsets that become smaller from pass to pass", Advice: "put the last skim pass last"})
+			}
+		}
+	}
+	if hole := path + ".start_hole.radius"; op.StartHole != nil && r.ok(hole, "cam.base_radius") && op.StartHole.Radius <= s.Cam.BaseRadius {
+		r.faultAt(hole, Fault{Found: figure(op.StartHole.Radius), Allowed: "a start hole outside the base circle, whose radius is " + figure(s.Cam.BaseRadius),
+			Advice: "the wire starts in the waste beside the contour"})
+	}
+}

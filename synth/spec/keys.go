@@ -1,0 +1,237 @@
+package spec
+
+// The keys of the format, in the order a spec is written in.
+
+// formatVersion is the only value of the key lobewright.
+const formatVersion = 1
+
+// Bounds of the numbers of the format. They are wider than any cam and keep
+// absurd figures (and the overflow that follows them) out of the geometry.
+const (
+	leastLength = 1e-6 // one step of the DXF grid
+	mostLength  = 1e4
+	mostRate    = 1e12 // limits of velocity, acceleration and jerk
+	mostSpeed   = 1e6  // rpm, length/min
+)
+
+func length() span     { return span{noun: "a length", lo: leastLength, hi: mostLength} }
+func orNoLength() span { return span{noun: "a length", lo: 0, hi: mostLength} }
+func eitherWay() span  { return span{noun: "a length", lo: -mostLength, hi: mostLength} }
+func rpm() span        { return span{noun: "a speed in rpm", lo: 0, hi: mostSpeed, above: true} }
+func perMinute() span  { return span{noun: "a feed in length/min", lo: 0, hi: mostSpeed, above: true} }
+func rate(unit string) span {
+	return span{noun: "a number in length/" + unit, lo: 0, hi: mostRate, above: true}
+}
+func camAngle() span {
+	return span{noun: "a cam angle in degrees", lo: 0, hi: 360, below: true}
+}
+func polarAngle() span {
+	return span{noun: "a polar angle in degrees", lo: -360, hi: 360}
+}
+func pressure() span {
+	return span{noun: "an angle in degrees", lo: 0, hi: 90, above: true, below: true}
+}
+func share() span { return span{noun: "a share", lo: 0, hi: 1} }
+
+func specTable(v Vocabulary) table[Spec] {
+	return table[Spec]{what: "a spec", fields: []field[Spec]{
+		integer("lobewright", "version of this format: 1", formatVersion, formatVersion, func(*Spec) *int { return new(int) }).required(),
+		partField(),
+		text("title", "free text for the drawing and the sheet, any language", func(s *Spec) *string { return &s.Title }),
+		text("revision", "revision of the part, free text", func(s *Spec) *string { return &s.Revision }),
+		choice("units", "unit of every length in the spec", []string{string(MM), string(Inch)}, nil,
+			func(s *Spec, w string) { s.Units = Units(w) }).required(),
+		child("camshaft", "how the camshaft turns", camshaftTable(), func(s *Spec) *Camshaft { return &s.Camshaft }).required(),
+		child("motion", "the lift over the cam angle", motionTable(v), func(s *Spec) *Motion { return &s.Motion }).required(),
+		child("follower", "the follower", followerTable(v), func(s *Spec) *Follower { return &s.Follower }).required(),
+		child("cam", "the body of the cam", camTable(v), func(s *Spec) *Cam { return &s.Cam }).required(),
+		child("limits", "what the motion and the contour must keep", limitsTable(), func(s *Spec) *Limits { return &s.Limits }),
+		child("tolerance", "the error budget", toleranceTable(), func(s *Spec) *Tolerance { return &s.Tolerance }).required(),
+		maybe("blank", "the disk the cam is cut from; needed with operations", blankTable(), func(s *Spec) **Blank { return &s.Blank }),
+		list("operations", "the NC programs, one each, in the order of work", operationTable(v),
+			func(_ *reader, s *Spec, all []Operation) { s.Operations = all }),
+		child("control", "the NC control that reads the programs", controlTable(), func(s *Spec) *Control { return &s.Control }),
+		text("material", "text for the drawing", func(s *Spec) *string { return &s.Material }),
+		text("hardness", "text for the drawing", func(s *Spec) *string { return &s.Hardness }),
+		text("finish", "text for the drawing", func(s *Spec) *string { return &s.Finish }),
+		text("drawn", "who drew it, text for the drawing", func(s *Spec) *string { return &s.Drawn }),
+		text("checked", "who checked it, text for the drawing", func(s *Spec) *string { return &s.Checked }),
+		text("date", "date of the drawing, free text; no other date is printed", func(s *Spec) *string { return &s.Date }),
+		texts("notes", "lines of text for the drawing and the sheet", func(s *Spec) *[]string { return &s.Notes }),
+	}}
+}
+
+func camshaftTable() table[Camshaft] {
+	return table[Camshaft]{what: "a camshaft", fields: []field[Camshaft]{
+		number("speed", "constant speed in rpm", rpm(), func(c *Camshaft) *float64 { return &c.Speed }).required(),
+		choice("rotation", "direction of turning, seen on the marked face", []string{"clockwise", "counterclockwise"}, nil,
+			func(c *Camshaft, w string) { c.Clockwise = w == "clockwise" }).required(),
+	}}
+}
+
+func motionTable(v Vocabulary) table[Motion] {
+	return table[Motion]{what: "a motion", place: func(m *Motion, p Place) { m.Place = p },
+		absent: []absent{{name: "points", instead: "events"}, {name: "table", instead: "events"}, {name: "minimize"}, {name: "jerk_ratio"}},
+		fields: []field[Motion]{
+			list("events", "dwells, rises and falls in order of cam angle; their angles sum to 360 degrees and their lifts close",
+				eventTable(v), func(r *reader, _ *Motion, all []draft) { r.events = all }).required(),
+			number("start_at_cam_angle", "cam angle where the first event begins, degrees, default 0", camAngle(),
+				func(m *Motion) *float64 { return &m.StartAt }),
+			number("start_lift", "lift where the first event begins, length, default 0", orNoLength(),
+				func(m *Motion) *float64 { return &m.StartLift }),
+		}}
+}
+
+func followerTable(v Vocabulary) table[Follower] {
+	return table[Follower]{what: "a follower", place: func(f *Follower, p Place) { f.Place = p },
+		kinds: v.Followers, name: "kind", kind: byKey("kind", v.Followers, everyFollower()),
+		absent: []absent{{name: "face_radius", of: "translating-mushroom"}, {name: "head_diameter", of: "translating-mushroom"},
+			{name: "face_width", of: "translating-flat"}, {name: "arm_length", of: "swinging-roller"},
+			{name: "pivot_distance", of: "swinging-roller and swinging-flat"}, {name: "side", of: "swinging-roller and swinging-flat"},
+			{name: "face_offset", of: "swinging-flat"}, {name: "face", of: "swinging-flat"}},
+		fields: []field[Follower]{
+			kindKey("kind", "kind of follower", v.Followers, func(f *Follower, w string) { f.Kind = w }),
+			number("roller_diameter", "diameter of the roller, length", length(), func(f *Follower) *float64 { return &f.RollerDiameter }).required(),
+			number("offset", "distance of the follower's line from the camshaft axis, length, positive towards +Y, default 0", eitherWay(),
+				func(f *Follower) *float64 { return &f.Offset }),
+		}}
+}
+
+func camTable(v Vocabulary) table[Cam] {
+	return table[Cam]{what: "a cam", place: func(c *Cam, p Place) { c.Place = p },
+		kinds: v.Cams, name: "kind", kind: byKey("kind", v.Cams, everyCam()),
+		absent: []absent{{name: "keyway", of: "bore"}, {name: "groove_depth", of: "groove and barrel"}, {name: "clearance", of: "groove and barrel"},
+			{name: "radius", of: "barrel"}, {name: "length", of: "barrel"}, {name: "track_position", of: "barrel"}},
+		fields: []field[Cam]{
+			kindKey("kind", "kind of cam", v.Cams, func(c *Cam, w string) { c.Kind = w }),
+			number("base_radius", "radius of the base circle, which the follower rests on at lift 0, length", length(), func(c *Cam) *float64 { return &c.BaseRadius }).required(),
+			number("thickness", "thickness of the cam, length", length(), func(c *Cam) *float64 { return &c.Thickness }).required(),
+			maybe("bore", "the hole about the camshaft axis", boreTable(), func(c *Cam) **Bore { return &c.Bore }),
+			list("holes", "round through holes", holeTable(), func(_ *reader, c *Cam, all []Hole) { c.Holes = all }),
+			number("outside_diameter", "outside diameter of the body, length", length(), func(c *Cam) *float64 { return &c.OutsideDiameter }),
+			choice("datum", "none: the cam has no angular datum (no keyway, no hole off the axis), on purpose", []string{"none"}, nil,
+				func(c *Cam, _ string) { c.NoDatum = true }),
+		}}
+}
+
+func boreTable() table[Bore] {
+	return table[Bore]{what: "a bore", place: func(b *Bore, p Place) { b.Place = p }, fields: []field[Bore]{
+		number("diameter", "diameter of the bore, length", length(), func(b *Bore) *float64 { return &b.Diameter }).required(),
+		text("fit", "fit of the bore, text for the drawing: H7", func(b *Bore) *string { return &b.Fit }),
+		maybe("keyway", "hub keyway", keywayTable(), func(b *Bore) **Keyway { return &b.Keyway }),
+	}}
+}
+
+func keywayTable() table[Keyway] {
+	return table[Keyway]{what: "a keyway", place: func(k *Keyway, p Place) { k.Place = p }, fields: []field[Keyway]{
+		number("width", "width of the keyway, length", length(), func(k *Keyway) *float64 { return &k.Width }).required(),
+		number("depth", "depth from the bore circle on the keyway's center line, length", length(), func(k *Keyway) *float64 { return &k.Depth }).required(),
+		number("at", "polar angle of its center line, degrees", polarAngle(), func(k *Keyway) *float64 { return &k.At }).required(),
+		text("fit", "fit of the width, text for the drawing: JS9", func(k *Keyway) *string { return &k.Fit }),
+	}}
+}
+
+func holeTable() table[Hole] {
+	return table[Hole]{what: "a hole", place: func(h *Hole, p Place) { h.Place = p }, fields: []field[Hole]{
+		number("diameter", "diameter of the hole, length", length(), func(h *Hole) *float64 { return &h.Diameter }).required(),
+		number("radius", "from the camshaft axis to the hole's center, length", length(), func(h *Hole) *float64 { return &h.Radius }).required(),
+		number("at", "polar angle of its center, degrees", polarAngle(), func(h *Hole) *float64 { return &h.At }).required(),
+	}}
+}
+
+func limitsTable() table[Limits] {
+	return table[Limits]{what: "limits", fields: []field[Limits]{
+		number("pressure_angle", "largest pressure angle where the follower moves, degrees, default 30", pressure(), func(l *Limits) *float64 { return &l.PressureAngle }),
+		optional("pressure_angle_return", "largest pressure angle of the falls, degrees; not gated when left out", pressure(), func(l *Limits) **float64 { return &l.PressureAngleReturn }),
+		optional("radius_of_curvature", "least convex radius of the contour, length", length(), func(l *Limits) **float64 { return &l.RadiusOfCurvature }),
+		optional("velocity", "largest follower velocity, length/s", rate("s"), func(l *Limits) **float64 { return &l.Velocity }),
+		optional("acceleration", "largest follower acceleration, length/s²", rate("s²"), func(l *Limits) **float64 { return &l.Acceleration }),
+		optional("jerk", "largest follower jerk, length/s³", rate("s³"), func(l *Limits) **float64 { return &l.Jerk }),
+		optional("wall", "least material between any two of contour, bore, keyway and holes, length", length(), func(l *Limits) **float64 { return &l.Wall }),
+	}}
+}
+
+func toleranceTable() table[Tolerance] {
+	return table[Tolerance]{what: "a tolerance", place: func(t *Tolerance, p Place) { t.Place = p }, fields: []field[Tolerance]{
+		number("profile", "total width of the profile zone, equally disposed about the true contour, length", length(), func(t *Tolerance) *float64 { return &t.Profile }).required(),
+		number("chord", "largest normal deviation of a programmed path from the exact path, length; left out: what the budget leaves, at most profile/10", length(), func(t *Tolerance) *float64 { return &t.Chord }),
+		percentField(),
+		optional("velocity_step", "largest step of the follower's velocity on the written path, length/s", rate("s"), func(t *Tolerance) **float64 { return &t.VelocityStep }),
+		maybe("machine_tool", "errors of the machine tool, each plus or minus on the contour", machineTable(), func(t *Tolerance) **MachineTool { return &t.MachineTool }),
+		choice("combine", "how the errors add up, default fixed+rss: chord and grid add, the others combine statistically", []string{"fixed+rss", "worst", "rss"}, nil,
+			func(t *Tolerance, w string) { t.Combine = w }),
+	}}
+}
+
+func machineTable() table[MachineTool] {
+	return table[MachineTool]{what: "a machine tool", fields: []field[MachineTool]{
+		number("resolution", "resolution of the axes, plus or minus, length, default 0", orNoLength(), func(m *MachineTool) *float64 { return &m.Resolution }),
+		number("positioning", "positioning error, plus or minus, length, default 0", orNoLength(), func(m *MachineTool) *float64 { return &m.Positioning }),
+		number("runout", "runout of spindle and tool, plus or minus, length, default 0", orNoLength(), func(m *MachineTool) *float64 { return &m.Runout }),
+		number("tool", "error of the tool's radius, plus or minus, length, default 0", orNoLength(), func(m *MachineTool) *float64 { return &m.Tool }),
+	}}
+}
+
+func blankTable() table[Blank] {
+	return table[Blank]{what: "a blank", place: func(b *Blank, p Place) { b.Place = p }, fields: []field[Blank]{
+		number("diameter", "diameter of the blank, length", length(), func(b *Blank) *float64 { return &b.Diameter }).required(),
+		number("clamp_radius", "radius about the camshaft axis that the clamp takes, length; left out: none", length(), func(b *Blank) *float64 { return &b.ClampRadius }),
+	}}
+}
+
+func operationTable(v Vocabulary) table[Operation] {
+	const mill, wire = "mill", "wire"
+	fresh := Operation{Axes: "xy", Tool: 1, Compensation: "path", Direction: "climb", Moves: "arcs"}
+	return table[Operation]{what: "an operation", fresh: fresh, place: func(o *Operation, p Place) { o.Place = p },
+		kinds: v.Processes, name: "process", kind: byKey("process", v.Processes, everyProcess()),
+		fields: []field[Operation]{
+			kindKey("process", "how the contour is cut", v.Processes, func(o *Operation, w string) { o.Process = w }),
+			choice("axes", "axes of the machine, default xy", []string{"xy"}, everyAxes(), func(o *Operation, w string) { o.Axes = w }),
+			integer("tool", "tool number, default 1", 1, 9999, func(o *Operation) *int { return &o.Tool }).of(mill),
+			number("tool_diameter", "diameter of the cutter, length", length(), func(o *Operation) *float64 { return &o.ToolDiameter }).of(mill).required(),
+			number("spindle_speed", "spindle speed in rpm", rpm(), func(o *Operation) *float64 { return &o.SpindleSpeed }).of(mill).required(),
+			number("feed", "feed along the contour, length/min", perMinute(), func(o *Operation) *float64 { return &o.Feed }).of(mill).required(),
+			number("plunge_feed", "feed down into the blank, length/min", perMinute(), func(o *Operation) *float64 { return &o.PlungeFeed }).of(mill).required(),
+			number("step_down", "depth of a cut, length; left out: the full thickness at once", length(), func(o *Operation) *float64 { return &o.StepDown }).of(mill),
+			numbers("stock", "material left on the contour after each pass, length, not growing, last pass last", orNoLength(), func(o *Operation) *[]float64 { return &o.Stock }).of(mill).required(),
+			choice("direction", "direction of cutting, default climb", []string{"climb", "conventional"}, nil, func(o *Operation, w string) { o.Direction = w }).of(mill),
+			number("wire_diameter", "diameter of the wire, length", length(), func(o *Operation) *float64 { return &o.WireDiameter }).of(wire).required(),
+			numbers("offsets", "wire center to contour for each pass, length, falling, at least the wire's radius", length(), func(o *Operation) *[]float64 { return &o.Offsets }).of(wire).required(),
+			maybe("tab", "what holds the part in the blank to the end; left out: none", tabTable(), func(o *Operation) **Tab { return &o.Tab }).of(wire),
+			maybe("start_hole", "where the wire is threaded", startHoleTable(), func(o *Operation) **StartHole { return &o.StartHole }).of(wire).required(),
+			choice("compensation", "path: tool-center path written; wear: the same with G41/G42 and a small offset; control: contour written; default path", []string{"path", "wear", "control"}, nil,
+				func(o *Operation, w string) { o.Compensation = w }),
+			optional("start_at_cam_angle", "cam angle where the contour is entered, degrees; left out: middle of the longest low dwell, wire: nearest the start hole", camAngle(),
+				func(o *Operation) **float64 { return &o.StartAt }),
+			choice("moves", "what the path is made of, default arcs (with lines)", []string{"arcs", "lines"}, nil, func(o *Operation, w string) { o.Moves = w }),
+		}}
+}
+
+func tabTable() table[Tab] {
+	return table[Tab]{what: "a tab", fields: []field[Tab]{
+		number("width", "width along the contour, length", length(), func(t *Tab) *float64 { return &t.Width }).required(),
+		number("at", "polar angle of its middle, degrees", polarAngle(), func(t *Tab) *float64 { return &t.At }).required(),
+	}}
+}
+
+func startHoleTable() table[StartHole] {
+	return table[StartHole]{what: "a start hole", fields: []field[StartHole]{
+		number("radius", "from the camshaft axis to its center, length", length(), func(s *StartHole) *float64 { return &s.Radius }).required(),
+		number("at", "polar angle of its center, degrees", polarAngle(), func(s *StartHole) *float64 { return &s.At }).required(),
+	}}
+}
+
+func controlTable() table[Control] {
+	return table[Control]{what: "a control", place: func(c *Control, p Place) { c.Place = p },
+		absent: []absent{{name: "rotary_sense"}},
+		fields: []field[Control]{
+			integer("decimals", "decimals of the coordinates, default 3 in mm and 4 in inch", 2, 6, func(c *Control) *int { return &c.Decimals }),
+			choice("arc_center", "how I and J give an arc's center, default incremental", []string{"incremental", "absolute"}, nil,
+				func(c *Control, w string) { c.AbsoluteArcs = w == "absolute" }),
+			number("arc_mismatch", "largest difference of an arc's start and end radius the control takes, length, default 0.002 mm or 0.0002 inch", length(),
+				func(c *Control) *float64 { return &c.ArcMismatch }),
+			flag("block_numbers", "number the blocks, default true", func(c *Control) *bool { return &c.BlockNumbers }),
+			integer("max_blocks", "most blocks of a program; left out: no limit", 1, 100_000_000, func(c *Control) *int { return &c.MaxBlocks }),
+			number("safe_z", "height of rapid moves above the top of the blank, length, default 5 mm or 0.2 inch", length(), func(c *Control) *float64 { return &c.SafeZ }),
+		}}
+}

@@ -1,0 +1,48 @@
+package spec
+
+// Vocabulary is what the rest of the program can do, handed in by name: this
+// package checks names and never knows what a law or a kind does.
+type Vocabulary struct {
+	Laws      []string // plain names of motion laws
+	ShareLaws []string // those of Laws that take constant_share
+	Followers []string // available follower.kind
+	Cams      []string // available cam.kind
+	Processes []string // available operation processes: of "mill" and "wire"
+
+	// EndSpeeds returns the velocity of a law at its two ends, per unit of lift
+	// and unit of angle: 0, 0 for a law that starts and ends at rest, 1, 1 for
+	// constant velocity. When nil, jumps in velocity are not looked for.
+	EndSpeeds func(Law) (start, end float64)
+}
+
+// Trigonometric is the Law.Name of a law given by its shares {sine, constant, cosine}.
+const Trigonometric = "trigonometric"
+
+// defaultConstantShare is the share of constant velocity when constant_share is left out.
+const defaultConstantShare = 0.5
+
+// Names of the format that a version may lack: found in a spec they are
+// answered with "not available in this version", and never ignored.
+
+func everyFollower() []string {
+	return []string{"translating-roller", "translating-knife", "translating-mushroom",
+		"translating-flat", "swinging-roller", "swinging-flat"}
+}
+
+func everyCam() []string { return []string{"plate", "groove", "barrel"} }
+
+func everyProcess() []string { return []string{"mill", "grind", "wire"} }
+
+func everyAxes() []string { return []string{"xy", "polar", "cylinder"} }
+
+// restLaws are the plain laws that start and end at rest, for advice.
+func (v Vocabulary) restLaws() []string {
+	var rest []string
+	for _, name := range v.Laws {
+		start, end := v.EndSpeeds(Law{Name: name, ConstantShare: defaultConstantShare})
+		if start == 0 && end == 0 {
+			rest = append(rest, name)
+		}
+	}
+	return rest
+}

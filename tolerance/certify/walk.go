@@ -1,0 +1,171 @@
+package certify
+
+import (
+	"fmt"
+	"math"
+	"sort"
+
+	"lobewright/synth/plane"
+)
+
+// walker finds the curve parameters of a path's joints in plain floats. Nothing in
+// this file is part of the proof: wrong parameters make the proof fail, not lie.
+type walker struct {
+	*survey
+	u, s  []float64 // parameter and length along the chords, one more than samples
+	p     []plane.Point
+	total float64 // length of the turn
+}
+
+// samples of a whole turn, shared among the pieces; each piece has leastSamples at least.
+const (
+	samples      = 360
+	leastSamples = 8
+)
+
+func newWalker(s *survey) *walker {
+	w := &walker{survey: s}
+	for i, piece := range s.pieces {
+		n := max(leastSamples, int(samples*(piece.To-piece.From)/(s.t1-s.t0)))
+		for k := 0; k < n; k++ {
+			t := piece.From + (piece.To-piece.From)*float64(k)/float64(n)
+			w.u, w.p = append(w.u, t), append(w.p, s.curve.At(i, t).P)
+		}
+	}
+	w.u, w.p = append(w.u, s.t1), append(w.p, w.p[0])
+	w.s = make([]float64, len(w.p))
+	for k := 1; k < len(w.p); k++ {
+		w.s[k] = w.s[k-1] + w.p[k].Dist(w.p[k-1])
+	}
+	w.total = w.s[len(w.s)-1]
+	return w
+}
+
+// sample returns parameter and point of the k-th sample, k running on over whole turns both ways.
+func (w *walker) sample(k int) (u float64, p plane.Point) {
+	n := len(w.p) - 1
+	turn := k / n
+	if k < turn*n {
+		turn--
+	}
+	return w.u[k-turn*n] + float64(turn)*(w.t1-w.t0), w.p[k-turn*n]
+}
+
+// index returns the last sample at or before the running length s >= 0.
+func (w *walker) index(s float64) int {
+	turn := math.Floor(s / w.total)
+	k := sort.SearchFloat64s(w.s, s-turn*w.total)
+	return int(turn)*(len(w.p)-1) + max(k-1, 0)
+}
+
+// run returns the length along the curve up to the running parameter u >= t0.
+func (w *walker) run(u float64) float64 {
+	m := w.mark(u)
+	k := max(sort.Search(len(w.u), func(i int) bool { return w.u[i] > m.t })-1, 0)
+	k = min(k, len(w.u)-2)
+	share := (m.t - w.u[k]) / (w.u[k+1] - w.u[k])
+	return float64(m.turn)*w.total + w.s[k] + share*(w.s[k+1]-w.s[k])
+}
+
+// walk returns a mark for every joint, one more than figures, strictly forward.
+func (w *walker) walk(figures []figure, closed bool) ([]mark, error) {
+	u := w.first(figures[0].e.From)
+	marks := []mark{w.mark(u)}
+	for i, f := range figures {
+		if !(f.length() <= 2*w.total) {
+			return nil, fmt.Errorf("element %d (%s) is %.4g long, the whole curve only %.4g", i, f.name(), f.length(), w.total)
+		}
+		var m mark
+		if closed && i == len(figures)-1 {
+			m = mark{marks[0].turn + 1, marks[0].t}
+		} else {
+			u = w.next(w.run(u), f.length(), f.e.To)
+			m = w.mark(u)
+		}
+		if !marks[i].before(m) {
+			return nil, fmt.Errorf("element %d (%s) does not lead on along the curve: it starts at cam angle %.6g and ends at %.6g; "+
+				"the path must run the way the cam angle grows, and once around", i, f.name(), w.angle(marks[i]), w.angle(m))
+		}
+		marks = append(marks, m)
+	}
+	return marks, nil
+}
+
+// first finds the foot of the path's first point: the nearest of those found
+// from every sample that is nearer than its neighbors and about as near as the nearest.
+func (w *walker) first(j plane.Point) float64 {
+	n := len(w.p) - 1
+	nearest, spacing := math.Inf(1), 0.0
+	for k := 0; k < n; k++ {
+		nearest = math.Min(nearest, w.p[k].Dist(j))
+		spacing = math.Max(spacing, w.s[k+1]-w.s[k])
+	}
+	best, at := math.Inf(1), w.t0
+	for k := 0; k < n; k++ {
+		d := w.p[k].Dist(j)
+		if d > nearest+spacing || d > w.p[(k+n-1)%n].Dist(j) || d > w.p[(k+1)%n].Dist(j) {
+			continue
+		}
+		u := w.foot(k, j)
+		if d := w.frame(u).P.Dist(j); d < best {
+			best, at = d, u
+		}
+	}
+	if m := w.mark(at); m.turn != 0 { // start within the first turn
+		at = m.t
+	}
+	return at
+}
+
+// next finds the foot of j between half and one and a half element lengths on from s.
+func (w *walker) next(s, length float64, j plane.Point) float64 {
+	from, to := w.index(s+length/2), w.index(s+1.5*length)+1
+	best, at := math.Inf(1), from
+	for k := from; k <= to; k++ {
+		if _, p := w.sample(k); p.Dist(j) < best {
+			best, at = p.Dist(j), k
+		}
+	}
+	return w.foot(at, j)
+}
+
+func (w *walker) frame(u float64) plane.Frame {
+	m := w.mark(u)
+	return w.curve.At(w.piece(m.t), m.t)
+}
+
+const (
+	footSteps = 60
+	footShare = 1e-13 // of the curve's size: the foot is this near, far below any deviation that matters
+)
+
+// foot refines from sample k: where the tangent is perpendicular to the way to j, by the
+// Illinois variant of false position (M. Dowell, P. Jarratt, BIT 11, 1971).
+func (w *walker) foot(k int, j plane.Point) float64 {
+	past := func(u float64) float64 { f := w.frame(u); return f.P.Sub(j).Dot(f.T) }
+	a, _ := w.sample(k - 1)
+	b, _ := w.sample(k + 1)
+	fa, fb := past(a), past(b)
+	u, _ := w.sample(k)
+	if !(fa < 0 && fb > 0) {
+		return u
+	}
+	for i := 0; i < footSteps && b-a > 0; i++ {
+		u = b - fb*(b-a)/(fb-fa)
+		if !(u > a && u < b) {
+			u = a + (b-a)/2
+		}
+		v := past(u)
+		if math.Abs(v) <= footShare*w.size {
+			return u
+		}
+		if v > 0 {
+			b, fb = u, v
+			fa /= 2
+		} else {
+			a, fa = u, v
+			fb /= 2
+		}
+	}
+	return u
+}

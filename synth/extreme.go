@@ -33,7 +33,7 @@ func largest(pieces []plane.Piece, use func(piece int) bool, f func(piece int, t
 			continue
 		}
 		at := func(t float64) float64 { return f(i, t) }
-		if b := largestOn(p.From, p.To, samplesPerPiece, at); b.value > best.value {
+		if b := largestOn(p.From, p.To, samplesPerPiece, at); b.value > above(best.value) {
 			best = place{b.value, i, b.t}
 		}
 	}
@@ -51,7 +51,7 @@ func largestOn(a, b float64, n int, f func(float64) float64) place {
 		return a + (b-a)*float64(k)/float64(n)
 	}
 	for k := range y {
-		if y[k] = f(at(k)); y[k] > best.value {
+		if y[k] = f(at(k)); y[k] > above(best.value) {
 			best.value, best.t = y[k], at(k)
 		}
 	}
@@ -62,11 +62,21 @@ func largestOn(a, b float64, n int, f func(float64) float64) place {
 		if y[k] < y[k-1] || y[k] < y[k+1] || y[k]+4*math.Max(y[k]-y[k-1], y[k]-y[k+1])+1e-9*span < best.value {
 			continue
 		}
-		if t, v := golden(at(k-1), at(k+1), f); v > best.value {
+		if t, v := golden(at(k-1), at(k+1), f); v > above(best.value) {
 			best.value, best.t = v, t
 		}
 	}
 	return best
+}
+
+// above returns what a value must top to count as larger: of values that are equal
+// but for rounding, as along a dwell, the first is named.
+func above(v float64) float64 {
+	const rounding = 1e-13
+	if math.IsInf(v, -1) {
+		return v
+	}
+	return v + rounding*math.Abs(v)
 }
 
 // golden climbs a hill on [a, b] by golden section (J. Kiefer, Proc. AMS 4, 1953).

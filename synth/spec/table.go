@@ -154,7 +154,7 @@ func readKeys[T any](r *reader, w where, t table[T], kind string, into *T) map[s
 			continue
 		}
 		first[key.Value] = key.Line
-		if f, ok := t.field(key.Value); ok && f.has(kind) {
+		if f, ok := t.field(key.Value, kind); ok && f.has(kind) {
 			given[f.name] = true
 			f.read(r, w.child(key, w.val.Content[i+1]), into)
 			continue
@@ -171,7 +171,7 @@ func readKeys[T any](r *reader, w where, t table[T], kind string, into *T) map[s
 // not be missed because this one stands for it.
 func (t table[T]) unknown(r *reader, w where, key *yaml.Node, kind string) (instead string) {
 	f := Fault{Path: w.path, Found: "the unknown key " + quoted(key.Value), Allowed: strings.Join(t.names(kind), ", ")}
-	if other, ok := t.field(key.Value); ok {
+	if other, ok := t.field(key.Value, kind); ok {
 		f.Found = key.Value + ", a key of " + strings.Join(other.only, " and ") + ", in " + t.what + " of kind " + kind
 		f.Advice = "take it out"
 	} else if i := slices.IndexFunc(t.absent, func(a absent) bool { return a.name == key.Value }); i >= 0 {
@@ -198,13 +198,16 @@ func (t table[T]) unknown(r *reader, w where, key *yaml.Node, kind string) (inst
 	return instead
 }
 
-func (t table[T]) field(name string) (field[T], bool) {
+// field returns the entry of a key. A key that means something else for another kind
+// stands in the table once for each; of these the one that the kind has is
+// returned, else the first.
+func (t table[T]) field(name, kind string) (found field[T], ok bool) {
 	for _, f := range t.fields {
-		if f.name == name {
-			return f, true
+		if f.name == name && (!ok || f.has(kind)) {
+			found, ok = f, true
 		}
 	}
-	return field[T]{}, false
+	return found, ok
 }
 
 // names lists the keys of a kind of the object, or all.

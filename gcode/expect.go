@@ -1,0 +1,101 @@
+package gcode
+
+import (
+	"lobewright/gcode/read"
+	"lobewright/tolerance/chain"
+)
+
+// Cut is one run of the tool around the contour that a program must make.
+type Cut struct {
+	Offset float64 // distance of the tool's center from the finished contour, length
+	Stock  float64 // distance of the written path from it: Offset, or Offset less Radius under CompControl
+	Z      float64 // mill: height of the cut, exactly as written
+}
+
+// Expect is what a program of an operation must do, from the operation and the
+// exact curves.
+type Expect struct {
+	Process      Process
+	Number       int
+	Inch         bool
+	Eps          float64 // length: largest deviation of a cut, either way
+	CamClockwise bool
+	Curve        func(offset float64) Curve
+	Compensation Compensation
+	Registers    []Register // what the D registers hold
+	Feed         float64    // length/min as written; 0 for none
+	MaxBlocks    int        // 0 when not limited
+	ArcMismatch  float64    // length
+
+	// Cuts: for a mill every one in order; for a wire one a pass, wanted all
+	// around, in stretches that may come back and forth.
+	Cuts []Cut
+
+	// Mill.
+	Clockwise     bool // direction of every cut about the contour
+	Radius        float64
+	Tool, Speed   int
+	PlungeFeed    float64
+	SafeZ         float64
+	BlankDiameter float64 // 0 when not known: then no rapid below SafeZ may move sideways
+	ClampRadius   float64 // 0 when there is no clamp
+}
+
+// Expected returns what the operation's program must do, each cut within eps (a
+// length) of its exact parallel curve.
+func Expected(part Part, op Operation, m Machine, eps float64) Expect {
+	g := m.grid()
+	written := func(x float64) float64 { return gridValue(g, x) }
+	x := Expect{Process: op.Process, Number: op.Number, Inch: part.Inch, Eps: eps, CamClockwise: part.CamClockwise, Curve: part.Curve,
+		Compensation: op.Compensation, Registers: registers(op), Feed: written(op.Feed), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch}
+	if op.Process == Wire {
+		for _, o := range op.Offsets {
+			x.Cuts = append(x.Cuts, Cut{Offset: o, Stock: writtenOffset(op.Compensation, o, o)})
+		}
+		return x
+	}
+	for i, c := range op.centers() {
+		for _, z := range depths(part, op, g, i) {
+			x.Cuts = append(x.Cuts, Cut{c, writtenOffset(op.Compensation, c, op.radius()), float64(z) / float64(counts(g, 1))})
+		}
+	}
+	x.Clockwise, x.Radius, x.Tool, x.Speed = op.clockwise(), op.radius(), op.Tool, op.speed()
+	x.PlungeFeed, x.SafeZ = written(op.PlungeFeed), written(m.SafeZ)
+	x.BlankDiameter, x.ClampRadius = part.BlankDiameter, part.ClampRadius
+	return x
+}
+
+// writtenOffset is the offset of the written path from the contour.
+func writtenOffset(c Compensation, center, radius float64) float64 {
+	if c == CompControl {
+		return center - radius
+	}
+	return center
+}
+
+// gridValue returns x rounded to the grid, as a reader gets it back.
+func gridValue(g chain.Grid, x float64) float64 {
+	return float64(counts(g, x)) / float64(counts(g, 1))
+}
+
+// register returns what the D register holds; ok is false when the set-up table
+// has no such register.
+func (x Expect) register(d int) (value float64, ok bool) {
+	for _, r := range x.Registers {
+		if r.Number == d {
+			return r.Value, true
+		}
+	}
+	return 0, false
+}
+
+// comp returns the compensation state a cut in this direction needs.
+func (x Expect) comp(clockwise bool) read.Comp {
+	switch {
+	case x.Compensation == CompPath:
+		return read.Off
+	case clockwise:
+		return read.Left
+	}
+	return read.Right
+}

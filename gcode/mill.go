@@ -1,0 +1,168 @@
+package gcode
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/synth/plane"
+	"lobewright/tolerance/chain"
+)
+
+// Choices of this planner, stated in every program's header. Common practice, no
+// source.
+const (
+	overlapDegrees = 4.0  // how far a milled pass runs past its start, cam angle
+	leadShare      = 1.25 // radius of the tool center's lead arc over the tool's radius
+	leadControl    = 2.0  // the same under full compensation by the control
+	exitShare      = 1.5  // straight move off the contour over the tool's radius
+)
+
+// small returns a length given in both units, in the part's.
+func (p Part) small(mm, inch float64) float64 {
+	if p.Inch {
+		return inch
+	}
+	return mm
+}
+
+// breakthrough is how far the tool goes below the part.
+func (p Part) breakthrough() float64 { return p.small(1, 0.04) }
+
+// gap is the least distance between tool and blank where the tool plunges.
+func (p Part) gap() float64 { return p.small(2, 0.08) }
+
+// clockwise says whether the operation's milled passes go clockwise about the
+// contour: with a right-hand tool under M3 that is climb cutting.
+func (op Operation) clockwise() bool { return op.Direction != Conventional }
+
+// Plan returns the program of the operation. Errors: a value that cannot be, a
+// pass that does not reach, a path that does not fit on the grid.
+func Plan(part Part, op Operation, m Machine) (Program, error) {
+	if err := validate(part, op, m); err != nil {
+		return Program{}, err
+	}
+	if op.Process == Wire {
+		return planWire(part, op, m)
+	}
+	return planMill(part, op, m)
+}
+
+func planMill(part Part, op Operation, m Machine) (Program, error) {
+	e := newEmitter(part, op, m)
+	e.p.Registers = registers(op)
+	e.p.Header = header(part, op, m)
+	e.add(Block{G: e.safety()})
+	e.add(Block{G: []Code{e.arcMode()}})
+	e.add(Block{T: number(op.Tool), M: []int{6}})
+	e.add(Block{S: number(op.speed()), M: []int{3}})
+	for i := range op.Stock {
+		if err := millPass(e, part, op, m, i); err != nil {
+			return Program{}, fmt.Errorf("pass %d of %d: %w", i+1, len(op.Stock), err)
+		}
+	}
+	e.add(Block{M: []int{5}})
+	e.add(Block{G: e.safety()})
+	e.add(Block{M: []int{30}})
+	return *e.p, nil
+}
+
+// safety returns the words that put a milling control into a known state.
+func (e *emitter) safety() []Code {
+	return []Code{e.units(), PlaneXY, Absolute, CompOff, LengthOff, CycleOff, FeedPerMinute, WorkFirst}
+}
+
+func (op Operation) speed() int { return int(math.Round(op.SpindleSpeed)) }
+
+// depths returns the Z of every cut of pass i, in counts, top first. Passes before the
+// last go down in equal steps of at most StepDown; the last goes at full depth,
+// unless it is the only one.
+func depths(part Part, op Operation, g chain.Grid, i int) []int64 {
+	total := part.Thickness + part.breakthrough()
+	n := 1.0
+	if op.StepDown > 0 && (i < len(op.Stock)-1 || len(op.Stock) == 1) {
+		n = math.Ceil(total/op.StepDown - 1e-9) // a step larger only by rounding is one step
+	}
+	var zs []int64
+	for k := 1.0; k <= n; k++ {
+		zs = append(zs, -counts(g, total*k/n))
+	}
+	return zs
+}
+
+// millPass adds the cuts of one pass.
+func millPass(e *emitter, part Part, op Operation, m Machine, i int) error {
+	c, err := millPath(part, op, m, i)
+	if err != nil {
+		return err
+	}
+	start, zs := c.Segments[0].From, depths(part, op, e.grid, i)
+	for k, z := range zs {
+		e.note(fmt.Sprintf("PASS %d STOCK %s DEPTH %d OF %d", i+1, e.grid.Format(counts(e.grid, op.Stock[i])), k+1, len(zs)))
+		e.line(Rapid, start, Block{})
+		if i == 0 && k == 0 {
+			e.z(Rapid, m.SafeZ, Block{G: []Code{LengthOn}, H: number(op.Tool)})
+		}
+		e.add(Block{Motion: Straight, Z: count(z), F: e.feed(op.PlungeFeed)})
+		on := Block{F: e.feed(op.Feed)}
+		if op.Compensation != CompPath {
+			on.G, on.D = []Code{sideCode(op.side())}, number(op.Tool)
+		}
+		e.chain(c, on, op.Compensation != CompPath)
+		e.z(Rapid, m.SafeZ, Block{})
+	}
+	return nil
+}
+
+// side is +1 when the tool is on the left of travel, the contour on the right.
+func (op Operation) side() float64 {
+	if op.clockwise() {
+		return 1
+	}
+	return -1
+}
+
+// millPath returns the written path of pass i with its leads, on the grid.
+func millPath(part Part, op Operation, m Machine, i int) (chain.Chain, error) {
+	r := op.radius()
+	written, leadRadius := r+op.Stock[i], leadShare*r
+	if op.Compensation == CompControl {
+		written, leadRadius = op.Stock[i], leadControl*r+r
+	}
+	l, err := op.loopAt(part, m, written)
+	if err != nil {
+		return chain.Chain{}, err
+	}
+	path, err := l.around(part.StartAt, overlapDegrees, op.clockwise() == part.CamClockwise)
+	if err != nil {
+		return chain.Chain{}, err
+	}
+	in, out := leadIn(path, op.side(), leadRadius), leadOut(path, op.side(), leadRadius)
+	far := part.plungeRadius(op, l.path)
+	path = append(append(in.in(in.outside(far, exitShare*r)), path...), out.away(out.straight(exitShare*r))...)
+	return snap(path, m.grid())
+}
+
+// around returns a whole turn from cam angle t and overlap degrees more, with
+// growing angle, or backwards.
+func (l loop) around(t, overlap float64, back bool) (chain.Path, error) {
+	if !back {
+		return l.between(t, t+360+overlap)
+	}
+	p, err := l.between(t-360-overlap, t)
+	return p.Reverse(), err
+}
+
+// plungeRadius returns the distance from the camshaft axis at which the tool is
+// outside the blank. Without a blank in the spec the farthest point of the
+// pass stands for its rim.
+func (p Part) plungeRadius(op Operation, path chain.Path) float64 {
+	if p.BlankDiameter > 0 {
+		return p.BlankDiameter/2 + op.radius() + p.gap()
+	}
+	lo, hi := path.Bounds()
+	far := 0.0
+	for _, c := range []plane.Point{lo, hi, {X: lo.X, Y: hi.Y}, {X: hi.X, Y: lo.Y}} {
+		far = math.Max(far, c.Radius())
+	}
+	return far + op.radius() + p.gap()
+}

@@ -1,0 +1,140 @@
+package gcode
+
+import (
+	"lobewright/synth/plane"
+	"lobewright/synth/taylor"
+	"lobewright/tolerance/chain"
+)
+
+// Curve is what planning and proof need of a closed curve: a plate cam's contour
+// or a parallel curve of it, over cam angle in degrees.
+type Curve interface {
+	Pieces() []plane.Piece
+	At(piece int, t float64) plane.Frame
+	Over(piece int, t taylor.Interval, order int) (x, y taylor.I)
+}
+
+// Part is the cam as every operation on it sees it.
+type Part struct {
+	Name, Title, Revision string
+	Inch                  bool    // lengths are inches, else mm
+	Thickness             float64 // length, above 0
+	CamClockwise          bool    // the camshaft's turning direction, seen on the marked face
+	BlankDiameter         float64 // length; 0 when not known
+	ClampRadius           float64 // length about the camshaft axis; 0 when there is no clamp
+	BoreDiameter          float64 // length, for the header; 0 when there is none
+	StartAt               float64 // cam angle, degrees, where a milled pass begins and ends
+
+	// Curve returns the curve parallel to the contour at offset (a length, 0 or
+	// more) to the outside, over the same cam angles. With CamClockwise the
+	// contour runs counterclockwise with growing angle, else clockwise.
+	Curve func(offset float64) Curve
+}
+
+// outside returns +1 when the outside of the contour is on the left of growing cam
+// angle, else -1.
+func (p Part) outside() float64 {
+	if p.CamClockwise {
+		return -1
+	}
+	return 1
+}
+
+// Process is a way of cutting.
+type Process string
+
+const (
+	Mill Process = "mill"
+	Wire Process = "wire"
+)
+
+// Compensation says who moves the path by the tool's radius.
+type Compensation string
+
+const (
+	// CompPath: the tool-center path is written, no G41 or G42.
+	CompPath Compensation = "path"
+	// CompWear: the tool-center path is written under G41 or G42; the register
+	// holds 0 at first and a small number to trim the size.
+	CompWear Compensation = "wear"
+	// CompControl: the contour grown by the stock is written under G41 or G42;
+	// the register holds the tool's radius (wire: the offset of the pass).
+	CompControl Compensation = "control"
+)
+
+// Direction is the cutting direction of a milled pass.
+type Direction string
+
+const (
+	Climb        Direction = "climb"        // clockwise about the contour, tool on the left
+	Conventional Direction = "conventional" // counterclockwise, tool on the right
+)
+
+// Tab is the stretch that holds the cam while the wire cuts the rest.
+type Tab struct {
+	Width float64 // length along the contour, above 0
+	At    float64 // polar angle of its middle, degrees
+}
+
+// StartHole is where the wire is threaded.
+type StartHole struct {
+	Radius float64 // length from the camshaft axis, outside the contour
+	At     float64 // polar angle, degrees
+}
+
+// Operation is one program.
+type Operation struct {
+	Number       int     // its place in the spec, from 1; the program number
+	Process      Process // Mill or Wire
+	Compensation Compensation
+	Feed         float64 // length/min; wire: 0 leaves the feed to the generator
+
+	// Mill.
+	Tool         int     // tool number, and the number of its H and D registers, above 0
+	ToolDiameter float64 // length
+	SpindleSpeed float64 // rpm, printed as a whole number
+	PlungeFeed   float64 // length/min
+	StepDown     float64 // length; 0 means full depth
+	Stock        []float64
+	Direction    Direction
+
+	// Wire.
+	WireDiameter float64   // length
+	Offsets      []float64 // wire center to contour, a length for each pass
+	Tab          Tab
+	StartHole    StartHole
+
+	// Path returns the path parallel to the contour at offset (a length, 0 or
+	// more) to the outside: not on the grid, closed, with continuous tangents
+	// when it has arcs, in the direction of growing cam angle, every element
+	// with its Source. An error says that the pass does not reach.
+	Path func(offset float64) (chain.Path, error)
+}
+
+// radius returns the tool's radius, a length.
+func (op Operation) radius() float64 { return op.ToolDiameter / 2 }
+
+// centers returns the distance of the tool's or wire's center from the finished
+// contour for every pass, a length.
+func (op Operation) centers() []float64 {
+	if op.Process == Wire {
+		return op.Offsets
+	}
+	c := make([]float64, len(op.Stock))
+	for i, s := range op.Stock {
+		c[i] = op.radius() + s
+	}
+	return c
+}
+
+// Machine describes the control that will read the programs.
+type Machine struct {
+	Decimals     int     // 0 to 9, of lengths and feeds
+	AbsoluteArcs bool    // I and J are the center itself, else seen from the arc's start
+	ArcMismatch  float64 // length: largest difference of an arc's radii
+	BlockNumbers bool
+	MaxBlocks    int     // 0 when not limited
+	SafeZ        float64 // length above the top of the blank
+}
+
+func (m Machine) grid() chain.Grid { return chain.Grid{Decimals: m.Decimals} }

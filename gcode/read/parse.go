@@ -1,0 +1,127 @@
+package read
+
+import (
+	"bytes"
+	"fmt"
+	"strings"
+)
+
+// Parse reads a program. The error is an *Error: the first fault of the file.
+func Parse(data []byte) (*Program, error) {
+	if len(data) > maxSize {
+		return nil, &Error{1, 1, fmt.Sprintf("%d bytes", len(data)), fmt.Sprintf("a program has at most %d", maxSize)}
+	}
+	r := &reader{p: &Program{Number: -1, Bytes: len(data)}}
+	r.state = State{D: -1, H: -1, Tool: -1, Speed: -1}
+	r.pending = -1
+	lines := bytes.Split(data, []byte{'\n'})
+	for i, raw := range lines {
+		text := strings.TrimSuffix(string(raw), "\r")
+		if err := r.line(text, i+1); err != nil {
+			return nil, err
+		}
+	}
+	if err := r.finish(len(lines)); err != nil {
+		return nil, err
+	}
+	return r.p, nil
+}
+
+// reader is the control's state while it reads.
+type reader struct {
+	p       *Program
+	state   State
+	pending int // T word that waits for M6; -1 when none
+
+	percent, closed bool // % at the start, at the end
+	started         bool // a line with words came
+	unit            int  // 20, 21, or 0
+	distance        int  // 90, 91, or 0
+	centerAbsolute  bool
+	motion          int // 0 to 3, or -1 after G80 and before the first motion word
+	hasMotion       bool
+
+	x, y, z int64 // billionths
+	haveX   bool
+	haveY   bool
+	haveZ   bool
+}
+
+// line reads one line of the file.
+func (r *reader) line(text string, no int) error {
+	if len(text) > maxLine {
+		return &Error{no, maxLine + 1, fmt.Sprintf("a line of %d characters", len(text)), fmt.Sprintf("lines have at most %d", maxLine)}
+	}
+	r.p.Longest = max(r.p.Longest, len(text))
+	if i := unprintable(text); i >= 0 {
+		return &Error{no, i + 1, fmt.Sprintf("byte %#02x", text[i]), "programs are printable ASCII"}
+	}
+	trimmed := strings.TrimSpace(text)
+	if trimmed == "%" {
+		return r.tape(no)
+	}
+	if trimmed == "" {
+		return nil
+	}
+	if r.closed {
+		return &Error{no, 1, "text after the closing %", "nothing follows it"}
+	}
+	words, comments, err := scan(text, no)
+	if err != nil {
+		return err
+	}
+	for _, c := range comments {
+		r.p.Comments = append(r.p.Comments, Comment{no, strings.TrimSpace(c)})
+	}
+	r.started = true
+	if len(words) == 0 {
+		return nil
+	}
+	if r.p.Ended {
+		return &Error{no, words[0].column, words[0].text + " after the end of the program", "nothing follows M2 or M30 but %"}
+	}
+	r.p.Blocks++
+	b, err := sort(words, no)
+	if err != nil {
+		return err
+	}
+	return r.block(b)
+}
+
+// unprintable returns the index of the first byte that is no printable ASCII and no
+// tab, or -1. Bytes above 126 are refused in comments too: controls garble them.
+func unprintable(s string) int {
+	for i := 0; i < len(s); i++ {
+		if (s[i] < ' ' && s[i] != '\t') || s[i] > '~' {
+			return i
+		}
+	}
+	return -1
+}
+
+// tape takes a % line: the first thing in the file, or the last.
+func (r *reader) tape(no int) error {
+	switch {
+	case !r.started && !r.percent:
+		r.percent = true
+	case r.percent && !r.closed:
+		r.closed = true
+	default:
+		return &Error{no, 1, "a %", "% stands once before and once after the program"}
+	}
+	return nil
+}
+
+func (r *reader) finish(lines int) error {
+	switch {
+	case r.percent && !r.closed:
+		return &Error{lines, 1, "the end of the file", "a program that starts with % ends with %"}
+	case !r.percent && !r.p.Ended:
+		return &Error{lines, 1, "the end of the file", "a program ends with M2, M30 or %"}
+	case r.p.Blocks == 0:
+		return &Error{lines, 1, "no blocks", "a program has at least one"}
+	}
+	r.p.Inch = r.unit == 20
+	r.p.End = r.state
+	return nil
+}

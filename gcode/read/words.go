@@ -1,0 +1,119 @@
+package read
+
+import (
+	"fmt"
+	"strings"
+)
+
+// word is a letter with its number in billionths.
+type word struct {
+	letter byte
+	value  int64
+	column int
+	text   string
+}
+
+const (
+	billion  = 1_000_000_000
+	decimals = 9
+	// maxWhole is the largest number taken, in units: billionths of it are exact in
+	// a double, so a coordinate is rounded once.
+	maxWhole = 9_000_000
+	// maxLine is the longest line taken, the limit of NISTIR 6556 3.2.
+	maxLine = 256
+	maxSize = 64 << 20 // bytes of a program
+)
+
+// scan cuts one line into words and comments. A comment in parentheses is one
+// item; a semicolon makes a comment of the rest.
+func scan(line string, no int) (words []word, comments []string, err error) {
+	for i := 0; i < len(line); {
+		c := line[i]
+		switch {
+		case c == ' ' || c == '\t':
+			i++
+		case c == '(':
+			end := strings.IndexAny(line[i+1:], "()")
+			if end < 0 || line[i+1+end] == '(' {
+				return nil, nil, &Error{no, i + 1, "a comment that does not end", "comments end with ) on their line and hold no ("}
+			}
+			comments = append(comments, line[i+1:i+1+end])
+			i += end + 2
+		case c == ';':
+			return words, append(comments, line[i+1:]), nil
+		default:
+			w, next, err := scanWord(line, i, no)
+			if err != nil {
+				return nil, nil, err
+			}
+			words = append(words, w)
+			i = next
+		}
+	}
+	return words, comments, nil
+}
+
+// scanWord reads the word at line[i:].
+func scanWord(line string, i, no int) (word, int, error) {
+	w := word{letter: upper(line[i]), column: i + 1}
+	if !strings.ContainsRune("GXYZIJFSTDHNOMP", rune(w.letter)) || w.letter > 'Z' {
+		return w, i, &Error{no, i + 1, fmt.Sprintf("%q", line[i:i+1]), "words G X Y Z I J F S T D H N O M P are read here"}
+	}
+	j := i + 1
+	for j < len(line) && (line[j] == ' ' || line[j] == '\t') {
+		j++
+	}
+	start := j
+	for j < len(line) && strings.IndexByte("+-.0123456789", line[j]) >= 0 {
+		j++
+	}
+	w.text = string(w.letter) + line[start:j]
+	value, fault := parseNumber(line[start:j])
+	if fault != "" {
+		return w, j, &Error{no, start + 1, fmt.Sprintf("%q after %c", line[start:j], w.letter), fault}
+	}
+	w.value = value
+	return w, j, nil
+}
+
+func upper(c byte) byte {
+	if 'a' <= c && c <= 'z' {
+		return c - 'a' + 'A'
+	}
+	return c
+}
+
+// parseNumber returns a decimal number in billionths, exactly; a fault says what
+// is allowed instead.
+func parseNumber(s string) (int64, string) {
+	const form = "a number is an optional sign, digits, and at most one point"
+	neg := strings.HasPrefix(s, "-")
+	if neg || strings.HasPrefix(s, "+") {
+		s = s[1:]
+	}
+	whole, part, _ := strings.Cut(s, ".")
+	if whole+part == "" || strings.ContainsAny(whole+part, "+-.") {
+		return 0, form
+	}
+	part = strings.TrimRight(part, "0")
+	if len(part) > decimals {
+		return 0, "at most 9 decimals are read"
+	}
+	v := int64(0)
+	for _, d := range []byte(strings.TrimLeft(whole, "0")) {
+		if v = v*10 + int64(d-'0'); v > maxWhole {
+			return 0, fmt.Sprintf("numbers up to %d are read", maxWhole)
+		}
+	}
+	for k := 0; k < decimals; k++ {
+		d := int64(0)
+		if k < len(part) {
+			d = int64(part[k] - '0')
+		}
+		v = v*10 + d
+	}
+	if neg {
+		v = -v
+	}
+	return v, ""
+}

@@ -1,0 +1,98 @@
+package gcode
+
+import (
+	"lobewright/gcode/read"
+)
+
+// words holds everything that is no place: units, numbers, tool, spindle, end.
+func (v *verifier) words() {
+	p, x := v.p, v.x
+	if p.Inch != x.Inch {
+		v.wrong("words", 0, "the units are %s, the part is in %s", unitWord(p.Inch), unitWord(x.Inch))
+	}
+	if p.Number != x.Number {
+		v.fail("words", float64(p.Number), float64(x.Number), nan(), 0, "program number %d, expected %d", p.Number, x.Number)
+	}
+	if n := len(p.Misc); n == 0 || p.Misc[n-1].Code != 30 {
+		v.wrong("words", 0, "the program does not end with M30")
+	}
+	for _, m := range p.Misc {
+		if !v.allowed(m) {
+			v.wrong("words", m.LineNo, "M%d is not expected here", m.Code)
+		}
+	}
+	if p.End.Comp != read.Off {
+		v.wrong("words", 0, "the program ends under %v", p.End.Comp)
+	}
+	last, known := read.State{}, false
+	for i, m := range p.Moves {
+		high := m.HasZ || m.KnownZ // from the first move of Z on, its register counts
+		if i > 0 && sameWords(m.State, last) && high == known {
+			continue
+		}
+		last, known = m.State, high
+		v.state(m)
+	}
+}
+
+func unitWord(inch bool) string {
+	if inch {
+		return "inches (G20)"
+	}
+	return "mm (G21)"
+}
+
+// allowed says whether an M word may stand where it does. A wire's stops are held
+// in order.
+func (v *verifier) allowed(m read.Misc) bool {
+	switch m.Code {
+	case 30:
+		return true
+	case 0:
+		return v.x.Process == Wire
+	case 3, 5, 6:
+		return v.x.Process == Mill
+	case 7, 8, 9:
+		return true
+	}
+	return false
+}
+
+// sameWords compares what state looks at.
+func sameWords(a, b read.State) bool {
+	a.Feed, b.Feed, a.Comp, b.Comp, a.D, b.D, a.Fluid, b.Fluid = 0, 0, 0, 0, 0, 0, false, false
+	return a == b
+}
+
+// state holds the modal words of a move.
+func (v *verifier) state(m read.Move) {
+	if m.Work != 54 {
+		v.fail("words", float64(m.Work), 54, nan(), m.LineNo, "the move is not under G54")
+	}
+	if v.x.Process == Wire {
+		if m.Spindle != 0 || m.H >= 0 || m.Tool >= 0 {
+			v.wrong("words", m.LineNo, "spindle, tool or length words in a wire program")
+		}
+		return
+	}
+	if m.Tool != v.x.Tool {
+		v.fail("words", float64(m.Tool), float64(v.x.Tool), nan(), m.LineNo, "tool T%d, expected T%d", m.Tool, v.x.Tool)
+	}
+	if (m.HasZ || m.KnownZ) && m.H != v.x.Tool {
+		v.fail("words", float64(m.H), float64(v.x.Tool), nan(), m.LineNo, "length register H%d, expected H%d under G43 (-1: none)", m.H, v.x.Tool)
+	}
+	if m.Spindle != 1 || m.Speed != v.x.Speed {
+		v.fail("words", float64(m.Speed*m.Spindle), float64(v.x.Speed), nan(), m.LineNo,
+			"spindle at %d rpm (negative: counterclockwise), expected %d under M3", m.Speed*m.Spindle, v.x.Speed)
+	}
+}
+
+// changed reports whether an M6 stands before the first move.
+func (v *verifier) changed() bool {
+	for _, m := range v.p.Misc {
+		if m.Code == 6 {
+			return m.Before == 0
+		}
+	}
+	return false
+}

@@ -1,0 +1,183 @@
+package fit
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/synth/plane"
+	"lobewright/tolerance/chain"
+)
+
+// Chords. A chord between points of the curve is off by k·L²/8 in its middle and by
+// nothing at its ends. With its ends eps outside the bend it is off by ±eps, may be √2
+// longer, and the count is ∫√(|k|/(16·eps)) ds, the least that is possible for
+// lines joined anywhere within eps. Greedy: from each vertex the furthest next one.
+// Where the bend changes sign the best place of the vertex across the band is
+// not known beforehand; some are tried. Measured on cams: 1.00 to 1.02 times the
+// integral, plus the left-over of the last chord.
+
+const (
+	samplesPerLine = 20
+	bendChanges    = 4  // the curvature may change sign within the next chord when |k|³ < this·16·eps·k'²
+	lineSplits     = 12 // bisections for the furthest vertex
+	linesMost      = 1000000
+)
+
+// offsets returns where across the band, in eps to the left, a vertex may be tried.
+func offsets(f plane.Frame, eps float64) []float64 {
+	if k := math.Abs(f.K); k*k*k < bendChanges*lineConstant*eps*f.DK*f.DK {
+		return []float64{-1, -0.6, -0.3, 0, 0.3, 0.6, 1}
+	}
+	if f.K > 0 {
+		return []float64{-1}
+	}
+	return []float64{1}
+}
+
+// vertex is a corner of a polyline near the curve.
+type vertex struct {
+	p    plane.Point
+	t, s float64
+}
+
+func vertexAt(f plane.Frame, t, s, off float64) vertex {
+	return vertex{f.P.Add(f.T.Left().Scale(off)), t, s}
+}
+
+// Lines returns a closed path of lines within eps (a length) of the curve by the estimate
+// of dense samples, vertices up to eps off the curve. It runs with growing parameter;
+// Source as in Arcs. A corner of the curve gets a vertex of its own. Errors as for Arcs.
+func Lines(c Curve, eps float64) (chain.Path, error) {
+	pieces, err := validate(c, eps)
+	if err != nil {
+		return nil, err
+	}
+	r, err := newRun(c, pieces, 0, len(pieces), linesPer(eps), samplesPerLine)
+	if err != nil {
+		return nil, err
+	}
+	eps *= searchShare
+	start := r.firstVertex(eps)
+	vs := []vertex{start}
+	for _, corner := range append(r.corners(), len(r.samples)) {
+		end := start
+		end.t, end.s = r.samples[corner-1].t, r.samples[corner-1].s
+		if corner < len(r.samples) {
+			end.p = r.samples[corner].P
+		}
+		if vs, err = r.chords(vs, end, eps); err != nil {
+			return nil, err
+		}
+	}
+	return polyline(vs), nil
+}
+
+// firstVertex places the start where a chord from either side can end.
+func (r *run) firstVertex(eps float64) vertex {
+	first, last := r.samples[0], r.samples[len(r.samples)-1]
+	off := 0.0
+	a, b := offsets(first.Frame, eps), offsets(last.Frame, eps)
+	if len(a) == 1 && len(b) == 1 && a[0] == b[0] && math.Abs(first.T.Cross(last.T)) < kinkAngle {
+		off = a[0] * eps
+	}
+	return vertexAt(first.Frame, first.t, 0, off)
+}
+
+// corners returns the pins where the tangent jumps.
+func (r *run) corners() []int {
+	var at []int
+	for _, j := range r.pins {
+		if math.Abs(r.samples[j-1].T.Cross(r.samples[j].T)) > kinkAngle {
+			at = append(at, j)
+		}
+	}
+	return at
+}
+
+// chords goes on from the last vertex to end.
+func (r *run) chords(vs []vertex, end vertex, eps float64) ([]vertex, error) {
+	for {
+		a := vs[len(vs)-1]
+		if r.straight(a, end, eps) {
+			return append(vs, end), nil
+		}
+		b, ok := r.furthestVertex(a, end, eps)
+		if !ok || len(vs) == linesMost {
+			return nil, fmt.Errorf("no line within %g of the curve leaves cam angle %.6g; the curve is not smooth there", eps, a.t)
+		}
+		vs = append(vs, b)
+	}
+}
+
+// furthestVertex returns the next vertex of those whose chord from a is good.
+func (r *run) furthestVertex(a, end vertex, eps float64) (vertex, bool) {
+	f := r.frame(a.t)
+	guess := math.Min(1/linesPer(eps)(f), math.Cbrt(lineConstant*eps/math.Abs(f.DK)))
+	if !(guess > 0) {
+		guess = end.s - a.s
+	}
+	var best vertex
+	found := false
+	try := func(s float64) bool {
+		good := false
+		t := r.tAt(s)
+		if t <= a.t || t >= end.t {
+			return false
+		}
+		g := r.frame(t)
+		for _, off := range offsets(g, eps) {
+			b := vertexAt(g, t, s, off*eps)
+			if r.straight(a, b, eps) {
+				good = true
+				if !found || s > best.s {
+					best, found = b, true
+				}
+				break
+			}
+		}
+		return good
+	}
+	lo, hi := 0.0, math.Min(guess, end.s-a.s)
+	for try(a.s+hi) && hi < end.s-a.s {
+		lo, hi = hi, hi*1.5
+	}
+	for i := 0; i < lineSplits || !found && i < 60; i++ {
+		mid := (lo + hi) / 2
+		if try(a.s + mid) {
+			lo = mid
+		} else {
+			hi = mid
+		}
+	}
+	return best, found
+}
+
+// straight reports whether the curve between two vertices stays within eps of the line
+// through them and runs forward along it, from the samples and parabolas through them.
+func (r *run) straight(a, b vertex, eps float64) bool {
+	v := b.p.Sub(a.p)
+	n := v.Left().Scale(1 / v.Norm())
+	limit := eps * (1 + 1e-9) // the vertices themselves are eps off
+	d0, d1 := 0.0, 0.0
+	lo, hi := r.after(a.t), r.after(b.t)
+	for i := lo; i < hi; i++ {
+		d := r.samples[i].P.Sub(a.p).Dot(n)
+		if !(math.Abs(d) <= limit && r.samples[i].T.Dot(v) > 0) { // also when a and b coincide
+			return false
+		}
+		if (d1-d0)*(d-d1) < 0 && i > lo+1 && math.Abs(peak(d0, d1, d)) > limit {
+			return false
+		}
+		d0, d1 = d1, d
+	}
+	return true
+}
+
+// polyline joins the vertices by lines and closes them.
+func polyline(vs []vertex) chain.Path {
+	var p chain.Path
+	for i := 1; i < len(vs); i++ {
+		p = append(p, chain.Element{Kind: chain.Line, From: vs[i-1].p, To: vs[i].p, Source: chain.Span{From: vs[i-1].t, To: vs[i].t}})
+	}
+	return tie(p)
+}

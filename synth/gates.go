@@ -190,7 +190,7 @@ func (c *Cam) reachGates() []gate.Gate {
 			need = math.Max(need, o)
 		}
 		x := gate.Gate{
-			ID: "reach", Value: need, Limit: d.Radius, Unit: c.unit(), CamAngle: camAngle(d.At), Polar: d.Point.PolarAngle(),
+			ID: "reach", Of: fmt.Sprintf("%d-%s", i+1, op.Process), Value: need, Limit: d.Radius, Unit: c.unit(), CamAngle: camAngle(d.At), Polar: d.Point.PolarAngle(),
 			Pass: need < d.Radius,
 			Text: fmt.Sprintf("operation %d (%s): tool radius with stock against the largest that reaches every flank", i+1, op.Process),
 		}

@@ -5,6 +5,7 @@ package gate
 // Gate is a value against a limit, at a place. A failing gate refuses a release.
 type Gate struct {
 	ID       string  // stable name, as in report.json: "pressure-angle"
+	Of       string  // what is judged when the spec has several: "contour.dxf", "operation 2"; may be empty
 	Value    float64 // in Unit
 	Limit    float64 // in Unit
 	Unit     string  // "deg", "mm", "in", "mm/s", "" for counts

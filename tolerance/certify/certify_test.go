@@ -80,11 +80,11 @@ func nearestOn(e chain.Element, q plane.Point) plane.Point {
 	return best
 }
 
-// randomPath draws a curve and a good path for it.
-func randomPath(t *rapid.T) (curve, chain.Path) {
+// randomPath draws a curve and a path for it, good if there are enough elements.
+func randomPath(t *rapid.T, least int) (curve, chain.Path) {
 	var c curve
 	if rapid.Bool().Draw(t, "ellipse") {
-		c = ellipse(rapid.Float64Range(20, 60).Draw(t, "a"), rapid.Float64Range(20, 60).Draw(t, "b"))
+		c = ellipse(rapid.Float64Range(30, 60).Draw(t, "a"), rapid.Float64Range(30, 60).Draw(t, "b"))
 	} else {
 		m := sampleCam()
 		m.lift = rapid.Float64Range(0.5, 15).Draw(t, "lift")
@@ -92,7 +92,7 @@ func randomPath(t *rapid.T) (curve, chain.Path) {
 		m.off = rapid.SampledFrom([]float64{0, 6, -9}).Draw(t, "off")
 		c = m.curve()
 	}
-	at := spread(rapid.Float64Range(-30, 300).Draw(t, "start"), rapid.IntRange(5, 30).Draw(t, "n"))
+	at := spread(rapid.Float64Range(-30, 300).Draw(t, "start"), rapid.IntRange(least, 30).Draw(t, "n"))
 	wobble := 360 / float64(len(at)) * 0.4
 	for i := range at {
 		at[i] += rapid.Float64Range(-wobble, wobble).Draw(t, "shift")
@@ -124,7 +124,7 @@ func holds(t *rapid.T, c curve, p chain.Path, d certify.Deviation) {
 func TestNeverBelowTruth(t *testing.T) {
 	refused, proven := 0, 0
 	rapid.Check(t, func(t *rapid.T) {
-		c, p := randomPath(t)
+		c, p := randomPath(t, 4)
 		for range rapid.IntRange(0, 3).Draw(t, "faults") {
 			i := rapid.IntRange(0, len(p)-1).Draw(t, "where")
 			j := (i + 1) % len(p)
@@ -162,7 +162,7 @@ func TestNeverBelowTruth(t *testing.T) {
 // Good paths on every curve are proven, whatever the grid.
 func TestGoodPathsPass(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
-		c, p := randomPath(t)
+		c, p := randomPath(t, 15)
 		d, err := certify.Closed(c, p)
 		if err != nil && !strings.Contains(err.Error(), "end radii") {
 			t.Fatalf("%v\n%+v", err, p)
@@ -171,4 +171,33 @@ func TestGoodPathsPass(t *testing.T) {
 			holds(t, c, p, d)
 		}
 	})
+}
+
+// The wedge at a joint: a polygon around a circle touches it with every side, and is
+// R(1/cos(pi/n)-1) away at its corners, where the feet on the two sides are far apart. The
+// same with sides that are arcs of a large radius, bulged a little inwards.
+func TestWedges(t *testing.T) {
+	const r = 50.0
+	c := ellipse(r, r)
+	for _, n := range []int{3, 4, 6, 20} {
+		want := r * (1/math.Cos(math.Pi/float64(n)) - 1)
+		var corners []plane.Point
+		for _, a := range spread(17, n) {
+			corners = append(corners, plane.Polar(r+want, plane.Degrees(a)))
+		}
+		var lines, bulged chain.Path
+		for i, a := range corners {
+			b := corners[(i+1)%n]
+			lines = append(lines, chain.Element{From: a, To: b})
+			middle := a.Add(b.Sub(a).Scale(0.5))
+			inward := middle.Sub(plane.Point{}).Unit().Scale(-0.01 * want)
+			bulged = append(bulged, through(a, middle.Add(inward), b))
+		}
+		for what, p := range map[string]chain.Path{"lines": lines, "arcs": bulged} {
+			d, err := certify.Closed(c, p)
+			if err != nil || d.Bound < want*(1-1e-12) || d.Bound > want*1.02 {
+				t.Errorf("%d %s: %+v, %v; want just above %v", n, what, d, err, want)
+			}
+		}
+	}
 }

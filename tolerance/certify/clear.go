@@ -70,7 +70,8 @@ func Clear(curve Curve, e chain.Element, least float64) (found, at float64, err 
 // Clear asks whether every point of the element, whatever a control makes of it, keeps at least the
 // distance least from every point of the curve. found is the answer: at or above least
 // it is a proven lower bound of the distance; below least it is a distance that is reached,
-// up to rounding and the width of the band of an arc whose radii differ. It is negative
+// up to rounding and the width of the band of an arc whose radii differ, and the least one within 1e-4 of itself
+// or 1e-9 of the curve's size. It is negative
 // where such a band touches the curve. at is the cam angle (degrees) of the
 // least distance met. A line from a point to itself is that point. It is an error when neither can be
 // proven: least within about 1e-9 of the curve's size of the true distance, or no arc.

@@ -86,7 +86,8 @@ func (f *figure) round() error {
 	if f.sweep < 0 {
 		f.sweep += 2 * math.Pi
 	}
-	f.major = turn.Lo < -halfTurnShare*f.r0.Sqr().Lo
+	half := ahead.Hi < 0 && turn.Lo >= -halfTurnShare*f.r0.Sqr().Lo
+	f.major = turn.Lo < 0 && !half
 	return f.band(gb)
 }
 
@@ -108,8 +109,8 @@ func (f *figure) band(gb vec) error {
 		return nil
 	}
 	if !(diff.Mag() <= mismatchShare*f.r0.Lo) {
-		return fmt.Errorf("the arc from %s to %s sweeps %.4g degrees with end radii that differ by %.3g; above 180 degrees they must agree: divide the arc",
-			show(f.e.From), show(f.e.To), f.sweep*180/math.Pi, diff.Mag())
+		return fmt.Errorf("the arc from %s to %s sweeps %.4g degrees with end radii that differ by %.3g; "+
+			"above 180 degrees they must agree: divide the arc", show(f.e.From), show(f.e.To), f.sweep*180/math.Pi, diff.Mag())
 	}
 	f.half = math.Max(f.half, r.Add(taylor.Interval{Lo: -s, Hi: s}).Sub(f.mean).Mag())
 	return nil

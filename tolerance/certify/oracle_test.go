@@ -47,6 +47,8 @@ func on(e chain.Element, as control, s float64) plane.Point {
 	case as == steps && s > 0.999:
 		r += (b.Norm() - r) * (s - 0.999) / 0.001
 		s = 1
+	case as == steps:
+		s /= 0.999
 	}
 	return c.Add(a.Turn(plane.Angle(sweep * s)).Scale(r / a.Norm()))
 }

@@ -57,10 +57,11 @@ const (
 // mark b, once and as far as the element reaches; it leaves the parts as leaves.
 func (p *proof) cover(i int, a, b mark) error {
 	f := &p.figures[i]
-	parts := p.parts(a, b)
-	if len(parts) == 0 {
-		return fmt.Errorf("no part of the curve belongs to it, at cam angle %.6g", p.angle(a))
+	if !a.before(b) {
+		return fmt.Errorf("it does not lead on along the curve: it starts at cam angle %.6g and ends at %.6g; "+
+			"the path must run the way the cam angle grows, and once around", p.angle(a), p.angle(b))
 	}
+	parts := p.parts(a, b)
 	start, end := parts[0], parts[len(parts)-1]
 	from, to := p.spot(start.piece, start.lo), p.spot(end.piece, end.hi)
 	t := turned{f: f, last: from.point()}
@@ -116,7 +117,7 @@ func (p *proof) advance(i int, q part, t *turned, depth int) error {
 	p.evals++
 	yes, no := p.figures[i].forward(&c, p.step)
 	if no {
-		return fmt.Errorf("it runs against the curve at cam angle %.6g", c.m)
+		return fmt.Errorf("it runs against the curve at cam angle %.6g; if all of the path does, reverse it", c.m)
 	}
 	if yes {
 		t.to(c.p[0].point())
@@ -140,10 +141,10 @@ func (p *proof) budget() int { return patchBase + patchEach*len(p.figures) }
 func (p *proof) measure(i int, c *patch) leaf {
 	f := &p.figures[i]
 	off := f.side(c)
-	if v := off.inHi - f.half; v > p.left.size {
+	if v := off.inHi - f.half - f.e.Slack; v > p.left.size {
 		p.left = place{v, c.m + off.atHi, i}
 	}
-	if v := -off.inLo - f.half; v > p.right.size {
+	if v := -off.inLo - f.half - f.e.Slack; v > p.right.size {
 		p.right = place{v, c.m + off.atLo, i}
 	}
 	if v := math.Max(off.inHi, -off.inLo) + f.half; v > p.most {

@@ -67,28 +67,15 @@ func (w *walker) run(u float64) float64 {
 	return float64(m.turn)*w.total + w.s[k] + share*(w.s[k+1]-w.s[k])
 }
 
-// walk returns a mark for every joint, one more than figures, strictly forward.
-func (w *walker) walk(figures []figure, closed bool) ([]mark, error) {
-	u := w.first(figures[0].e.From)
-	marks := []mark{w.mark(u)}
-	for i, f := range figures {
-		if !(f.length() <= 2*w.total) {
-			return nil, fmt.Errorf("element %d (%s) is %.4g long, the whole curve only %.4g", i, f.name(), f.length(), w.total)
-		}
-		var m mark
-		if closed && i == len(figures)-1 {
-			m = mark{marks[0].turn + 1, marks[0].t}
-		} else {
-			u = w.next(w.run(u), f.length(), f.e.To)
-			m = w.mark(u)
-		}
-		if !marks[i].before(m) {
-			return nil, fmt.Errorf("element %d (%s) does not lead on along the curve: it starts at cam angle %.6g and ends at %.6g; "+
-				"the path must run the way the cam angle grows, and once around", i, f.name(), w.angle(marks[i]), w.angle(m))
-		}
-		marks = append(marks, m)
+// start returns the mark of the path's first point.
+func (w *walker) start(p plane.Point) mark { return w.mark(w.first(p)) }
+
+// step returns the mark of the end of a figure that starts at a.
+func (w *walker) step(a mark, f *figure) (mark, error) {
+	if !(f.length() <= 2*w.total) {
+		return a, fmt.Errorf("it is %.4g long, the whole curve only %.4g", f.length(), w.total)
 	}
-	return marks, nil
+	return w.mark(w.next(w.run(w.angle(a)), f.length(), f.e.To)), nil
 }
 
 // first finds the foot of the path's first point: the nearest of those found

@@ -132,7 +132,7 @@ func Parse(data []byte) (*File, error) {
 	if err != nil {
 		return nil, err
 	}
-	p := &parser{lineTypes: map[string]bool{}, layers: map[string]bool{}}
+	p := &parser{lineTypes: map[string]bool{}, layers: map[string]bool{}, names: map[string]bool{}}
 	if err := p.sections(pairs); err != nil {
 		return nil, err
 	}

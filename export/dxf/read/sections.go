@@ -13,6 +13,7 @@ type parser struct {
 	comments  []string        // before the first section
 	lineTypes map[string]bool // in capitals
 	layers    map[string]bool // as written
+	names     map[string]bool // of layers, in capitals
 }
 
 // order lists the sections as they must follow each other.

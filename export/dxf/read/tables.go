@@ -57,11 +57,10 @@ func (p *parser) layer(r record) error {
 	if l.Name == "" {
 		return fault(r.line, "the layer has no name (group 2)")
 	}
-	for name := range p.layers {
-		if strings.EqualFold(name, l.Name) {
-			return fault(r.line, "layer %q is declared twice", l.Name)
-		}
+	if p.names[strings.ToUpper(l.Name)] {
+		return fault(r.line, "layer %q is declared twice", l.Name)
 	}
+	p.names[strings.ToUpper(l.Name)] = true
 	if l.Color, err = f.integer(62, 7); err != nil {
 		return err
 	}

@@ -1,0 +1,171 @@
+package main
+
+import (
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"path/filepath"
+
+	"github.com/urfave/cli/v2"
+
+	"lobewright/export/pack"
+	"lobewright/export/sheet"
+	"lobewright/synth"
+	"lobewright/synth/spec"
+)
+
+func releaseCommand() *cli.Command {
+	return &cli.Command{
+		Name:      "release",
+		Usage:     "read a spec, prove every file of its release pack, and place the pack whole",
+		UsageText: "lobewright release SPEC... [-o DIR]\n\nExamples:\n   lobewright release samples/stick-lift.yaml\n   lobewright release samples/stick-lift.yaml samples/box-pusher.yaml -o out",
+		Flags: []cli.Flag{
+			&cli.StringFlag{Name: "o", Value: "release", Usage: "folder that receives one folder a part"},
+			&cli.StringFlag{Name: "dxf", Value: "2000", Usage: "DXF version: 2000 or r12"},
+			&cli.BoolFlag{Name: "json", Usage: "print the report of each spec as JSON"},
+		},
+		Action: func(c *cli.Context) error {
+			return eachSpec(c, func(s *spec.Spec) error { return release(c, s) })
+		},
+	}
+}
+
+func checkCommand() *cli.Command {
+	return &cli.Command{
+		Name:      "check",
+		Usage:     "show every gate of a spec; write nothing, or with -o what people look at",
+		UsageText: "lobewright check SPEC... [-o DIR]\n\nExamples:\n   lobewright check samples/stick-lift.yaml\n   lobewright check samples/refused-steep.yaml -o draft",
+		Flags: []cli.Flag{
+			&cli.StringFlag{Name: "o", Usage: "folder that receives drawing, charts and sheet, marked NOT RELEASED"},
+			&cli.BoolFlag{Name: "json", Usage: "print the report of each spec as JSON"},
+		},
+		Action: func(c *cli.Context) error {
+			return eachSpec(c, func(s *spec.Spec) error { return check(c, s) })
+		},
+	}
+}
+
+// eachSpec runs the job on every spec named; each stands for itself and the exit
+// status is the highest.
+func eachSpec(c *cli.Context, job func(*spec.Spec) error) error {
+	if c.NArg() == 0 {
+		return failure{statusInput, fmt.Errorf("lobewright %s: found no spec; name at least one YAML file, for example samples/stick-lift.yaml", c.Command.Name)}
+	}
+	worst := failure{}
+	for _, file := range c.Args().Slice() {
+		err := func() error {
+			s, err := readSpec(file)
+			if err != nil {
+				return failure{statusInput, err}
+			}
+			return job(s)
+		}()
+		var f failure
+		if errors.As(err, &f) {
+			if f.err != nil {
+				fmt.Fprintln(c.App.ErrWriter, f.err)
+			}
+			worst.status = max(worst.status, f.status)
+		} else if err != nil {
+			return err
+		}
+	}
+	if worst.status > 0 {
+		return worst
+	}
+	return nil
+}
+
+// specLimit is the largest spec file read, bytes.
+const specLimit = 1 << 20
+
+func readSpec(file string) (*spec.Spec, error) {
+	f, err := os.Open(file)
+	if err != nil {
+		return nil, fmt.Errorf("cannot read the spec: %w", err)
+	}
+	defer f.Close()
+	data, err := io.ReadAll(io.LimitReader(f, specLimit+1))
+	if err != nil {
+		return nil, fmt.Errorf("cannot read the spec: %w", err)
+	}
+	return spec.Read(file, data, synth.Vocabulary())
+}
+
+func release(c *cli.Context, s *spec.Spec) error {
+	p, err := prove(c, s)
+	if err != nil {
+		return err
+	}
+	folder := filepath.Join(c.String("o"), s.Part)
+	if !p.Report.Released {
+		fmt.Fprintf(c.App.ErrWriter, "%s: refused; nothing was written%s\n", s.File, older(folder))
+		return failure{status: statusGate}
+	}
+	if err := p.Place(c.String("o")); err != nil {
+		return failure{statusOutput, fmt.Errorf("%s: cannot write the pack: %w", s.File, err)}
+	}
+	if !c.Bool("json") {
+		fmt.Fprintf(c.App.Writer, "released %s: %d files, each read back or hashed in manifest.json\n", folder, len(p.Files))
+	}
+	return nil
+}
+
+func older(folder string) string {
+	if _, err := os.Stat(folder); err == nil {
+		return "; the older pack in " + folder + " is left in place"
+	}
+	return ""
+}
+
+func check(c *cli.Context, s *spec.Spec) error {
+	p, err := prove(c, s)
+	if err != nil {
+		return err
+	}
+	if dir := c.String("o"); dir != "" {
+		if err := p.PlaceDraft(dir); err != nil {
+			return failure{statusOutput, fmt.Errorf("%s: cannot write the draft: %w", s.File, err)}
+		}
+	}
+	if !p.Passed {
+		return failure{status: statusGate}
+	}
+	return nil
+}
+
+// prove runs the job in memory and prints what it found.
+func prove(c *cli.Context, s *spec.Spec) (*pack.Pack, error) {
+	o := pack.Options{Tool: "lobewright " + version, DXF: "2000", Draft: c.Command.Name == "check"}
+	if c.Command.Name == "release" {
+		o.DXF = c.String("dxf")
+	}
+	if o.DXF != "2000" && o.DXF != "r12" {
+		return nil, failure{statusInput, fmt.Errorf("lobewright release: found --dxf %q; allowed: 2000, r12%s", o.DXF, nearest(o.DXF, []string{"2000", "r12"}))}
+	}
+	p, err := pack.Make(s, o)
+	if err != nil {
+		return nil, failure{statusInput, err}
+	}
+	if c.Bool("json") {
+		data, err := p.Report.JSON()
+		if err != nil {
+			return nil, failure{statusOutput, err}
+		}
+		_, err = c.App.Writer.Write(data)
+		return p, err
+	}
+	fmt.Fprint(c.App.Writer, sheet.Text(p.Report, colored(c.App.Writer)))
+	return p, nil
+}
+
+// colored reports whether the writer is a terminal that wants color.
+func colored(w io.Writer) bool {
+	f, ok := w.(*os.File)
+	if !ok || os.Getenv("NO_COLOR") != "" {
+		return false
+	}
+	info, err := f.Stat()
+	return err == nil && info.Mode()&os.ModeCharDevice != 0
+}

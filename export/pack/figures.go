@@ -1,0 +1,184 @@
+package pack
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/export/sheet"
+	"lobewright/export/svg"
+	"lobewright/synth"
+	"lobewright/synth/plane"
+	"lobewright/synth/spec"
+	"lobewright/tolerance/chain"
+)
+
+// figures draws the three SVG files. released says what is stamped on them.
+func (j *job) figures(released bool) (sheet.Figures, error) {
+	var f sheet.Figures
+	var err error
+	head := j.head(released)
+	if f.Drawing, err = svg.Drawing(j.drawingData(head)); err != nil {
+		return f, fmt.Errorf("drawing: %w", err)
+	}
+	if f.Motion, err = svg.Motion(j.motionChart(head)); err != nil {
+		return f, fmt.Errorf("motion chart: %w", err)
+	}
+	if j.outline != nil {
+		if f.Deviation, err = svg.Deviation(j.deviationChart(head)); err != nil {
+			return f, fmt.Errorf("deviation chart: %w", err)
+		}
+	}
+	return f, nil
+}
+
+func (j *job) head(released bool) svg.Head {
+	s := j.spec
+	return svg.Head{Part: s.Part, Title: s.Title, Revision: s.Revision, Units: string(s.Units), Speed: s.Camshaft.Speed,
+		Clockwise: s.Camshaft.Clockwise, SHA256: s.SHA256, Released: released}
+}
+
+func (j *job) drawingData(head svg.Head) svg.DrawingData {
+	s := j.spec
+	d := svg.DrawingData{
+		Head: head, Material: s.Material, Hardness: s.Hardness, Finish: s.Finish, Date: s.Date, Drawn: s.Drawn, Checked: s.Checked,
+		Thickness: s.Cam.Thickness, OutsideDiameter: s.Cam.OutsideDiameter,
+		Contours: []chain.Path{j.shape(j.cam.Contour())}, PitchCurve: j.shape(j.cam.Pitch()),
+		BaseRadius: s.Cam.BaseRadius, RollerDiameter: s.Follower.RollerDiameter,
+		Roller: plane.Point{X: j.cam.Follower().Datum, Y: s.Follower.Offset}, Offset: s.Follower.Offset,
+		Profile: s.Tolerance.Profile, NoDatum: s.Cam.NoDatum, Events: j.events(), Notes: s.Notes, Cautions: drawingCautions(),
+	}
+	zone, t := j.cam.Cycle().Zone(0)
+	d.Zero = j.cam.Contour().At(zone, t).P
+	if b := s.Cam.Bore; b != nil {
+		d.Bore = &svg.Bore{Diameter: b.Diameter, Fit: b.Fit}
+		if k := b.Keyway; k != nil {
+			d.Bore.Keyway = &svg.Keyway{Width: k.Width, Depth: k.Depth, At: k.At, Fit: k.Fit}
+		}
+	}
+	for _, h := range s.Cam.Holes {
+		d.Holes = append(d.Holes, svg.Hole{Diameter: h.Diameter, Radius: h.Radius, At: h.At})
+	}
+	return d
+}
+
+// shape is a curve for drawing: what was proven, or for a cam that cannot be
+// written the curve at every half degree.
+func (j *job) shape(c *synth.Curve) chain.Path {
+	if j.outline != nil {
+		for _, w := range j.outline.paths {
+			if w.exact.Left() == c.Left() {
+				return w.path
+			}
+		}
+	}
+	var p chain.Path
+	const step = 0.5
+	at := func(deg float64) plane.Point {
+		zone, t := j.cam.Cycle().Zone(deg)
+		return c.At(zone, t).P
+	}
+	for deg := 0.0; deg < 360; deg += step {
+		p = append(p, chain.Element{Kind: chain.Line, From: at(deg), To: at(math.Mod(deg+step, 360))})
+	}
+	return p
+}
+
+// events lists the events of the motion in words, with where each begins on the contour.
+func (j *job) events() []svg.Event {
+	s := j.spec
+	from := s.Motion.StartAt
+	var out []svg.Event
+	for _, e := range s.Motion.Events {
+		text := "dwell"
+		if e.Kind != spec.Dwell {
+			text = fmt.Sprintf("%s %.6g %s, %s", e.Kind, e.Lift, s.Units.Short(), e.Law.Name)
+		}
+		zone, t := j.cam.Cycle().Zone(from)
+		at := plane.Wrap360(from)
+		out = append(out, svg.Event{From: at, To: at + e.Over, Text: text, Start: j.cam.Contour().At(zone, t).P})
+		from += e.Over
+	}
+	return out
+}
+
+// runs samples a quantity over 0 to 360, a run for each zone, so that jumps stay jumps.
+func (j *job) runs(f func(zone int, t float64) float64) []svg.Run {
+	const step = 0.5
+	var first, rest []svg.Run // a zone that passes 360 is cut there
+	for i, z := range j.cam.Cycle().Zones() {
+		n := int(math.Ceil((z.To - z.From) / step))
+		var a, b svg.Run
+		for k := range n + 1 {
+			t := z.From + (z.To-z.From)*float64(k)/float64(n)
+			turn := math.Floor(z.From / 360)
+			at := t - 360*turn
+			if at <= 360 {
+				a = append(a, svg.Sample{CamAngle: at, Value: f(i, t)})
+			}
+			if at >= 360 {
+				if len(b) == 0 && at > 360 {
+					v := f(i, 360*(turn+1))
+					a, b = append(a, svg.Sample{CamAngle: 360, Value: v}), append(b, svg.Sample{CamAngle: 0, Value: v})
+				}
+				b = append(b, svg.Sample{CamAngle: at - 360, Value: f(i, t)})
+			}
+		}
+		rest = append(rest, a)
+		if len(b) > 1 {
+			first = append(first, b)
+		}
+	}
+	all := append(first, rest...)
+	for i := 1; i < len(all); i++ { // in order of cam angle
+		for k := i; k > 0 && all[k][0].CamAngle < all[k-1][0].CamAngle; k-- {
+			all[k], all[k-1] = all[k-1], all[k]
+		}
+	}
+	return all
+}
+
+func (j *job) motionChart(head svg.Head) svg.MotionChart {
+	w, u, l := j.cam.Omega(), j.spec.Units.Short(), j.spec.Limits
+	contour := j.cam.Contour()
+	both := func(limit *float64) []svg.Limit {
+		if limit == nil {
+			return nil
+		}
+		return []svg.Limit{{Value: *limit}, {Value: -*limit}}
+	}
+	c := svg.MotionChart{
+		Head:         head,
+		Lift:         svg.Curve{Unit: u, Runs: j.runs(func(z int, t float64) float64 { return j.cam.LiftIn(z, t).S })},
+		Velocity:     svg.Curve{Unit: u + "/s", Runs: j.runs(func(z int, t float64) float64 { return j.cam.LiftIn(z, t).V * w }), Limits: both(l.Velocity)},
+		Acceleration: svg.Curve{Unit: u + "/s²", Runs: j.runs(func(z int, t float64) float64 { return j.cam.LiftIn(z, t).A * w * w }), Limits: both(l.Acceleration)},
+		Jerk:         svg.Curve{Unit: u + "/s³", Runs: j.runs(func(z int, t float64) float64 { return j.cam.LiftIn(z, t).J * w * w * w }), Limits: both(l.Jerk)},
+		PressureAngle: svg.Curve{Unit: "deg", Runs: j.runs(func(z int, t float64) float64 { return j.cam.PressureAngleIn(z, t).Deg() }),
+			Limits: []svg.Limit{{Value: l.PressureAngle}}},
+		Radius: svg.Curve{Unit: u, Runs: j.runs(func(z int, t float64) float64 {
+			f := contour.At(z, t)
+			return j.convex(f) * math.Abs(f.K)
+		})},
+		Events: j.events(),
+	}
+	if r := l.PressureAngleReturn; r != nil {
+		c.PressureAngle.Limits = append(c.PressureAngle.Limits, svg.Limit{Value: -*r})
+	}
+	if r := l.RadiusOfCurvature; r != nil {
+		c.Radius.Limits = []svg.Limit{{Value: *r}}
+	}
+	radii := contour.Radii()
+	if !math.IsInf(radii.Convex, 1) {
+		c.Radius.Peaks = append(c.Radius.Peaks, svg.Sample{CamAngle: plane.Wrap360(radii.ConvexAt), Value: radii.Convex})
+	}
+	if !math.IsInf(radii.Concave, 1) {
+		c.Radius.Peaks = append(c.Radius.Peaks, svg.Sample{CamAngle: plane.Wrap360(radii.ConcaveAt), Value: -radii.Concave})
+	}
+	return c
+}
+
+func drawingCautions() []string {
+	return []string{
+		"Check units, turning direction and angular datum before cutting.",
+		"Cam and follower are nip points: guard them.",
+	}
+}

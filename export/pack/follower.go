@@ -1,0 +1,146 @@
+package pack
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/export/sheet"
+	"lobewright/export/svg"
+	"lobewright/synth/gate"
+	"lobewright/synth/plane"
+	"lobewright/tolerance/follow"
+)
+
+// run is what the follower does on a written path.
+type run struct {
+	err     follow.Error
+	samples []follow.Sample
+}
+
+// follower runs the roller over a written path.
+func (j *job) follower(w written) (run, error) {
+	centers, err := follow.Centers(w.path, w.toPitch)
+	if err != nil {
+		return run{}, fmt.Errorf("%s, %s: %w", w.file, w.curve, err)
+	}
+	f := j.cam.Follower()
+	roller := follow.Roller{Offset: f.Offset, Datum: f.Datum, Clockwise: f.Clockwise}
+	lift := func(t float64) (s, ds, dds float64) {
+		l := j.cam.LiftAt(t)
+		return l.S, l.V, l.A
+	}
+	var jumps []float64
+	for _, x := range j.cam.Cycle().Junctions() {
+		if x.AccelerationStep() != 0 {
+			jumps = append(jumps, x.At)
+		}
+	}
+	e, samples, err := roller.Compare(centers, lift, j.cam.Cycle().Zones()[0].From, jumps...)
+	if err != nil {
+		return run{}, fmt.Errorf("%s, %s: %w", w.file, w.curve, err)
+	}
+	return run{e, samples}, nil
+}
+
+// reported turns a run into the report's figures, per second at the camshaft's speed.
+func (j *job) reported(r run) *sheet.Follower {
+	w := j.cam.Omega()
+	f := &sheet.Follower{Lift: r.err.Lift, Velocity: r.err.Velocity * w, VelocityStep: r.err.VelocityStep * w, Acceleration: r.err.Acceleration * w * w}
+	if peak := j.cam.Peaks().A; peak > 0 {
+		f.AccelerationShare = r.err.Acceleration / peak
+	}
+	return f
+}
+
+// accelerationRuns is the acceleration error for the deviation chart.
+func (j *job) accelerationRuns(r run) []svg.Run {
+	w := j.cam.Omega()
+	var runs []svg.Run
+	var one svg.Run
+	for _, s := range r.samples {
+		p := svg.Sample{CamAngle: plane.Wrap360(s.At), Value: s.Acceleration * w * w}
+		if n := len(one); n > 0 && p.CamAngle < one[n-1].CamAngle {
+			runs, one = append(runs, one), nil
+		}
+		one = append(one, p)
+	}
+	if len(one) > 0 {
+		runs = append(runs, one)
+	}
+	if len(runs) > 1 {
+		runs = append(runs[1:], runs[0])
+	}
+	return runs
+}
+
+func (j *job) deviationChart(head svg.Head) svg.DeviationChart {
+	w, u := j.cam.Omega(), j.spec.Units.Short()
+	c := svg.DeviationChart{Head: head, Chord: j.chord, DesignPeak: j.cam.Peaks().A * w * w, AccelerationUnit: u + "/s²", Events: j.events()}
+	shown := []written{j.outline.paths[0]}
+	for _, p := range j.programs {
+		if p.finish != nil {
+			shown = append(shown, *p.finish)
+		}
+	}
+	for _, p := range shown {
+		lines, arcs := counts(p.path)
+		d := svg.PathDeviation{Name: p.file + ", " + p.curve, Runs: j.trace(p.exact, p.path), Bound: p.deviation.Bound,
+			Blocks: fmt.Sprintf("%d arcs, %d lines", arcs, lines)}
+		if r, ok := j.follows[p.file+p.curve]; ok {
+			d.AccelerationError = j.accelerationRuns(r)
+		}
+		c.Paths = append(c.Paths, d)
+	}
+	return c
+}
+
+// runFollower runs the follower over everything that was written and returns the
+// largest of each error.
+func (j *job) runFollower() follow.Error {
+	j.follows, j.unknown = map[string]run{}, nil
+	all := append([]written(nil), j.outline.paths...)
+	for _, p := range j.programs {
+		if p.finish != nil {
+			all = append(all, *p.finish)
+		}
+	}
+	var worst follow.Error
+	for _, w := range all {
+		r, err := j.follower(w)
+		if err != nil {
+			// The path is proven; only what the follower does on it is not known.
+			j.unknown = append(j.unknown, gate.Finding{ID: "follower-unknown", CamAngle: math.NaN(), Text: err.Error()})
+			worst.Acceleration, worst.VelocityStep = math.Inf(1), math.Inf(1)
+			continue
+		}
+		j.follows[w.file+w.curve] = r
+		if r.err.Acceleration > worst.Acceleration {
+			worst.Acceleration, worst.AccelerationAt = r.err.Acceleration, r.err.AccelerationAt
+		}
+		if r.err.VelocityStep > worst.VelocityStep {
+			worst.VelocityStep, worst.VelocityStepAt = r.err.VelocityStep, r.err.VelocityStepAt
+		}
+	}
+	return worst
+}
+
+// followerGates holds the errors against the limits the tolerance sets for them.
+func (j *job) followerGates(e follow.Error) {
+	t, w := j.spec.Tolerance, j.cam.Omega()
+	if t.Acceleration != nil {
+		share := e.Acceleration / j.cam.Peaks().A
+		j.add("follower-acceleration", share, *t.Acceleration, "", e.AccelerationAt,
+			"largest acceleration error of the follower on any written path, as a share of the design's peak; blocks were added down to the smallest tolerance the grid allows; take more decimals or accept a larger share")
+	}
+	if t.VelocityStep != nil {
+		j.add("velocity-step", e.VelocityStep*w, *t.VelocityStep, j.spec.Units.Short()+"/s", e.VelocityStepAt,
+			"largest velocity step of the follower at a joint of any written path; take arcs instead of lines, or more decimals")
+	}
+}
+
+// tooRough reports whether the follower's limits ask for more blocks.
+func (j *job) tooRough(e follow.Error) bool {
+	t, w := j.spec.Tolerance, j.cam.Omega()
+	return t.Acceleration != nil && e.Acceleration > *t.Acceleration*j.cam.Peaks().A ||
+		t.VelocityStep != nil && e.VelocityStep*w > math.Abs(*t.VelocityStep)
+}

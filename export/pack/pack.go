@@ -1,0 +1,191 @@
+// Package pack runs the whole job: a spec in, a release pack out whose every
+// DXF and NC file has been parsed back from its bytes and proven against the exact
+// curve before it may be placed.
+package pack
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/export/sheet"
+	"lobewright/synth"
+	"lobewright/synth/gate"
+	"lobewright/synth/plane"
+	"lobewright/synth/spec"
+	"lobewright/tolerance"
+)
+
+// Options are what the command line adds to the spec.
+type Options struct {
+	Tool  string // "lobewright x.y.z", as written into the pack
+	DXF   string // "2000" or "r12"
+	Draft bool   // a check: figures and sheet are marked NOT RELEASED whatever the gates say
+
+	// tamper changes a file's bytes between writing and reading back; tests use it
+	// to show that a damaged file is refused.
+	tamper func(name string, data []byte) []byte
+}
+
+// File is one file of a pack.
+type File struct {
+	Name string
+	Data []byte
+}
+
+// Pack is a finished job in memory. Nothing is on disk until Place or PlaceDraft.
+type Pack struct {
+	Part   string
+	Passed bool // every gate passed
+	Report sheet.Report
+	Files  []File // all of a release but the manifest, in order of the report
+	draft  []File // what people may look at when it is not released
+}
+
+// job is the work in progress; each step adds to it.
+type job struct {
+	spec     *spec.Spec
+	cam      *synth.Cam
+	opt      Options
+	chord    float64
+	tight    float64 // share of the chord tolerance that paths are fitted to
+	gates    []gate.Gate
+	findings []gate.Finding
+	outline  *outline
+	programs []program
+	unknown  []gate.Finding // paths the follower cannot be run over
+	follows  map[string]run // what the follower does, by file and curve
+	budget   tolerance.Budget
+}
+
+// Make runs the job. An error means that the spec cannot be built at all; a
+// failing gate is not an error.
+func Make(s *spec.Spec, o Options) (*Pack, error) {
+	p, _, err := work(s, o)
+	return p, err
+}
+
+func work(s *spec.Spec, o Options) (*Pack, *job, error) {
+	cam, err := synth.Build(s)
+	if err != nil {
+		return nil, nil, err
+	}
+	j := &job{spec: s, cam: cam, opt: o, gates: cam.Gates(), findings: cam.Findings()}
+	j.allocate()
+	if j.cuttable() {
+		j.writeSmoothEnough()
+	}
+	p, err := j.finish()
+	return p, j, err
+}
+
+// finer is by how much the fit is tightened when the follower's errors ask for more
+// blocks: arcs lose acceleration error as the cube root of the tolerance, so
+// this is a quarter of it a step. finest ends it.
+const (
+	finer  = 0.42
+	finest = 1e-3
+)
+
+// writeSmoothEnough writes everything, and again with a tighter fit as long as the
+// follower's limits (tolerance.acceleration, tolerance.velocity_step) ask for it
+// and the grid has room.
+func (j *job) writeSmoothEnough() {
+	before := len(j.gates)
+	first := 0
+	for j.tight = 1; ; j.tight *= finer {
+		j.gates, j.outline, j.programs = j.gates[:before], nil, nil
+		if err := j.writeOutline(); err != nil {
+			j.gates = append(j.gates, gate.Gate{ID: "outline", Limit: 1, AtLeast: true, CamAngle: math.NaN(), Polar: math.NaN(), Text: err.Error()})
+			return
+		}
+		j.writePrograms()
+		worst := j.runFollower()
+		n := len(j.outline.paths[0].path)
+		if j.tight == 1 {
+			first = n
+		}
+		if !j.tooRough(worst) || j.tight*finer < finest || j.fitTo(finer, j.spec.Control.Decimals) == 0 {
+			if n > first {
+				j.findings = append(j.findings, gate.Finding{ID: "blocks-added", CamAngle: math.NaN(),
+					Text: fmt.Sprintf("the contour takes %d blocks instead of %d, because the follower's error limits ask for more than the chord tolerance does", n, first)})
+			}
+			j.findings = append(j.findings, j.unknown...)
+			j.followerGates(worst)
+			return
+		}
+	}
+}
+
+// allocate settles the chord tolerance and holds the budget against the profile zone.
+func (j *job) allocate() {
+	t := j.spec.Tolerance
+	rule := tolerance.Rule(t.Combine)
+	others := j.otherShares()
+	j.chord = t.Chord
+	if j.chord == 0 {
+		chord, err := tolerance.Chord(others, t.Profile, rule)
+		if err != nil || chord == 0 {
+			chord = t.Profile / 10 // the budget gate says that this does not fit
+		}
+		j.chord = chord
+	}
+	j.budget = tolerance.Sum(append([]tolerance.Share{{Source: "chord", HalfWidth: j.chord, Kind: tolerance.Fixed}}, others...), t.Profile, rule)
+	j.gates = append(j.gates, gate.Gate{
+		ID: "budget", Value: j.budget.Value(), Limit: j.budget.Limit, Unit: j.spec.Units.Short(),
+		CamAngle: math.NaN(), Polar: math.NaN(), Pass: j.budget.Pass(),
+		Text: "sum of the errors (" + string(rule) + ") against half the profile zone; reduce chord, take a better machine or a wider zone",
+	})
+}
+
+// otherShares are all errors but the chord's. The certified deviation already
+// holds the rounding of what is printed; the grid share is the half count by which
+// a control may round the points it interpolates.
+func (j *job) otherShares() []tolerance.Share {
+	shares := []tolerance.Share{{Source: "grid", HalfWidth: math.Pow10(-j.spec.Control.Decimals) / 2, Kind: tolerance.Fixed}}
+	if m := j.spec.Tolerance.MachineTool; m != nil {
+		shares = append(shares,
+			tolerance.Share{Source: "resolution", HalfWidth: m.Resolution, Kind: tolerance.Variable},
+			tolerance.Share{Source: "positioning", HalfWidth: m.Positioning, Kind: tolerance.Variable},
+			tolerance.Share{Source: "runout", HalfWidth: m.Runout, Kind: tolerance.Variable},
+			tolerance.Share{Source: "tool", HalfWidth: m.Tool, Kind: tolerance.Variable})
+	}
+	return shares
+}
+
+// cuttable reports whether there is a contour to write: an undercut one is not
+// the envelope of the roller.
+func (j *job) cuttable() bool {
+	for _, g := range j.gates {
+		if g.ID == "undercut" && !g.Pass {
+			return false
+		}
+	}
+	return true
+}
+
+// gridShare is the part of one count that putting a chain on its grid may add to its
+// deviation, set aside before fitting.
+const gridShare = 0.2
+
+// attempts are the shares of the remaining tolerance a path is fitted to, in turn,
+// until the certificate of what was read back is within the chord.
+func attempts() []float64 { return []float64{0.99, 0.85, 0.7, 0.5, 0.35} }
+
+// fitTo returns the tolerance of one attempt for a grid, 0 when the grid eats it up.
+func (j *job) fitTo(share float64, decimals int) float64 {
+	return math.Max(0, share*(j.chord*j.tight-gridShare*math.Pow10(-decimals)))
+}
+
+func (j *job) polar(t float64) float64 {
+	zone, at := j.cam.Cycle().Zone(t)
+	return j.cam.Contour().At(zone, at).P.PolarAngle()
+}
+
+// deviationGate holds a certified bound against the chord tolerance.
+func (j *job) deviationGate(of, what string, bound, at float64) gate.Gate {
+	return gate.Gate{
+		ID: "deviation", Of: of, Value: bound, Limit: j.chord, Unit: j.spec.Units.Short(),
+		CamAngle: plane.Wrap360(at), Polar: j.polar(at), Pass: bound <= j.chord,
+		Text: "certified deviation of " + what + ", parsed back from its bytes; allow a larger chord or give control.decimals one more digit",
+	}
+}

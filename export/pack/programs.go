@@ -1,0 +1,281 @@
+package pack
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/gcode"
+	"lobewright/gcode/read"
+	"lobewright/gcode/write"
+	"lobewright/synth/gate"
+	"lobewright/synth/plane"
+	"lobewright/synth/spec"
+	"lobewright/tolerance/chain"
+	"lobewright/tolerance/fit"
+)
+
+// program is one NC program after it has been read back and verified.
+type program struct {
+	index  int // in the spec, from 0
+	name   string
+	data   []byte
+	plan   gcode.Program
+	expect gcode.Expect
+	result gcode.Result
+	theory float64
+	finish *written // nil when the last cut does not go all around in one piece
+}
+
+// short names the program within the part: "1-mill".
+func (p program) short() string { return fmt.Sprintf("%d-%s", p.index+1, p.expect.Process) }
+
+// writePrograms plans, writes, reads back and verifies one program an operation.
+// An operation whose tool cannot reach has been refused by its gate already.
+func (j *job) writePrograms() {
+	unreached := map[int]bool{}
+	n := 0
+	for _, g := range j.gates {
+		if g.ID == "reach" {
+			unreached[n] = !g.Pass
+			n++
+		}
+	}
+	for i := range j.spec.Operations {
+		if unreached[i] {
+			continue
+		}
+		p, err := j.bestProgram(i)
+		if err != nil {
+			j.gates = append(j.gates, gate.Gate{ID: "program", Value: 0, Limit: 1, AtLeast: true, CamAngle: math.NaN(), Polar: math.NaN(),
+				Text: fmt.Sprintf("operation %d (%s) cannot be programmed: %v", i+1, j.spec.Operations[i].Process, err)})
+			continue
+		}
+		j.programs = append(j.programs, p)
+		j.gates = append(j.gates, j.programGates(p)...)
+	}
+}
+
+// bestProgram tries ever tighter fits until the certificate of what was read back
+// is within the chord, and returns the last try when none is.
+func (j *job) bestProgram(i int) (program, error) {
+	var p program
+	var err error
+	for _, share := range attempts() {
+		eps := j.fitTo(share, j.spec.Control.Decimals)
+		if eps == 0 {
+			eps = j.chord * j.tight * share // the grid alone is too coarse: show by how much
+		}
+		var next program
+		if next, err = j.tryProgram(i, eps); err != nil {
+			continue
+		}
+		p = next
+		if p.result.Deviation.Bound <= j.chord {
+			return p, nil
+		}
+	}
+	if p.data != nil {
+		return p, nil
+	}
+	return p, err
+}
+
+func (j *job) tryProgram(i int, eps float64) (program, error) {
+	op := j.operation(i, eps)
+	part, machine := j.part(op, i), j.machine()
+	plan, err := gcode.Plan(part, op, machine)
+	if err != nil {
+		return program{}, err
+	}
+	name := fmt.Sprintf("%s.%d-%s.nc", j.spec.Part, i+1, op.Process)
+	return j.proveProgram(program{index: i, name: name, plan: plan, expect: gcode.Expected(part, op, machine, j.chord)},
+		j.tampered(name, write.Program(plan)))
+}
+
+// proveProgram reads a program back from its bytes and holds it against what was
+// planned and against the exact curves.
+func (j *job) proveProgram(p program, data []byte) (program, error) {
+	p.data = data
+	back, err := read.Parse(p.data)
+	if err != nil {
+		return p, fmt.Errorf("%s: %w", p.name, err)
+	}
+	if err := gcode.Differs(p.plan, back); err != nil {
+		return p, fmt.Errorf("%s: %w", p.name, err)
+	}
+	if p.result, err = gcode.Verify(back, p.expect); err != nil {
+		return p, fmt.Errorf("%s: %w", p.name, err)
+	}
+	kind := chain.Arc
+	if j.spec.Operations[p.index].Moves == "lines" {
+		kind = chain.Line
+	}
+	exact := j.cam.Parallel(p.result.FinishOffset)
+	p.theory = fit.Theory(exact, j.chord, kind)
+	if loop, ok := oneTurn(p.result.Finish, math.Pow10(-j.spec.Control.Decimals)); ok {
+		p.finish = &written{file: p.name, curve: "last pass", exact: exact, path: loop, deviation: p.result.Deviation,
+			theory: p.theory, toPitch: -exact.Left()}
+	}
+	return p, nil
+}
+
+// oneTurn cuts a path that overlaps its own start down to the closed turn, and
+// heals the line that the start split in two: its halves bend by the rounding of
+// the split point, no more than a count of the grid.
+func oneTurn(p chain.Path, count float64) (chain.Path, bool) {
+	for i := range p {
+		if p[i].To == p[0].From {
+			return healed(append(chain.Path(nil), p[:i+1]...), count), i > 0
+		}
+	}
+	return nil, false
+}
+
+func healed(p chain.Path, count float64) chain.Path {
+	first, last := p[0], p[len(p)-1]
+	if len(p) < 3 || first.Kind != chain.Line || last.Kind != chain.Line {
+		return p
+	}
+	whole := first.To.Sub(last.From)
+	if math.Abs(whole.Unit().Cross(first.From.Sub(last.From))) > count {
+		return p
+	}
+	p[0] = chain.Element{Kind: chain.Line, From: last.From, To: first.To}
+	return p[:len(p)-1]
+}
+
+func (j *job) machine() gcode.Machine {
+	c := j.spec.Control
+	return gcode.Machine{Decimals: c.Decimals, AbsoluteArcs: c.AbsoluteArcs, ArcMismatch: c.ArcMismatch,
+		BlockNumbers: c.BlockNumbers, MaxBlocks: c.MaxBlocks, SafeZ: c.SafeZ}
+}
+
+func (j *job) part(op gcode.Operation, i int) gcode.Part {
+	s := j.spec
+	p := gcode.Part{Name: s.Part, Title: s.Title, Revision: s.Revision, Inch: s.Units == spec.Inch, Thickness: s.Cam.Thickness,
+		CamClockwise: s.Camshaft.Clockwise, StartAt: j.startAt(s.Operations[i]),
+		Curve: func(offset float64) gcode.Curve { return j.cam.Parallel(offset) }}
+	if s.Blank != nil {
+		p.BlankDiameter, p.ClampRadius = s.Blank.Diameter, s.Blank.ClampRadius
+	}
+	if s.Cam.Bore != nil {
+		p.BoreDiameter = s.Cam.Bore.Diameter
+	}
+	return p
+}
+
+// operation turns an operation of the spec into one of the planner, its paths fitted to eps.
+func (j *job) operation(i int, eps float64) gcode.Operation {
+	o := j.spec.Operations[i]
+	op := gcode.Operation{
+		Number: i + 1, Process: gcode.Process(o.Process), Compensation: gcode.Compensation(o.Compensation), Feed: o.Feed,
+		Tool: o.Tool, ToolDiameter: o.ToolDiameter, SpindleSpeed: o.SpindleSpeed, PlungeFeed: o.PlungeFeed, StepDown: o.StepDown,
+		Stock: o.Stock, Direction: gcode.Direction(o.Direction), WireDiameter: o.WireDiameter, Offsets: o.Offsets,
+	}
+	if o.Tab != nil {
+		op.Tab = gcode.Tab{Width: o.Tab.Width, At: o.Tab.At}
+	}
+	if o.StartHole != nil {
+		op.StartHole = gcode.StartHole{Radius: o.StartHole.Radius, At: o.StartHole.At}
+	}
+	if o.Moves == "lines" {
+		op.Path = func(offset float64) (chain.Path, error) { return fit.Lines(j.cam.Parallel(offset), eps) }
+		return op
+	}
+	pitch, err := j.pitchFit(eps)
+	op.Path = func(offset float64) (chain.Path, error) {
+		if err != nil {
+			return nil, err
+		}
+		return pitch.Offset(j.cam.LeftOfPitch(offset))
+	}
+	return op
+}
+
+// startAt is where a milled pass begins: as the spec says, else in the middle of the
+// longest low dwell, else where the contour's curvature changes least.
+func (j *job) startAt(o spec.Operation) float64 {
+	if o.StartAt != nil {
+		return *o.StartAt
+	}
+	longest, at := 0.0, math.NaN()
+	for i, z := range j.cam.Cycle().Zones() {
+		if z.Dwell && z.To-z.From > longest && j.cam.LiftIn(i, z.From).S <= lowLift*j.cam.Cycle().MaxLift() {
+			longest, at = z.To-z.From, (z.From+z.To)/2
+		}
+	}
+	if !math.IsNaN(at) {
+		return plane.Wrap360(at)
+	}
+	least := math.Inf(1)
+	contour := j.cam.Contour()
+	for deg := 0.0; deg < 360; deg++ {
+		zone, t := j.cam.Cycle().Zone(deg)
+		if d := math.Abs(contour.At(zone, t).DK); d < least {
+			least, at = d, deg
+		}
+	}
+	return at
+}
+
+// lowLift is the share of the lift up to which a dwell counts as low: rounding.
+const lowLift = 1e-9
+
+// programGates turns what was proven of a program into gates: deviation, arc
+// mismatch, block count, clearance, and whatever else failed.
+func (j *job) programGates(p program) []gate.Gate {
+	r, u := p.result, j.spec.Units.Short()
+	none := math.NaN()
+	more := map[int]int{} // how many failures each gate stands for besides its own
+	gates := []gate.Gate{j.deviationGate(p.short(), p.name, r.Deviation.Bound, r.Deviation.At)}
+	gates = append(gates, gate.Gate{ID: "arc-mismatch", Of: p.short(), Value: r.ArcMismatch, Limit: j.spec.Control.ArcMismatch, Unit: u, CamAngle: none, Polar: none,
+		Pass: r.ArcMismatch <= j.spec.Control.ArcMismatch,
+		Text: fmt.Sprintf("largest difference of an arc's end radii in %s (line %d); give control.decimals one more digit", p.name, r.ArcMismatchLine)})
+	if limit := j.spec.Control.MaxBlocks; limit > 0 {
+		gates = append(gates, gate.Gate{ID: "block-count", Of: p.short(), Value: float64(r.Blocks), Limit: float64(limit), CamAngle: none, Polar: none,
+			Pass: r.Blocks <= limit, Text: fmt.Sprintf("blocks of %s; allow a larger chord, fewer passes or a larger max_blocks", p.name)})
+	}
+	kinds := map[string]int{} // index of the gate that names the first failure of its kind
+	for _, f := range r.Failures {
+		if j.judged(p, f) {
+			continue
+		}
+		if i, ok := kinds[f.ID]; ok {
+			more[i]++
+			continue
+		}
+		kinds[f.ID] = len(gates)
+		gates = append(gates, gate.Gate{ID: f.ID, Of: p.short(), Value: f.Value, Limit: f.Limit, Unit: u, AtLeast: f.Value < f.Limit, CamAngle: f.CamAngle, Polar: j.polarOf(f.CamAngle),
+			Text: fmt.Sprintf("%s, line %d: %s", p.name, f.Line, f.Text)})
+	}
+	for i, n := range more {
+		gates[i].Text += fmt.Sprintf(" (and %d more of the kind)", n)
+	}
+	if _, failed := kinds["clearance"]; !failed {
+		gates = append(gates, gate.Gate{ID: "clearance", Of: p.short(), Value: r.Clearance, Limit: 0, Unit: u, AtLeast: true, CamAngle: none, Polar: none, Pass: true,
+			Text: fmt.Sprintf("least margin of approaches, leads, plunges and rapids in %s to the finished contour, bore and clamp (line %d)", p.name, r.ClearanceLine)})
+	}
+	return gates
+}
+
+// judged reports whether a failure is already told by a gate of its own: a path that
+// deviates inwards also comes too near to its contour, by no more than it deviates.
+func (j *job) judged(p program, f gcode.Failure) bool {
+	fails := !(p.result.Deviation.Bound <= j.chord)
+	switch f.ID {
+	case "arc-mismatch", "block-count":
+		return true
+	case "deviation":
+		return fails
+	case "reach":
+		return fails && f.Limit+j.chord-f.Value <= p.result.Deviation.Bound
+	}
+	return false
+}
+
+func (j *job) polarOf(camAngle float64) float64 {
+	if math.IsNaN(camAngle) {
+		return camAngle
+	}
+	return j.polar(camAngle)
+}

@@ -1,0 +1,258 @@
+package pack
+
+import (
+	"crypto/sha256"
+	"encoding/hex"
+	"fmt"
+	"math"
+	"slices"
+
+	"lobewright/export/sheet"
+	"lobewright/gcode"
+	"lobewright/synth/gate"
+	"lobewright/synth/plane"
+	"lobewright/tolerance/certify"
+	"lobewright/tolerance/chain"
+)
+
+// add appends a gate that holds a value at a cam angle to at most a limit.
+func (j *job) add(id string, value, limit float64, unit string, at float64, text string) {
+	j.gates = append(j.gates, gate.Gate{ID: id, Value: value, Limit: limit, Unit: unit, CamAngle: plane.Wrap360(at), Polar: j.polarOf(at),
+		Pass: value <= limit, Text: text})
+}
+
+// finish draws, tabulates and reports what the steps before found.
+func (j *job) finish() (*Pack, error) {
+	p := &Pack{Part: j.spec.Part, Passed: true}
+	for _, g := range j.gates {
+		p.Passed = p.Passed && g.Pass
+	}
+	released := p.Passed && !j.opt.Draft
+	figures, err := j.figures(released)
+	if err != nil {
+		return nil, err
+	}
+	motion, err := j.motionTable()
+	if err != nil {
+		return nil, err
+	}
+	inspection, err := j.inspectionTable()
+	if err != nil {
+		return nil, err
+	}
+	p.Report = j.report(released)
+	name := func(tail string) string { return j.spec.Part + "." + tail }
+	look := []File{{name("svg"), figures.Drawing}, {name("motion.svg"), figures.Motion}}
+	if figures.Deviation != nil {
+		look = append(look, File{name("error.svg"), figures.Deviation})
+	}
+	if j.outline != nil {
+		p.Files = append(p.Files, File{j.outline.name, j.outline.data})
+	}
+	p.Files = append(p.Files, look...)
+	for _, q := range j.programs {
+		p.Files = append(p.Files, File{q.name, q.data})
+	}
+	p.Files = append(p.Files, File{name("inspection.csv"), inspection}, File{name("motion.csv"), motion})
+	if p.Report.Released {
+		for _, f := range p.Files {
+			sum := sha256.Sum256(f.Data)
+			p.Report.Files = append(p.Report.Files, f.Name)
+			p.Report.FileHashes = append(p.Report.FileHashes, sheet.FileHash{Name: f.Name, SHA256: hex.EncodeToString(sum[:])})
+		}
+		p.Report.Files = append(p.Report.Files, name("report.html"), name("report.json"), "manifest.json")
+	}
+	html, err := sheet.HTML(p.Report, figures)
+	if err != nil {
+		return nil, err
+	}
+	jsonData, err := p.Report.JSON()
+	if err != nil {
+		return nil, err
+	}
+	p.draft = append(slices.Clone(look), File{name("report.html"), html})
+	p.Files = append(p.Files, File{name("report.html"), html}, File{name("report.json"), jsonData})
+	return p, nil
+}
+
+func (j *job) report(released bool) sheet.Report {
+	s := j.spec
+	r := sheet.Report{
+		Tool: j.opt.Tool, Part: s.Part, Title: s.Title, Revision: s.Revision, Units: string(s.Units), SpecSHA256: s.SHA256, Released: released,
+		Camshaft: sheet.Camshaft{Speed: s.Camshaft.Speed, Rotation: j.rotation()},
+		Facts:    j.facts(), Gates: sheet.Gates(j.gates), Findings: sheet.Findings(j.findings),
+		Contour: j.contourFacts(), Motion: j.motionFacts(), Budget: j.budgetFacts(),
+		Tolerance: sheet.Tolerance{Profile: s.Tolerance.Profile, Chord: j.chord}, Notes: s.Notes, Cautions: cautions(), Files: []string{},
+	}
+	for _, e := range j.events() {
+		r.Events = append(r.Events, sheet.Event{From: e.From, To: e.To, Text: e.Text})
+	}
+	if j.outline != nil {
+		for _, w := range j.outline.paths {
+			r.Paths = append(r.Paths, j.pathFacts(w))
+		}
+	}
+	for _, p := range j.programs {
+		if p.finish != nil {
+			r.Paths = append(r.Paths, j.pathFacts(*p.finish))
+		}
+		r.Operations = append(r.Operations, j.operationFacts(p))
+	}
+	return r
+}
+
+func (j *job) facts() []sheet.Fact {
+	s, u := j.spec, j.spec.Units.Short()
+	var f []sheet.Fact
+	add := func(name, format string, args ...any) {
+		f = append(f, sheet.Fact{Name: name, Text: fmt.Sprintf(format, args...)})
+	}
+	side := "on the axis's line"
+	if s.Follower.Offset > 0 {
+		side = fmt.Sprintf("offset %g %s to the left (+Y), looking along the lift", s.Follower.Offset, u)
+	} else if s.Follower.Offset < 0 {
+		side = fmt.Sprintf("offset %g %s to the right (-Y), looking along the lift", -s.Follower.Offset, u)
+	}
+	add("Camshaft", "%g rpm, %s as seen on the marked face", s.Camshaft.Speed, j.rotation())
+	add("Follower", "translating roller of diameter %g %s, %s", s.Follower.RollerDiameter, u, side)
+	add("Base circle", "radius %g %s", s.Cam.BaseRadius, u)
+	add("Prime circle", "radius %g %s", j.cam.Prime(), u)
+	add("Thickness", "%g %s", s.Cam.Thickness, u)
+	if b := s.Cam.Bore; b != nil {
+		text := fmt.Sprintf("diameter %g %s %s", b.Diameter, u, b.Fit)
+		if k := b.Keyway; k != nil {
+			text += fmt.Sprintf(", keyway %g %s x %g at %g°", k.Width, k.Fit, k.Depth, k.At)
+		}
+		add("Bore", "%s", text)
+	}
+	for _, t := range [][2]string{{"Material", s.Material}, {"Hardness", s.Hardness}, {"Finish", s.Finish}, {"Drawn", s.Drawn}, {"Checked", s.Checked}, {"Date", s.Date}} {
+		if t[1] != "" {
+			add(t[0], "%s", t[1])
+		}
+	}
+	return f
+}
+
+func (j *job) contourFacts() sheet.Contour {
+	k := j.cam.Contour()
+	r := k.Radii()
+	c := sheet.Contour{Length: k.Length(), Area: k.Area(), LeastConvexRadius: sheet.Maybe(r.Convex), LeastConcaveRadius: sheet.Maybe(r.Concave), Junctions: []float64{}}
+	for _, x := range j.cam.Cycle().Junctions() {
+		c.Junctions = append(c.Junctions, plane.Wrap360(x.At))
+	}
+	return c
+}
+
+// motionFacts: the jerk is that inside the zones; jumps of the acceleration are findings.
+func (j *job) motionFacts() sheet.Motion {
+	p, w := j.cam.Cycle().Peaks(), j.cam.Omega()
+	return sheet.Motion{PeakVelocity: p.Velocity.Value * w, PeakAcceleration: p.Acceleration.Value * w * w, PeakJerk: p.Jerk.Value * w * w * w}
+}
+
+func (j *job) budgetFacts() sheet.Budget {
+	b := sheet.Budget{WorstCase: j.budget.WorstCase, RSS: j.budget.RSS, FixedPlusRSS: j.budget.FixedPlusRSS, Combine: string(j.budget.Rule), Limit: j.budget.Limit}
+	for _, s := range j.budget.Shares {
+		b.Shares = append(b.Shares, sheet.Share{Source: s.Source, HalfWidth: s.HalfWidth, Kind: string(s.Kind)})
+	}
+	return b
+}
+
+// deviationFacts turns left and right of travel with growing cam angle into outside and inside.
+func (j *job) deviationFacts(d certify.Deviation) sheet.Deviation {
+	out, in := d.Left, d.Right
+	if !j.cam.OutsideIsLeft() {
+		out, in = in, out
+	}
+	return sheet.Deviation{Bound: d.Bound, Outside: out, Inside: -in, CamAngle: sheet.Maybe(plane.Wrap360(d.At))}
+}
+
+func counts(p chain.Path) (lines, arcs int) {
+	for _, e := range p {
+		if e.Kind == chain.Arc {
+			arcs++
+		} else {
+			lines++
+		}
+	}
+	return lines, arcs
+}
+
+func (j *job) pathFacts(w written) sheet.Path {
+	lines, arcs := counts(w.path)
+	p := sheet.Path{File: w.file, Curve: w.curve, Lines: lines, Arcs: arcs, Theory: w.theory, Deviation: j.deviationFacts(w.deviation)}
+	if r, ok := j.follows[w.file+w.curve]; ok {
+		p.Follower = j.reported(r)
+	}
+	return p
+}
+
+func (j *job) operationFacts(p program) sheet.Operation {
+	op, u := j.spec.Operations[p.index], j.spec.Units.Short()
+	r := p.result
+	o := sheet.Operation{File: p.name, Process: op.Process, Axes: op.Axes, Blocks: r.Blocks, Lines: r.Lines, Arcs: r.Arcs, Bytes: r.Bytes,
+		PathLength: r.PathLength, Seconds: r.Seconds, ArcMismatch: r.ArcMismatch, Deviation: j.deviationFacts(r.Deviation)}
+	if p.finish != nil {
+		if f, ok := j.follows[p.name+p.finish.curve]; ok {
+			o.Follower = j.reported(f)
+		}
+	}
+	set := func(name, format string, args ...any) {
+		o.Setup = append(o.Setup, sheet.Fact{Name: name, Text: fmt.Sprintf(format, args...)})
+	}
+	set("Work zero", "X0 Y0 camshaft axis, angular datum at its polar angle, seen on the marked face; Z0 top of the blank")
+	set("Turning direction", "the camshaft turns %s", j.rotation())
+	if op.Process == "wire" {
+		o.NotFinished = false
+		set("Wire", "diameter %g %s", op.WireDiameter, u)
+		set("Start hole", "radius %g %s at polar angle %g°", op.StartHole.Radius, u, op.StartHole.At)
+		set("Tab", "%g %s wide at polar angle %g°; clamp the part at the stop before it is cut", op.Tab.Width, u, op.Tab.At)
+	} else {
+		o.NotFinished = op.Stock[len(op.Stock)-1] > 0
+		set("Tool", "T%d, diameter %g %s, %g rpm, feed %g %s/min, plunge %g %s/min", op.Tool, op.ToolDiameter, u, op.SpindleSpeed, op.Feed, u, op.PlungeFeed, u)
+		set("Start", "cam angle %.4g°", j.startAt(op))
+	}
+	if b := j.spec.Blank; b != nil {
+		set("Blank", "diameter %g %s, clamp inside radius %g %s", b.Diameter, u, b.ClampRadius, u)
+	}
+	for _, d := range p.plan.Registers {
+		o.Offsets = append(o.Offsets, sheet.Register{Name: fmt.Sprintf("D%d", d.Number), Value: d.Value, Text: d.Text})
+	}
+	for i, c := range r.Cuts {
+		o.Passes = append(o.Passes, j.passFacts(p, i, c))
+	}
+	return o
+}
+
+func (j *job) passFacts(p program, i int, c gcode.CutResult) sheet.Pass {
+	f := sheet.Pass{Number: i + 1, Offset: c.Offset, Word: compensationWord(p.expect, c.Clockwise), Lines: c.Lines, Arcs: c.Arcs}
+	if p.expect.Process == gcode.Mill {
+		f.Stock = c.Offset - p.expect.Radius
+	}
+	if !math.IsInf(c.Deviation.Bound, 0) {
+		d := j.deviationFacts(c.Deviation)
+		f.Deviation = &d
+	}
+	return f
+}
+
+func compensationWord(x gcode.Expect, clockwise bool) string {
+	switch {
+	case x.Compensation == gcode.CompPath:
+		return ""
+	case clockwise:
+		return "G41"
+	}
+	return "G42"
+}
+
+// cautions are printed on the sheet. ISO 12100 and ISO 14120 (machine guarding),
+// ISO 23125, ISO 16090-1 and ISO 28881 (turning, milling and electro-discharge machines).
+func cautions() []string {
+	return []string{
+		"A control does what the program says and rarely detects a mistake. These programs were proven against the exact contour, not on your machine.",
+		"Before cutting check units, work zero, angular datum, turning direction, view side, tool or wire diameter, offset registers and clamp clearance.",
+		"Prove out dry: single block, low rapid, hand on feed hold; cut the first part in soft material, measure it, then release.",
+		"Rotating cams and followers are nip and shear points: guard them (ISO 12100, ISO 14120).",
+		"Local rules, the machine's manual and the responsible licensed person decide (ISO 23125, ISO 16090-1, ISO 28881).",
+	}
+}

@@ -1,0 +1,129 @@
+package svg
+
+import (
+	"lobewright/synth/plane"
+	"lobewright/tolerance/chain"
+)
+
+// Head is what all three figures say of the part.
+type Head struct {
+	Part, Title, Revision string // as in the spec
+	Units                 string // "mm" or "inch": the unit of every length
+	Speed                 float64
+	Clockwise             bool // turning direction as seen on the marked face; Speed is in rpm
+	SHA256                string
+	Released              bool // false puts NOT RELEASED on the figure
+}
+
+// DrawingData is the toolroom drawing of a plate cam. Lengths are in
+// Head.Units, angles in degrees, points in the cam frame with Y up. Empty texts
+// and zero pointers are left out of the drawing.
+type DrawingData struct {
+	Head
+	Material, Hardness, Finish, Date, Drawn, Checked string
+
+	Thickness       float64      // length, 0 when not given
+	OutsideDiameter float64      // length, 0 when not given
+	Contours        []chain.Path // closed outlines, drawn thick as real arcs; a plate cam has one
+	PitchCurve      chain.Path   // path of the roller center, chain line; may be empty
+	BaseRadius      float64      // length
+	RollerDiameter  float64      // length, 0 when the follower has no roller
+	Roller          plane.Point  // roller center at lift 0, as at cam angle 0: (sqrt((Rb+r)²-offset²), offset)
+	Offset          float64      // length, distance of the follower's line from the axis, positive to +Y
+	Profile         float64      // length, total width of the profile zone
+	Bore            *Bore        // nil when there is none
+	Holes           []Hole
+	NoDatum         bool        // the spec says there is no angular datum
+	Zero            plane.Point // contour point at cam angle 0, where the zero mark is stamped
+	Events          []Event     // in order of cam angle
+	Notes           []string
+	Cautions        []string
+}
+
+// Bore is the hole about the camshaft axis: datum A.
+type Bore struct {
+	Diameter float64 // length
+	Fit      string  // "H7" or empty
+	Keyway   *Keyway // nil when there is none; datum C
+}
+
+// Keyway is a hub keyway. Depth is from the bore circle on the keyway's center line.
+type Keyway struct {
+	Width, Depth float64 // length
+	At           float64 // polar angle, degrees
+	Fit          string
+}
+
+// Hole is a round through hole; without a keyway the first one is datum C.
+type Hole struct {
+	Diameter, Radius float64 // length; Radius from the camshaft axis to its center
+	At               float64 // polar angle, degrees
+}
+
+// Event is one stretch of the motion.
+type Event struct {
+	From, To float64     // cam angle, degrees; an event that wraps has To above 360
+	Text     string      // "rise 14 mm, modified-sine"
+	Start    plane.Point // contour point at From, where the tick is drawn
+}
+
+// Sample is a value at a cam angle in degrees.
+type Sample struct{ CamAngle, Value float64 }
+
+// Run is a stretch of a series without jumps, cam angle not falling. Where one run
+// ends and the next begins at the same cam angle, the chart draws a vertical step.
+type Run []Sample
+
+// Limit is a line across a chart; it holds From..To, or everywhere when both are 0.
+type Limit struct {
+	Value    float64
+	From, To float64 // cam angle, degrees
+	Text     string  // "limit 30"; empty for "limit" and the value
+}
+
+// Curve is one series of a motion chart.
+type Curve struct {
+	Runs   []Run
+	Unit   string   // printed on the axis: "mm", "mm/s", "deg"
+	Limits []Limit  // in Unit
+	Peaks  []Sample // labeled places, in Unit; nil labels the greatest and the least sample
+}
+
+// MotionChart is the six panels over cam angle 0 to 360.
+type MotionChart struct {
+	Head
+	Lift, Velocity, Acceleration, Jerk, PressureAngle Curve
+	// Radius is the radius of curvature of the contour. Its Runs hold the curvature
+	// instead (1/length, positive where the contour is convex, 0 at an inflection), so
+	// that every sample is finite; Limits and Peaks are radii (length, negative where concave).
+	Radius Curve
+	Events []Event // boundaries are drawn at From; Start is not used
+}
+
+// DeviationSample is the normal deviation of a written path.
+type DeviationSample struct {
+	CamAngle float64 // degrees, 0 to 360
+	Polar    float64 // polar angle of the place, degrees
+	Value    float64 // length, positive outside the exact curve (away from the camshaft)
+}
+
+// PathDeviation is one written path against the exact curve.
+type PathDeviation struct {
+	Name   string              // "stick-lift.dxf, contour"
+	Runs   [][]DeviationSample // in order of cam angle
+	Bound  float64             // length: certified upper bound of the deviation's size
+	Blocks string              // "48 arcs, 2 lines" or empty
+	// AccelerationError is the follower's acceleration on the written path less that
+	// of the design, length/s² (degrees/s² for a swinging follower); empty leaves the panel out.
+	AccelerationError []Run
+}
+
+// DeviationChart is the deviation of the written paths around the cam.
+type DeviationChart struct {
+	Head
+	Chord            float64 // length: the zone is -Chord to +Chord
+	DesignPeak       float64 // peak acceleration of the design, in AccelerationUnit
+	AccelerationUnit string  // "mm/s²"
+	Paths            []PathDeviation
+	Events           []Event // boundaries are drawn at From; Start is not used
+}

@@ -17,6 +17,7 @@ import (
 	"lobewright/gcode"
 	"lobewright/gcode/read"
 	"lobewright/synth/plane"
+	"lobewright/synth/spec"
 )
 
 // printed is what the RS274/NGC interpreter prints of a length: four decimals.
@@ -184,4 +185,14 @@ func compareCompensated(t *testing.T, p program, back *read.Program, got []canon
 		t.Fatalf("%s: the interpreter ran %d of %d compensated arcs; the next is at line %d", p.name, n, len(want), want[n].LineNo)
 	}
 	return n
+}
+
+// makeJob runs the job and returns its programs besides.
+func makeJob(t testing.TB, s *spec.Spec) (*Pack, []program) {
+	t.Helper()
+	p, j, err := work(s, options())
+	if err != nil {
+		t.Fatal(err)
+	}
+	return p, j.programs
 }

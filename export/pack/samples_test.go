@@ -1,8 +1,11 @@
 package pack
 
 import (
+	"bytes"
+	"fmt"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
 
@@ -47,12 +50,85 @@ func readSample(t testing.TB, file string) *spec.Spec {
 
 func options() Options { return Options{Tool: "lobewright test", DXF: "2000"} }
 
-// makeJob runs the job and returns its programs besides.
-func makeJob(t testing.TB, s *spec.Spec) (*Pack, []program) {
-	t.Helper()
-	p, j, err := work(s, options())
+// Every sample releases, with every file of the contract, the same bytes each time,
+// and a report whose figures hold.
+func TestSamplesRelease(t *testing.T) {
+	for _, name := range releasingSamples(t) {
+		t.Run(strings.TrimSuffix(filepath.Base(name), ".yaml"), func(t *testing.T) {
+			s := readSample(t, name)
+			p, err := Make(s, options())
+			if err != nil {
+				t.Fatal(err)
+			}
+			if !p.Passed || !p.Report.Released {
+				t.Fatalf("refused: %+v", p.Report.Gates)
+			}
+			var names []string
+			for _, f := range p.Files {
+				names = append(names, f.Name)
+			}
+			want := []string{s.Part + ".dxf", s.Part + ".svg", s.Part + ".motion.svg", s.Part + ".error.svg"}
+			for i, op := range s.Operations {
+				want = append(want, fmt.Sprintf("%s.%d-%s.nc", s.Part, i+1, op.Process))
+			}
+			for _, tail := range []string{"inspection.csv", "motion.csv", "report.html", "report.json"} {
+				want = append(want, s.Part+"."+tail)
+			}
+			if !slices.Equal(names, want) {
+				t.Errorf("files %v, want %v", names, want)
+			}
+			if !slices.Equal(p.Report.Files, append(want, "manifest.json")) {
+				t.Errorf("the report lists %v", p.Report.Files)
+			}
+			for _, q := range p.Report.Paths {
+				if d := q.Deviation; !(d.Bound <= p.Report.Tolerance.Chord && d.Outside <= d.Bound && -d.Inside <= d.Bound) || q.Follower == nil {
+					t.Errorf("%s, %s: deviation %+v, follower %v", q.File, q.Curve, q.Deviation, q.Follower)
+				}
+			}
+			again, err := Make(s, options())
+			if err != nil {
+				t.Fatal(err)
+			}
+			for i, f := range p.Files {
+				if !bytes.Equal(f.Data, again.Files[i].Data) {
+					t.Errorf("%s differs from run to run", f.Name)
+				}
+			}
+		})
+	}
+}
+
+// The refused samples are refused by the gate their comment speaks of, alone.
+func TestSamplesRefused(t *testing.T) {
+	for name, gate := range map[string]string{"refused-steep": "pressure-angle", "refused-roller": "undercut"} {
+		p, err := Make(readSample(t, filepath.Join(samplesFolder, name+".yaml")), options())
+		if err != nil {
+			t.Fatal(err)
+		}
+		var failed []string
+		for _, g := range p.Report.Gates {
+			if !g.Pass {
+				failed = append(failed, g.ID)
+			}
+		}
+		if !slices.Equal(failed, []string{gate}) {
+			t.Errorf("%s fails %v, want %s alone", name, failed, gate)
+		}
+	}
+}
+
+// The starter that lobewright new prints releases as it stands.
+func TestStarterReleases(t *testing.T) {
+	text, err := spec.Starter("")
 	if err != nil {
 		t.Fatal(err)
 	}
-	return p, j.programs
+	s, err := spec.Read("starter.yaml", []byte(text), synth.Vocabulary())
+	if err != nil {
+		t.Fatal(err)
+	}
+	p, err := Make(s, options())
+	if err != nil || !p.Passed {
+		t.Fatal(err, p.Report.Gates)
+	}
 }

@@ -119,6 +119,11 @@ type ran struct {
 	Follower
 }
 
+// hasPath reports whether the written path of a file stands among the paths.
+func (r Report) hasPath(file string) bool {
+	return slices.ContainsFunc(r.Paths, func(p Path) bool { return p.File == file })
+}
+
 // followed lists every path a follower runs on.
 func (r Report) followed() []ran {
 	var rows []ran
@@ -128,7 +133,7 @@ func (r Report) followed() []ran {
 		}
 	}
 	for _, o := range r.Operations {
-		if o.Follower != nil {
+		if o.Follower != nil && !r.hasPath(o.File) {
 			rows = append(rows, ran{o.File, *o.Follower})
 		}
 	}

@@ -190,8 +190,10 @@ func (t *summary) operations() {
 		for _, p := range o.Passes {
 			t.pass(p)
 		}
-		t.deviation(o.Deviation)
-		t.follower(o.Follower)
+		if !t.r.hasPath(o.File) {
+			t.deviation(o.Deviation)
+			t.follower(o.Follower)
+		}
 	}
 }
 

@@ -1,0 +1,40 @@
+package main
+
+import (
+	"bytes"
+	"os"
+	"path/filepath"
+	"strings"
+	"testing"
+)
+
+// Every spec of testdata/gates is refused with exit status 1, its gate named as
+// FAIL, and nothing written.
+func TestGateSpecsExit1(t *testing.T) {
+	files, err := filepath.Glob("../../testdata/gates/*.yaml")
+	if err != nil || len(files) < 21 {
+		t.Fatal(len(files), err)
+	}
+	for _, f := range files {
+		data, err := os.ReadFile(f)
+		if err != nil {
+			t.Fatal(err)
+		}
+		gate, _, _ := strings.Cut(strings.TrimPrefix(string(data), "# gate: "), "\n")
+		out := filepath.Join(t.TempDir(), "out")
+		var stdout, stderr bytes.Buffer
+		if status := run([]string{"lobewright", "release", f, "-o", out}, &stdout, &stderr); status != statusGate {
+			t.Errorf("%s: exit status %d, want 1\n%s", f, status, stderr.String())
+		}
+		failed := false
+		for _, line := range strings.Split(stdout.String(), "\n") {
+			failed = failed || strings.HasPrefix(line, gate) && strings.HasSuffix(line, "FAIL")
+		}
+		if !failed {
+			t.Errorf("%s: gate %s is not shown as FAIL", f, gate)
+		}
+		if _, err := os.Stat(out); err == nil {
+			t.Errorf("%s: something was written", f)
+		}
+	}
+}

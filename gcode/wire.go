@@ -68,7 +68,7 @@ func planWire(part Part, op Operation, m Machine) (Program, error) {
 	e.add(Block{G: safe})
 	e.add(Block{G: []Code{e.arcMode()}})
 	e.line(Rapid, e.grid.Point(w.hole), Block{Comment: "START HOLE"})
-	e.note("SLOT THREAD. THE MACHINE'S OWN CODE, OR BY HAND AT THIS STOP")
+	e.note("SLOT THREAD. THE CODE OF THE MACHINE, OR BY HAND AT THIS STOP")
 	e.add(Block{M: []int{0}, Comment: "THREAD THE WIRE"})
 	at := e.grid.Point(w.hole)
 	for _, s := range stretches {
@@ -76,7 +76,7 @@ func planWire(part Part, op Operation, m Machine) (Program, error) {
 			return Program{}, fmt.Errorf("%s: %w", s.note, err)
 		}
 	}
-	e.note("SLOT CUT WIRE. THE MACHINE'S OWN CODE")
+	e.note("SLOT CUT WIRE. THE CODE OF THE MACHINE")
 	e.add(Block{G: safe})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil

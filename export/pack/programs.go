@@ -55,29 +55,43 @@ func (j *job) writePrograms() {
 	}
 }
 
-// bestProgram tries ever tighter fits until the certificate of what was read back
-// is within the chord, and returns the last try when none is.
+// bestProgram tries ever tighter fits until what was read back has no failure that a
+// tighter fit could mend, and returns the try with the fewest when none is free of them.
 func (j *job) bestProgram(i int) (program, error) {
-	var p program
-	var err error
+	var best program
+	var failed error
 	for _, share := range attempts() {
 		eps := j.fitTo(share, j.spec.Control.Decimals)
 		if eps == 0 {
 			eps = j.chord * j.tight * share // the grid alone is too coarse: show by how much
 		}
-		var next program
-		if next, err = j.tryProgram(i, eps); err != nil {
+		p, err := j.tryProgram(i, eps)
+		if err != nil {
+			failed = err
 			continue
 		}
-		p = next
-		if p.result.Deviation.Bound <= j.chord {
-			return p, nil
+		if best.data == nil || p.faults() < best.faults() {
+			best = p
+		}
+		if best.faults() == 0 {
+			break
 		}
 	}
-	if p.data != nil {
-		return p, nil
+	if best.data == nil {
+		return best, failed
 	}
-	return p, err
+	return best, nil
+}
+
+// faults counts the failures that a tighter fit may mend.
+func (p program) faults() int {
+	n := 0
+	for _, f := range p.result.Failures {
+		if f.ID == "deviation" || f.ID == "clearance" || f.ID == "reach" {
+			n++
+		}
+	}
+	return n
 }
 
 func (j *job) tryProgram(i int, eps float64) (program, error) {

@@ -74,9 +74,21 @@ func (t *summary) para(head string, indent int, text string) {
 	t.line("%s", line)
 }
 
+// name is the part with its revision, when it has one.
+func (r Report) name(join string) string {
+	if r.Revision == "" {
+		return r.Part
+	}
+	return r.Part + join + r.Revision
+}
+
 func (t *summary) head() {
 	r := t.r
-	t.para("", 2, r.Part+" revision "+r.Revision+": "+r.Title)
+	head := r.name(" revision ")
+	if r.Title != "" {
+		head += ": " + r.Title
+	}
+	t.para("", 2, head)
 	sha := r.SpecSHA256
 	if len(sha) > 12 {
 		sha = sha[:12]

@@ -224,7 +224,7 @@ func heading(c *canvas, h Head, what string) float64 {
 		c.text(pt{b.center().x, y}, stamp, font{size: headSize, bold: true, color: red, anchor: "middle"})
 		width -= w + 3
 	}
-	text, size := fitted(h.Part+", revision "+h.Revision+": "+what, width, headSize, 2, true)
+	text, size := fitted(h.name(", revision ")+": "+what, width, headSize, 2, true)
 	c.text(pt{chartMargin, y}, text, font{size: size, bold: true})
 	turns := "counterclockwise"
 	if h.Clockwise {

@@ -15,6 +15,14 @@ type Head struct {
 	Released              bool // false puts NOT RELEASED on the figure
 }
 
+// name is the part with its revision, when it has one.
+func (h Head) name(join string) string {
+	if h.Revision == "" {
+		return h.Part
+	}
+	return h.Part + join + h.Revision
+}
+
 // DrawingData is the toolroom drawing of a plate cam. Lengths are in
 // Head.Units, angles in degrees, points in the cam frame with Y up. Empty texts
 // and zero pointers are left out of the drawing.

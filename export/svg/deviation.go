@@ -33,7 +33,7 @@ func Deviation(d DeviationChart) ([]byte, error) {
 		height += p.height() + blockGap
 	}
 	height += 4
-	c := newCanvas(chartWidth, height, "Deviation of the written paths of "+d.Part+" revision "+d.Revision,
+	c := newCanvas(chartWidth, height, "Deviation of the written paths of "+d.name(" revision "),
 		"Normal deviation over cam angle against the zone, and the follower's acceleration error")
 	heading(c, d.Head, "deviation of the written paths")
 	y := top

@@ -39,7 +39,7 @@ func Drawing(data DrawingData) ([]byte, error) {
 	mid, half := room.center(), ext.center()
 	g.v = view{origin: pt{mid.x - k*half.x, mid.y + k*half.y}, k: k}
 	g.l = newLayout(g.p.field().grown(-1.5))
-	g.c = newCanvas(g.p.w, g.p.h, "Drawing of "+data.Part+" revision "+data.Revision,
+	g.c = newCanvas(g.p.w, g.p.h, "Drawing of "+data.name(" revision "),
 		data.Title+": plate cam seen on the marked face, scale "+g.s.String())
 	g.border()
 	g.caption()

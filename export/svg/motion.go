@@ -36,7 +36,7 @@ func Motion(m MotionChart) ([]byte, error) {
 	}
 	const top, foot = 24.0, 10.0
 	height := top + float64(len(panels))*(titleRoom+panelHeight+panelGap) + foot
-	c := newCanvas(chartWidth, height, "Motion of "+m.Part+" revision "+m.Revision,
+	c := newCanvas(chartWidth, height, "Motion of "+m.name(" revision "),
 		"Lift, velocity, acceleration, jerk, pressure angle and radius of curvature over cam angle")
 	heading(c, m.Head, "motion")
 	eventNames(c, m.Events, top-1.5)

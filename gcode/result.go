@@ -9,7 +9,7 @@ import (
 //
 // IDs: "deviation" (a cut is further than Eps from its curve), "coverage" (a cut
 // does not go all around), "clearance" (a lead, link, plunge or rapid comes too near to
-// the finished contour), "reach" (the tool on its own cut gouges another
+// the finished contour), "lead" (a lead is not tangent to its cut), "reach" (the tool on its own cut gouges another
 // flank), "clamp", "blank" (a rapid through material), "arc-mismatch", "block-count",
 // "depth", "feed", "words" (units, tool, spindle, compensation, end), "order" (wire).
 type Failure struct {

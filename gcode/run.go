@@ -36,6 +36,8 @@ func (v *verifier) certify(r run) CutResult {
 			c.Lines++
 		}
 	}
+	v.tangent(r, r.first)
+	v.tangent(r, r.last)
 	path := elements(loop)
 	back := r.clockwise == v.x.CamClockwise // the contour runs the other way with growing cam angle
 	if back {
@@ -61,6 +63,27 @@ func (v *verifier) certify(r run) CutResult {
 	v.res.Cuts = append(v.res.Cuts, c)
 	v.res.Finish, v.res.FinishOffset = path, r.cut.Stock
 	return c
+}
+
+// leadBreak is the largest break of the tangent between a lead and its cut, rad: a
+// degree, above what rounding makes of the smallest wire lead and below what leaves
+// a mark.
+const leadBreak = math.Pi / 180
+
+// tangent holds the joint before move i of the run, between a lead and the cut.
+func (v *verifier) tangent(r run, i int) {
+	if i <= 0 || i >= len(r.moves) {
+		return
+	}
+	a, b := element(r.moves[i-1]).EndTangent(), element(r.moves[i]).StartTangent()
+	if turn := math.Abs(math.Atan2(a.Cross(b), a.Dot(b))); turn > leadBreak {
+		lead := r.moves[i]
+		if i == r.first {
+			lead = r.moves[i-1]
+		}
+		_, t := v.outline.near(r.moves[i].From)
+		v.fail("lead", turn*180/math.Pi, leadBreak*180/math.Pi, t, lead.LineNo, "the lead is not tangent to the cut: it turns by %.4g degrees there", turn*180/math.Pi)
+	}
 }
 
 // same returns the certificate of the cut before, when this one repeats it deeper.

@@ -163,7 +163,8 @@ func (j *job) deviationFacts(d certify.Deviation) sheet.Deviation {
 	if !j.cam.OutsideIsLeft() {
 		out, in = in, out
 	}
-	return sheet.Deviation{Bound: d.Bound, Outside: out, Inside: -in, CamAngle: sheet.Maybe(plane.Wrap360(d.At))}
+	// A cut that follows nothing has no bound; a release never holds one.
+	return sheet.Deviation{Bound: math.Min(d.Bound, math.MaxFloat64), Outside: out, Inside: -in, CamAngle: sheet.Maybe(plane.Wrap360(d.At))}
 }
 
 func counts(p chain.Path) (lines, arcs int) {

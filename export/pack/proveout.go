@@ -1,0 +1,83 @@
+package pack
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/export/sheet"
+	"lobewright/gcode"
+	"lobewright/gcode/read"
+	"lobewright/synth"
+	"lobewright/synth/plane"
+	"lobewright/synth/spec"
+)
+
+// ProveOut reads an NC program, ours or one edited by hand, and holds it against the
+// exact contour of the spec and one of its operations (from 1; 0 takes the one the program's
+// O number names). A toolDiameter above 0, a length, is the cutter in the machine
+// instead of the one of the spec. An error says that the file cannot be read as a
+// program or fits no operation.
+func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiameter float64, tool string) (sheet.ProveOut, error) {
+	cam, err := synth.Build(s)
+	if err != nil {
+		return sheet.ProveOut{}, err
+	}
+	back, err := read.Parse(data)
+	if err != nil {
+		return sheet.ProveOut{}, fmt.Errorf("%s: %w", file, err)
+	}
+	if operation == 0 {
+		operation = back.Number
+	}
+	if operation < 1 || operation > len(s.Operations) {
+		return sheet.ProveOut{}, fmt.Errorf("%s: found program number O%d; allowed: 1 to %d, the operations of %s; say which one with --operation",
+			file, back.Number, len(s.Operations), s.File)
+	}
+	j := &job{spec: s, cam: cam, tight: 1}
+	j.allocate()
+	i := operation - 1
+	op := j.operation(i, j.chord)
+	diameter := op.WireDiameter
+	if op.Process == gcode.Mill {
+		if toolDiameter > 0 {
+			op.ToolDiameter = toolDiameter
+		}
+		diameter = op.ToolDiameter
+	} else if toolDiameter > 0 {
+		return sheet.ProveOut{}, fmt.Errorf("%s: a tool diameter is of a milling operation; operation %d is %s", file, operation, op.Process)
+	}
+	expect := gcode.Expected(j.part(op, i), op, j.machine(), j.chord)
+	result, err := gcode.Verify(back, expect)
+	if err != nil {
+		return sheet.ProveOut{}, fmt.Errorf("%s: %w", file, err)
+	}
+	p := program{index: i, name: file, expect: expect, result: result}
+	return j.proveOutFacts(p, sheet.ProveOut{Tool: tool, Part: s.Part, Units: string(s.Units), File: file, Operation: operation,
+		Process: string(op.Process), ToolDiameter: diameter, Chord: j.chord}), nil
+}
+
+func (j *job) proveOutFacts(p program, out sheet.ProveOut) sheet.ProveOut {
+	r := p.result
+	out.Blocks, out.Bytes, out.PathLength, out.Seconds = r.Blocks, r.Bytes, r.PathLength, r.Seconds
+	for i, c := range r.Cuts {
+		out.Passes = append(out.Passes, j.passFacts(p, i, c))
+	}
+	exact := j.cam.Parallel(r.FinishOffset)
+	if loop, ok := oneTurn(r.Finish, math.Pow10(-j.spec.Control.Decimals)); ok {
+		if run, err := j.follower(written{file: p.name, curve: "last pass", path: loop, toPitch: -exact.Left()}); err == nil {
+			out.Follower = j.reported(run)
+		}
+	}
+	for _, f := range r.Failures {
+		fault := sheet.Fault{ID: f.ID, Line: f.Line, Value: sheet.Maybe(f.Value), Limit: sheet.Maybe(f.Limit), Text: f.Text}
+		if !math.IsNaN(f.CamAngle) {
+			fault.CamAngle = sheet.Maybe(plane.Wrap360(f.CamAngle))
+		}
+		if f.N >= 0 && f.Line > 0 {
+			fault.Block = &f.N
+		}
+		out.Faults = append(out.Faults, fault)
+	}
+	out.Proven = len(out.Faults) == 0
+	return out
+}

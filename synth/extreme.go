@@ -12,6 +12,9 @@ import (
 // extremes; 160 samples see them all with a wide margin.
 const samplesPerPiece = 160
 
+// flat is the share of a value below which differences are rounding.
+const flat = 1e-13
+
 // place is a value with where it stands.
 type place struct {
 	value float64
@@ -59,7 +62,9 @@ func largestOn(a, b float64, n int, f func(float64) float64) place {
 	for k := 1; k < n; k++ {
 		// A true maximum between samples cannot top its samples by more than the
 		// fall to their neighbors, so low hills need no climbing.
-		if y[k] < y[k-1] || y[k] < y[k+1] || y[k]+4*math.Max(y[k]-y[k-1], y[k]-y[k+1])+1e-9*span < best.value {
+		// Flat ground, as along a dwell, has nothing to climb.
+		fall := math.Max(y[k]-y[k-1], y[k]-y[k+1])
+		if y[k] < y[k-1] || y[k] < y[k+1] || fall <= flat*span || y[k]+4*fall+1e-9*span < best.value {
 			continue
 		}
 		if t, v := golden(at(k-1), at(k+1), f); v > above(best.value) {
@@ -72,11 +77,10 @@ func largestOn(a, b float64, n int, f func(float64) float64) place {
 // above returns what a value must top to count as larger: of values that are equal
 // but for rounding, as along a dwell, the first is named.
 func above(v float64) float64 {
-	const rounding = 1e-13
 	if math.IsInf(v, -1) {
 		return v
 	}
-	return v + rounding*math.Abs(v)
+	return v + flat*math.Abs(v)
 }
 
 // golden climbs a hill on [a, b] by golden section (J. Kiefer, Proc. AMS 4, 1953).

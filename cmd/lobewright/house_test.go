@@ -25,6 +25,7 @@ func rooms() map[string][]string {
 		"synth/motion":      leaves,
 		"synth/follower":    motion,
 		"synth":             cam,
+		"synth/evidence":    cam,
 		"tolerance":         {},
 		"tolerance/chain":   {"synth/plane"},
 		"tolerance/fit":     with(leaves, "tolerance/chain"),

@@ -89,7 +89,7 @@ func lawRows() ([]lawRow, error) {
 	}
 	var rows []lawRow
 	for _, n := range motion.Names() {
-		l, err := motion.Named(n, defaultShare)
+		l, err := motion.Named(n, motion.DefaultConstantShare)
 		if err != nil {
 			return nil, err
 		}
@@ -98,9 +98,6 @@ func lawRows() ([]lawRow, error) {
 	}
 	return rows, nil
 }
-
-// defaultShare is constant_share where a spec gives none.
-const defaultShare = 0.5
 
 func printLaws(c *cli.Context, rows []lawRow) {
 	show := func(x *float64) string {

@@ -4,10 +4,12 @@
 package main
 
 import (
+	"context"
 	"errors"
 	"fmt"
 	"io"
 	"os"
+	"os/signal"
 
 	"github.com/urfave/cli/v2"
 )
@@ -38,15 +40,25 @@ func (f failure) Error() string {
 
 func (f failure) Unwrap() error { return f.err }
 
-func main() { os.Exit(run(os.Args, os.Stdout, os.Stderr)) }
+func main() {
+	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
+	defer stop()
+	os.Exit(runContext(ctx, os.Args, os.Stdout, os.Stderr))
+}
 
-// run is the program without the process: messages to stderr, results to stdout,
-// the exit status returned. It is the one place where errors are printed.
+// run is runContext without an end from outside.
 func run(args []string, stdout, stderr io.Writer) int {
+	return runContext(context.Background(), args, stdout, stderr)
+}
+
+// runContext is the program without the process: messages to stderr, results to
+// stdout, the exit status returned. It is the one place where errors are printed.
+// The end of ctx ends a watch.
+func runContext(ctx context.Context, args []string, stdout, stderr io.Writer) int {
 	app := application(stdout, stderr)
 	args, err := reorder(app, args)
 	if err == nil {
-		err = app.Run(args)
+		err = app.RunContext(ctx, args)
 	}
 	if err == nil {
 		return statusDone

@@ -19,14 +19,19 @@ func releaseCommand() *cli.Command {
 	return &cli.Command{
 		Name:      "release",
 		Usage:     "read a spec, prove every file of its release pack, and place the pack whole",
-		UsageText: "lobewright release SPEC... [-o DIR]\n\nExamples:\n   lobewright release samples/stick-lift.yaml\n   lobewright release samples/stick-lift.yaml samples/box-pusher.yaml -o out",
+		UsageText: "lobewright release SPEC... [-o DIR] [--watch]\n\nExamples:\n   lobewright release samples/stick-lift.yaml\n   lobewright release samples/stick-lift.yaml samples/box-pusher.yaml -o out",
 		Flags: []cli.Flag{
 			&cli.StringFlag{Name: "o", Value: "release", Usage: "folder that receives one folder a part"},
 			&cli.StringFlag{Name: "dxf", Value: "2000", Usage: "DXF version: 2000 or r12"},
 			&cli.BoolFlag{Name: "json", Usage: "print the report of each spec as JSON"},
+			&cli.BoolFlag{Name: "watch", Usage: "release again whenever a spec changes, until interrupted"},
 		},
 		Action: func(c *cli.Context) error {
-			return eachSpec(c, func(s *spec.Spec) error { return release(c, s) })
+			once := func() error { return eachSpec(c, func(s *spec.Spec) error { return release(c, s) }) }
+			if c.Bool("watch") && c.NArg() > 0 {
+				return watch(c, once)
+			}
+			return once()
 		},
 	}
 }

@@ -140,6 +140,7 @@ func (j *job) contourFacts() sheet.Contour {
 	for _, x := range j.cam.Cycle().Junctions() {
 		c.Junctions = append(c.Junctions, plane.Wrap360(x.At))
 	}
+	slices.Sort(c.Junctions)
 	return c
 }
 

@@ -2,6 +2,7 @@ package pack
 
 import (
 	"math"
+	"slices"
 
 	"lobewright/export/table"
 	"lobewright/synth/plane"
@@ -69,7 +70,9 @@ func (j *job) motionTable() ([]byte, error) {
 		l := j.cam.LiftIn(s.zone, s.t)
 		rows = append(rows, table.MotionRow{CamAngle: s.angle, Lift: l.S, Velocity: l.V * w, Acceleration: l.A * w * w, Jerk: l.J * w * w * w})
 	}
-	return table.Motion(rows, tableDecimals)
+	return table.Motion(slices.CompactFunc(rows, func(a, b table.MotionRow) bool {
+		return same(a.CamAngle, b.CamAngle, a.Acceleration-b.Acceleration, a.Jerk-b.Jerk)
+	}), tableDecimals)
 }
 
 // inspectionTable is <part>.inspection.csv.
@@ -87,7 +90,20 @@ func (j *job) inspectionTable() ([]byte, error) {
 			RadiusOfCurvature: j.convex(k) * 1 / math.Abs(k.K),
 		})
 	}
-	return table.Inspection(rows, tableDecimals)
+	return table.Inspection(slices.CompactFunc(rows, func(a, b table.InspectionRow) bool {
+		return same(a.CamAngle, b.CamAngle, a.RadiusOfCurvature-b.RadiusOfCurvature)
+	}), tableDecimals)
+}
+
+// same reports whether the two rows of a junction would print alike: one is enough then.
+func same(a, b float64, differences ...float64) bool {
+	const printed = 0.5e-6 // half of the last of tableDecimals
+	for _, d := range differences {
+		if !(math.Abs(d) < printed) {
+			return false
+		}
+	}
+	return a == b
 }
 
 // outward returns the unit normal that points out of the cam.

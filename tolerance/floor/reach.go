@@ -1,0 +1,168 @@
+package floor
+
+import "math"
+
+// margins are shares of eps by which a stretch is taken beyond the float estimate of what fits: what
+// the proof loses to second-order terms, and more where those are large.
+func margins() [3]float64 { return [3]float64{3e-4, 3e-3, 3e-2} }
+
+// reach returns a node b, at most a turn after a, with a proof that the stretch from a to b does not
+// fit, as near to a as it can. false when it finds none.
+func (s *survey) reach(a node) (node, bool) {
+	h := &hunt{window: s.window(a)}
+	j := h.first()
+	if j < 0 {
+		return node{}, false
+	}
+	for _, more := range margins() {
+		if b, ok := h.between(j, s.eps*(1+more)); ok {
+			return b, true
+		}
+	}
+	for step := 1; ; step *= 2 {
+		if h.seen(j, math.Inf(1)); s.prove(h.to(j), h.found.at) {
+			return h.to(j)[h.found.at[3]], true
+		}
+		if j == h.last {
+			return node{}, false
+		}
+		j = min(j+step, h.last)
+	}
+}
+
+// hunt is a search for the end of a reach.
+type hunt struct {
+	*window
+	buf   []local
+	found fitted
+}
+
+// seen fits the stretch 0..j in floats and reports whether it is within eps; the four nodes are left in found.
+func (h *hunt) seen(j int, eps float64) bool {
+	return h.fit(h.to(j), eps)
+}
+
+func (h *hunt) fit(ns []node, eps float64) bool {
+	n := len(ns) - 1
+	if n < 3 {
+		h.found = fitted{}
+		return true
+	}
+	h.buf = axes(ns, h.buf)
+	at := [4]int{0, n / 4, n - n/4, n}
+	if n < 8 {
+		at = [4]int{0, 1, n - 1, n}
+	}
+	var fits bool
+	h.found, fits = exchange(h.buf, at, eps)
+	return fits
+}
+
+// first returns the first window index to which the stretch does not fit by floats, -1 when all do.
+func (h *hunt) first() int {
+	eps := h.s.eps
+	hi := h.s.hint[h.base]
+	if hi == 0 {
+		hi = perArc
+	}
+	hi = min(hi, h.last)
+	lo, step := 2, 1
+	if h.seen(hi, eps) {
+		for lo = hi; ; step *= 2 {
+			if lo == h.last {
+				return -1
+			}
+			if hi = min(lo+step, h.last); !h.seen(hi, eps) {
+				break
+			}
+			lo = hi
+		}
+	} else {
+		for k := hi - step; k > lo; k = hi - step {
+			if h.seen(k, eps) {
+				lo = k
+				break
+			}
+			hi = k
+			step *= 2
+		}
+	}
+	for hi-lo > 1 {
+		if k := (lo + hi) / 2; h.seen(k, eps) {
+			lo = k
+		} else {
+			hi = k
+		}
+	}
+	h.s.hint[h.base] = hi
+	return hi
+}
+
+const (
+	maxSteps  = 6    // of the search between two table entries
+	closeness = 2e-4 // of the target: how far above it the level may end
+)
+
+// between returns a node at or before window index j to which the stretch is off by target, just so, and
+// proven not to fit.
+func (h *hunt) between(j int, target float64) (node, bool) {
+	ns := append([]node(nil), h.to(j)...)
+	end := ns[j]
+	from, to := ns[j-1].t, end.t
+	if end.turn > ns[j-1].turn {
+		to += turnDegrees
+	}
+	h.fit(ns, math.Inf(1))
+	high, nodes := h.found.e, h.found.at
+	if high < target {
+		return node{}, false
+	}
+	h.fit(ns[:j], math.Inf(1))
+	low, lo, hi := h.found.e, 0.0, 1.0
+	best := append([]node(nil), ns...)
+	for range maxSteps {
+		if high <= target*(1+closeness) || !(high > low) {
+			break
+		}
+		x := lo + (hi-lo)*(target*(1+closeness/2)-low)/(high-low)
+		if !(x > lo && x < hi) {
+			x = (lo + hi) / 2
+		}
+		t := from + (to-from)*x
+		piece := ns[j-1].piece
+		if !(t > from && t < to && t < h.s.pieces[piece].To) {
+			break
+		}
+		ns[j] = node{mark{ns[j-1].turn, t}, piece, h.s.curve.At(piece, t).P}
+		h.fit(ns, math.Inf(1))
+		if h.found.e < target {
+			low, lo = h.found.e, x
+			continue
+		}
+		high, hi, nodes = h.found.e, x, h.found.at
+		best[j] = ns[j]
+	}
+	if !h.s.prove(best, nodes) {
+		return node{}, false
+	}
+	return best[nodes[3]], true
+}
+
+// prove tries the proof on four of the nodes, with the node between the two furthest apart that
+// sees them under equal distances for origin.
+func (s *survey) prove(ns []node, at [4]int) bool {
+	if len(ns) < 4 {
+		return false
+	}
+	q := [4]node{ns[at[0]], ns[at[1]], ns[at[2]], ns[at[3]]}
+	a, b := widest(q)
+	chord := q[b].p.Sub(q[a].p)
+	mid := q[a].p.Add(chord.Scale(0.5))
+	m, least := at[a], math.Inf(1)
+	for i := at[a] + 1; i < at[b]; i++ {
+		if d := math.Abs(ns[i].p.Sub(mid).Dot(chord)); d < least {
+			m, least = i, d
+		}
+	}
+	return s.unfit(q, ns[m])
+}

@@ -28,7 +28,28 @@ func (j *job) figures(released bool) (sheet.Figures, error) {
 			return f, fmt.Errorf("deviation chart: %w", err)
 		}
 	}
+	f.Turn = j.turn()
 	return f, nil
+}
+
+// turnStep is the step of the moving figure's samples, degrees.
+const turnStep = 0.5
+
+// turn is the moving figure of the sheet; a contour that cannot be written does not move.
+func (j *job) turn() *sheet.Turn {
+	if j.outline == nil {
+		return nil
+	}
+	f, w := j.cam.Follower(), j.cam.Omega()
+	t := &sheet.Turn{Clockwise: f.Clockwise, Contour: j.shape(j.cam.Contour()), Roller: f.RollerRadius, Datum: f.Datum, Offset: f.Offset, Step: turnStep}
+	if b := j.spec.Cam.Bore; b != nil {
+		t.Bore = b.Diameter
+	}
+	for k := range int(360/turnStep) + 1 {
+		l := j.cam.LiftAt(float64(k) * turnStep)
+		t.Lift, t.Velocity, t.Acceleration = append(t.Lift, l.S), append(t.Velocity, l.V*w), append(t.Acceleration, l.A*w*w)
+	}
+	return t
 }
 
 func (j *job) head(released bool) svg.Head {

@@ -228,5 +228,8 @@ func Findings(fs []gate.Finding) []Finding {
 	return rows
 }
 
-// Figures are the three SVG files of the pack; an empty one is left out.
-type Figures struct{ Drawing, Motion, Deviation []byte }
+// Figures are the three SVG files of the pack and the moving figure; an empty one is left out.
+type Figures struct {
+	Drawing, Motion, Deviation []byte
+	Turn                       *Turn
+}

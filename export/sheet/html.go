@@ -16,10 +16,11 @@ var page string
 type view struct {
 	Report
 	DrawingFigure, MotionFigure, DeviationFigure template.HTML
+	Moving                                       *turnView // nil without a moving figure
 }
 
-// HTML returns the release sheet: one self-contained page without scripts, network or
-// fonts of its own, marked NOT RELEASED unless the report is released. The error
+// HTML returns the release sheet: one self-contained page without network or fonts of
+// its own; its one script turns the moving figure, and without scripts the page is whole as it stands. It is marked NOT RELEASED unless the report is released. The error
 // names a number that is not finite or a figure that is not a plain drawing.
 func HTML(r Report, figures Figures) ([]byte, error) {
 	if err := r.check(); err != nil {
@@ -35,6 +36,10 @@ func HTML(r Report, figures Figures) ([]byte, error) {
 		if *f.to, err = inline(f.prefix, f.svg); err != nil {
 			return nil, err
 		}
+	}
+	var err error
+	if v.Moving, err = figures.Turn.look(); err != nil {
+		return nil, err
 	}
 	t, err := template.New("sheet").Funcs(functions(r)).Parse(page)
 	if err != nil {
@@ -67,6 +72,7 @@ func functions(r Report) template.FuncMap {
 		"size":     size,
 		"bound":    func(g Gate) string { return map[string]string{">=": "≥", "<=": "≤"}[g.bound()] },
 		"count":    count,
+		"half":     func(v float64) float64 { return v / 2 },
 		"sum":      func(a, b int) int { return a + b },
 		"failing":  r.failing,
 		"hash":     r.hash,

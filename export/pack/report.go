@@ -85,7 +85,11 @@ func (j *job) report(released bool) sheet.Report {
 		Tolerance: sheet.Tolerance{Profile: s.Tolerance.Profile, Chord: j.chord}, Notes: s.Notes, Cautions: cautions(), Files: []string{},
 	}
 	for _, e := range j.events() {
-		r.Events = append(r.Events, sheet.Event{From: e.From, To: e.To, Text: e.Text})
+		to := e.To
+		if to > 360 {
+			to -= 360
+		}
+		r.Events = append(r.Events, sheet.Event{From: e.From, To: to, Text: e.Text})
 	}
 	if j.outline != nil {
 		for _, w := range j.outline.paths {

@@ -43,7 +43,7 @@ func (g *drawing) paragraphs() []paragraph {
 	}
 	var motion []string
 	for _, e := range g.d.Events {
-		motion = append(motion, num(e.From, 3)+"° to "+num(e.To, 3)+"°  "+e.Text)
+		motion = append(motion, num(e.From, 3)+"° to "+num(e.ends(), 3)+"°  "+e.Text)
 	}
 	section("MOTION, CAM ANGLE", motion)
 	section("SIZES", g.extra)

@@ -75,6 +75,14 @@ type Event struct {
 	Start    plane.Point // contour point at From, where the tick is drawn
 }
 
+// ends is To as it is read on the cam: one that runs past 360 starts again from 0.
+func (e Event) ends() float64 {
+	if e.To > 360 {
+		return e.To - 360
+	}
+	return e.To
+}
+
 // Sample is a value at a cam angle in degrees.
 type Sample struct{ CamAngle, Value float64 }
 

@@ -30,6 +30,7 @@ func rooms() map[string][]string {
 		"tolerance/chain":   {"synth/plane"},
 		"tolerance/fit":     with(leaves, "tolerance/chain"),
 		"tolerance/certify": with(leaves, "tolerance/chain"),
+		"tolerance/floor":   with(leaves, "tolerance/chain"),
 		"tolerance/follow":  with(leaves, "tolerance/chain"),
 		"gcode":             with(proof, "gcode/read"),
 		"gcode/write":       with(proof, "gcode", "gcode/read"),

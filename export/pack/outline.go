@@ -12,6 +12,7 @@ import (
 	"lobewright/tolerance/certify"
 	"lobewright/tolerance/chain"
 	"lobewright/tolerance/fit"
+	"lobewright/tolerance/floor"
 )
 
 // dxfGrid is the grid of every coordinate of the DXF.
@@ -32,6 +33,7 @@ type written struct {
 	path        chain.Path
 	deviation   certify.Deviation
 	theory      float64
+	floor       *int    // proven least number of arcs and lines within the chord tolerance; nil when none could be computed
 	toPitch     float64 // distance from path to pitch curve, to the left of its travel, length
 }
 
@@ -144,7 +146,16 @@ func (j *job) proveLayer(name string, file *read.File, layer, curve string, exac
 		return written{}, fmt.Errorf("%s: layer %s: %w", name, layer, err)
 	}
 	return written{file: name, curve: curve, exact: exact, path: path, deviation: d,
-		theory: fit.Theory(exact, j.chord, chain.Arc), toPitch: -exact.Left()}, nil
+		theory: fit.Theory(exact, j.chord, chain.Arc), floor: j.floor(exact), toPitch: -exact.Left()}, nil
+}
+
+// floor proves how few arcs and lines can stay within the chord tolerance of a curve.
+func (j *job) floor(exact *synth.Curve) *int {
+	n, err := floor.Arcs(exact, j.chord)
+	if err != nil {
+		return nil
+	}
+	return &n
 }
 
 // drawing composes the DXF.

@@ -128,7 +128,7 @@ func (j *job) proveProgram(p program, data []byte) (program, error) {
 	p.theory = fit.Theory(exact, j.chord, kind)
 	if loop, ok := oneTurn(p.result.Finish, math.Pow10(-j.spec.Control.Decimals)); ok {
 		p.finish = &written{file: p.name, curve: "last pass", exact: exact, path: loop, deviation: p.result.Deviation,
-			theory: p.theory, toPitch: -exact.Left()}
+			theory: p.theory, floor: j.floor(exact), toPitch: -exact.Left()}
 	}
 	return p, nil
 }

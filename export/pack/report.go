@@ -185,7 +185,7 @@ func counts(p chain.Path) (lines, arcs int) {
 
 func (j *job) pathFacts(w written) sheet.Path {
 	lines, arcs := counts(w.path)
-	p := sheet.Path{File: w.file, Curve: w.curve, Lines: lines, Arcs: arcs, Theory: w.theory, Deviation: j.deviationFacts(w.deviation)}
+	p := sheet.Path{File: w.file, Curve: w.curve, Lines: lines, Arcs: arcs, Theory: w.theory, SegmentsFloor: w.floor, Deviation: j.deviationFacts(w.deviation)}
 	if r, ok := j.follows[w.file+w.curve]; ok {
 		p.Follower = j.reported(r)
 	}

@@ -84,6 +84,9 @@ func TestSamplesRelease(t *testing.T) {
 				if d := q.Deviation; !(d.Bound <= p.Report.Tolerance.Chord && d.Outside <= d.Bound && -d.Inside <= d.Bound) || q.Follower == nil {
 					t.Errorf("%s, %s: deviation %+v, follower %v", q.File, q.Curve, q.Deviation, q.Follower)
 				}
+				if q.SegmentsFloor == nil || *q.SegmentsFloor < 5 || *q.SegmentsFloor > q.Lines+q.Arcs {
+					t.Errorf("%s, %s: proven floor %v, %d lines and %d arcs", q.File, q.Curve, q.SegmentsFloor, q.Lines, q.Arcs)
+				}
 			}
 			again, err := Make(s, options())
 			if err != nil {

@@ -81,9 +81,10 @@ const (
 )
 
 // exchange moves four nodes to where the best circle through a stretch is furthest off
-// (E. Ya. Remez 1934; one point at a time, always to the set of larger level), and stops as soon as
-// it is plain whether the stretch is within eps. ps must have four entries or more.
-func exchange(ps []local, at [4]int, eps float64) (best fitted, fits bool) {
+// (E. Ya. Remez 1934; one point at a time, always to the set of larger level). It stops early when the
+// four are off by more than high or a circle is within low of all; fits says that the four are not off by more
+// than high. ps must have four entries or more.
+func exchange(ps []local, at [4]int, low, high float64) (best fitted, fits bool) {
 	pick := func(at [4]int) [4]local { return [4]local{ps[at[0]], ps[at[1]], ps[at[2]], ps[at[3]]} }
 	best.at = at
 	u, level := weights(pick(at))
@@ -91,7 +92,7 @@ func exchange(ps []local, at [4]int, eps float64) (best fitted, fits bool) {
 		f := through(pick(best.at), u, level)
 		norm := f.norm()
 		best.e = math.Abs(level) / norm
-		if best.e > eps {
+		if best.e > high {
 			return best, false
 		}
 		worst, far := 0, -1.0
@@ -100,7 +101,7 @@ func exchange(ps []local, at [4]int, eps float64) (best fitted, fits bool) {
 				worst, far = i, r
 			}
 		}
-		if far/norm <= eps || !(far > math.Abs(level)*settled) {
+		if far/norm <= low || !(far > math.Abs(level)*settled) {
 			return best, true
 		}
 		next, was := best.at, math.Abs(level)

@@ -86,8 +86,8 @@ const (
 // Arcs returns a proven lower bound, at least 1, of the number of arcs and line segments
 // of any chain, connected or not, that follows the closed curve within eps (a length in the curve's
 // unit) in the sense above. A curve of n arcs never gets more than n. The bound holds whatever At
-// returns; it is weak where At is wrong or eps near the rounding of coordinates. Errors: eps not a length,
-// pieces that are not one closed turn, a curve that is not finite.
+// returns; it is weak where At is wrong. Errors: eps not a length or below 1e-11 of the curve's size, where
+// floats cannot tell it from rounding; pieces that are not one closed turn; a curve that is not finite.
 func Arcs(c Curve, eps float64) (int, error) {
 	if !(eps > 0) || math.IsInf(eps, 0) {
 		return 0, fmt.Errorf("deviation %g: want a length above 0", eps)

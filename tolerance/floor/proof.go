@@ -24,12 +24,13 @@ func (p spot) inAxes(o spot, c, s taylor.Interval) (x, y, square taylor.Interval
 // abs encloses |a|.
 func abs(a taylor.Interval) taylor.Interval { return taylor.Interval{Lo: a.Mig(), Hi: a.Mag()} }
 
-// unfit proves that no circle and no line is within eps of all of the four nodes q and of m, by
-// the inequality of the package comment. false means that it found no proof.
+// refusal is a lower bound of the left side of the package comment's inequality over an upper bound of
+// the right: above 1 it proves that no circle and no line is within eps of all of the four nodes q and of m.
+// Otherwise there is no proof; 0 when a condition of the inequality fails.
 //
 // With axes of length a² = c²+s² the coordinates of a vector v are (v·e)/a²; b_x, b_y are b·e/a², so
 // b·P = b_x x + b_y y as before and b_x² + b_y² = |b|²/a².
-func (s *survey) unfit(q [4]node, m node) bool {
+func (s *survey) refusal(q [4]node, m node) float64 {
 	ia, ib := widest(q)
 	chord := q[ib].p.Sub(q[ia].p).Unit()
 	c, sn := taylor.Exactly(chord.X), taylor.Exactly(chord.Y)
@@ -45,7 +46,7 @@ func (s *survey) unfit(q [4]node, m node) bool {
 	// k is an upper bound of the curvature, f of |F| at the nodes.
 	half := x[ib].Sub(x[ia]).Sqr().Add(y[ib].Sub(y[ia]).Sqr()).Div(c.Sqr().Add(sn.Sqr())).Sqrt().Div(two).Sub(eps)
 	if !(half.Lo > 0) {
-		return false
+		return 0
 	}
 	k := one.Div(half)
 	k = taylor.Exactly(k.Hi)
@@ -55,12 +56,12 @@ func (s *survey) unfit(q [4]node, m node) bool {
 	bx := two.Mul(f).Add(k.Div(two).Mul(abs(sq[ib].Sub(sq[ia])))).
 		Add(taylor.Exactly(room.Hi).Mul(abs(y[ib].Sub(y[ia])))).Div(x[ib].Sub(x[ia]))
 	if !(bx.Hi < 1) {
-		return false
+		return 0
 	}
 	bx = taylor.Exactly(bx.Hi)
 	by := one.Sub(two.Mul(k).Mul(f)).Div(c.Sqr().Add(sn.Sqr())).Sub(bx.Sqr())
 	if !(by.Lo > 0) {
-		return false
+		return 0
 	}
 	var size, sy, sx, s1, s2 taylor.Interval
 	for i := range u {
@@ -70,7 +71,7 @@ func (s *survey) unfit(q [4]node, m node) bool {
 	}
 	found := by.Sqrt().Mul(abs(sy))
 	most := f.Mul(size.Add(abs(s1))).Add(k.Div(two).Mul(abs(s2))).Add(bx.Mul(abs(sx)))
-	return found.Lo > most.Hi
+	return taylor.Exactly(found.Lo).Div(taylor.Exactly(most.Hi)).Lo
 }
 
 // widest returns the two nodes furthest apart, in order.

@@ -2,9 +2,12 @@ package floor
 
 import "math"
 
-// margins are shares of eps by which a stretch is taken beyond the float estimate of what fits: what
-// the proof loses to second-order terms, and more where those are large.
-func margins() [3]float64 { return [3]float64{3e-4, 3e-3, 3e-2} }
+const (
+	// margin is a share of eps by which a stretch is first taken beyond the float estimate of what fits. The
+	// proof loses a little to second-order terms; where it fails by a share, it is tried again with that added.
+	margin   = 3e-4
+	maxTries = 4
+)
 
 // reach returns a node b, at most a turn after a, with a proof that the stretch from a to b does not
 // fit, as near to a as it can. false when it finds none.
@@ -14,14 +17,21 @@ func (s *survey) reach(a node) (node, bool) {
 	if j < 0 {
 		return node{}, false
 	}
-	for _, more := range margins() {
-		if b, ok := h.between(j, s.eps*(1+more)); ok {
+	target := s.eps * (1 + margin)
+	for range maxTries {
+		b, share := h.between(j, target)
+		if share > 1 {
 			return b, true
 		}
+		if !(share > 0.5) {
+			break
+		}
+		target *= (1 + margin) / share
 	}
 	for step := 1; ; step *= 2 {
-		if h.seen(j, math.Inf(1)); s.prove(h.to(j), h.found.at) {
-			return h.to(j)[h.found.at[3]], true
+		ns := h.to(j)
+		if h.fit(ns, 0, math.Inf(1)); s.prove(ns, h.found.at) > 1 {
+			return ns[h.found.at[3]], true
 		}
 		if j == h.last {
 			return node{}, false
@@ -37,12 +47,11 @@ type hunt struct {
 	found fitted
 }
 
-// seen fits the stretch 0..j in floats and reports whether it is within eps; the four nodes are left in found.
-func (h *hunt) seen(j int, eps float64) bool {
-	return h.fit(h.to(j), eps)
-}
+// seen reports whether the stretch 0..j is within eps by floats.
+func (h *hunt) seen(j int, eps float64) bool { return h.fit(h.to(j), eps, eps) }
 
-func (h *hunt) fit(ns []node, eps float64) bool {
+// fit is exchange on a stretch from a good start; the result is left in found.
+func (h *hunt) fit(ns []node, low, high float64) bool {
 	n := len(ns) - 1
 	if n < 3 {
 		h.found = fitted{}
@@ -54,7 +63,7 @@ func (h *hunt) fit(ns []node, eps float64) bool {
 		at = [4]int{0, 1, n - 1, n}
 	}
 	var fits bool
-	h.found, fits = exchange(h.buf, at, eps)
+	h.found, fits = exchange(h.buf, at, low, high)
 	return fits
 }
 
@@ -103,21 +112,23 @@ const (
 	closeness = 2e-4 // of the target: how far above it the level may end
 )
 
-// between returns a node at or before window index j to which the stretch is off by target, just so, and
-// proven not to fit.
-func (h *hunt) between(j int, target float64) (node, bool) {
+// between returns a node, near window index j, up to which the stretch is off by target, just so, and
+// the share that prove finds for it; 0 when it finds no such node.
+func (h *hunt) between(j int, target float64) (node, float64) {
+	h.fit(h.to(j), 0, math.Inf(1))
+	for last := min(j+perArc, h.last); h.found.e < target; {
+		if j++; j > last {
+			return node{}, 0
+		}
+		h.fit(h.to(j), 0, math.Inf(1))
+	}
 	ns := append([]node(nil), h.to(j)...)
-	end := ns[j]
-	from, to := ns[j-1].t, end.t
-	if end.turn > ns[j-1].turn {
+	high, nodes := h.found.e, h.found.at
+	from, to := ns[j-1].t, ns[j].t
+	if ns[j].turn > ns[j-1].turn {
 		to += turnDegrees
 	}
-	h.fit(ns, math.Inf(1))
-	high, nodes := h.found.e, h.found.at
-	if high < target {
-		return node{}, false
-	}
-	h.fit(ns[:j], math.Inf(1))
+	h.fit(ns[:j], 0, math.Inf(1))
 	low, lo, hi := h.found.e, 0.0, 1.0
 	best := append([]node(nil), ns...)
 	for range maxSteps {
@@ -134,7 +145,7 @@ func (h *hunt) between(j int, target float64) (node, bool) {
 			break
 		}
 		ns[j] = node{mark{ns[j-1].turn, t}, piece, h.s.curve.At(piece, t).P}
-		h.fit(ns, math.Inf(1))
+		h.fit(ns, 0, math.Inf(1))
 		if h.found.e < target {
 			low, lo = h.found.e, x
 			continue
@@ -142,17 +153,14 @@ func (h *hunt) between(j int, target float64) (node, bool) {
 		high, hi, nodes = h.found.e, x, h.found.at
 		best[j] = ns[j]
 	}
-	if !h.s.prove(best, nodes) {
-		return node{}, false
-	}
-	return best[nodes[3]], true
+	return best[nodes[3]], h.s.prove(best, nodes)
 }
 
 // prove tries the proof on four of the nodes, with the node between the two furthest apart that
 // sees them under equal distances for origin.
-func (s *survey) prove(ns []node, at [4]int) bool {
+func (s *survey) prove(ns []node, at [4]int) float64 {
 	if len(ns) < 4 {
-		return false
+		return 0
 	}
 	q := [4]node{ns[at[0]], ns[at[1]], ns[at[2]], ns[at[3]]}
 	a, b := widest(q)
@@ -164,5 +172,5 @@ func (s *survey) prove(ns []node, at [4]int) bool {
 			m, least = i, d
 		}
 	}
-	return s.unfit(q, ns[m])
+	return s.refusal(q, ns[m])
 }

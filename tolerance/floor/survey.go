@@ -44,11 +44,19 @@ const (
 	leastTable = 16    // points of a piece at least
 	mostTable  = 40000 // and at most
 	evenShare  = 0.15  // of the density's mean is added to it, so that no stretch goes bare
+	floatShare = 1e-11 // of the curve's size: the least eps that floats tell from rounding
 	endCuts    = 6     // how often the intervals at a piece's ends are halved: a jump of curvature makes a narrow peak
 )
 
 func newSurvey(c Curve, pieces []plane.Piece, eps float64) (*survey, error) {
 	s := &survey{curve: c, pieces: pieces, eps: eps}
+	size := 0.0
+	for i, p := range pieces {
+		size = math.Max(size, c.At(i, p.From).P.Radius())
+	}
+	if least := size * floatShare; eps < least {
+		return nil, fmt.Errorf("deviation %g is too small for a curve of size %.6g: at least %.1g", eps, size, least)
+	}
 	for i, p := range pieces {
 		ts, err := s.spread(i, p)
 		if err != nil {

@@ -64,7 +64,6 @@ const (
 	poly345
 	parabolicUp   // first half of constant acceleration
 	parabolicDown // second half
-	harmonic
 )
 
 func lawOf[T taylor.Scalar[T]](l law, u T) T {
@@ -85,9 +84,6 @@ func lawOf[T taylor.Scalar[T]](l law, u T) T {
 		return poly(0, 0, 0.5).Scale(2)
 	case parabolicDown:
 		return poly(0, 2, -1)
-	case harmonic:
-		_, c := u.Scale(180).Radians().SinCos()
-		return u.Of(1).Sub(c).Scale(0.5)
 	}
 	return u.Of(0)
 }

@@ -12,12 +12,11 @@ type fitted struct {
 // local is a node in the axes of a stretch: x along it, y to the left, q = |P|²/2.
 type local struct{ x, y, q float64 }
 
-// axes puts the origin at the middle node and the x axis along the chord of its quarters, which is
-// long even when the stretch goes round and nearly closes.
+// axes puts the origin at the middle node and the x axis along the curve there. ns must have three entries or more.
 func axes(ns []node, buf []local) []local {
 	n := len(ns) - 1
 	o := ns[n/2].p
-	u := ns[n-n/4].p.Sub(ns[n/4].p)
+	u := ns[n/2+1].p.Sub(ns[n/2-1].p)
 	if l := u.Norm(); l > 0 {
 		u = u.Scale(1 / l)
 	}

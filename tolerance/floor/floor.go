@@ -55,8 +55,9 @@
 //
 // # The price
 //
-// The floor is 0.866 N* for small eps (free arcs against tangent-continuous ones: 192 against 124.7) plus what
-// dwells and joints of whole numbers add.
+// 1 to 10 ms a curve for 10 to 90 arcs. For small eps the floor is 0.866 N*, free
+// arcs against tangent-continuous ones (192 against 124.7); dwells and curvature jumps raise it above that. A search for chains of
+// free arcs, in the tests, finds none above the floor by more than one, and most at the floor.
 package floor
 
 import (

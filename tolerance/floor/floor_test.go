@@ -56,14 +56,15 @@ func TestWaves(t *testing.T) {
 	}
 }
 
-// leg is an arc of a planted curve, with waves of height ripple on it that vanish at its ends.
-type leg struct{ cx, cy, r, from, sweep, waves, ripple float64 }
+// leg is an arc of a planted curve, from share lo of it to share hi, with waves of height ripple on it that
+// vanish at its ends.
+type leg struct{ cx, cy, r, from, sweep, waves, ripple, lo, hi float64 }
 
 func legsOf[T taylor.Scalar[T]](legs []leg) func(int, T) (T, T) {
 	each := 360 / float64(len(legs))
 	return func(i int, t T) (T, T) {
 		l := legs[i]
-		u := t.Sub(t.Of(each * float64(i))).Scale(1 / each)
+		u := t.Sub(t.Of(each * float64(i))).Scale((l.hi - l.lo) / each).Add(t.Of(l.lo))
 		w, _ := u.Scale(180 * l.waves).Radians().SinCos()
 		s, c := u.Scale(l.sweep).Add(u.Of(l.from)).SinCos()
 		r := u.Of(l.r).Add(w.Scale(l.ripple))
@@ -72,24 +73,32 @@ func legsOf[T taylor.Scalar[T]](legs []leg) func(int, T) (T, T) {
 }
 
 // planted is a closed curve of arcs through the points, arc i turning by sweeps[i] radians, left or right.
-func planted(at []plane.Point, sweeps, waves []float64, ripple float64) curve {
-	c := curve{}
-	legs := make([]leg, len(at))
+// It starts on the first arc, at share cut.
+func planted(at []plane.Point, sweeps, waves []float64, ripple, cut float64) curve {
+	var legs []leg
 	for i, p := range at {
 		v := at[(i+1)%len(at)].Sub(p)
 		center := p.Add(v.Scale(0.5)).Add(v.Left().Scale(0.5 / math.Tan(sweeps[i]/2)))
 		out := p.Sub(center)
-		legs[i] = leg{center.X, center.Y, out.Norm(), float64(out.Angle()), sweeps[i], waves[i], ripple}
-		each := 360 / float64(len(at))
+		legs = append(legs, leg{center.X, center.Y, out.Norm(), float64(out.Angle()), sweeps[i], waves[i], ripple, 0, 1})
+	}
+	if cut > 0 {
+		head := legs[0]
+		legs[0].lo, head.hi = cut, cut
+		legs = append(legs, head)
+	}
+	c := curve{f: legsOf[taylor.F](legs), i: legsOf[taylor.I](legs)}
+	each := 360 / float64(len(legs))
+	for i := range legs {
 		c.pieces = append(c.pieces, plane.Piece{From: each * float64(i), To: each * float64(i+1)})
 	}
-	c.pieces[len(at)-1].To = 360
-	c.f, c.i = legsOf[taylor.F](legs), legsOf[taylor.I](legs)
+	c.pieces[len(legs)-1].To = 360
 	return c
 }
 
-func drawPlanted(t *rapid.T, ripple float64) curve {
-	n := rapid.IntRange(1, 9).Draw(t, "arcs")
+// drawPlanted also returns the number of arcs.
+func drawPlanted(t *rapid.T, ripple float64) (curve, int) {
+	n := rapid.IntRange(2, 9).Draw(t, "arcs")
 	at := make([]plane.Point, n)
 	sweeps, waves := make([]float64, n), make([]float64, n)
 	for i := range at {
@@ -97,21 +106,17 @@ func drawPlanted(t *rapid.T, ripple float64) curve {
 		sweeps[i] = rapid.Float64Range(0.05, 2.5).Draw(t, "sweep") * float64(1-2*rapid.IntRange(0, 1).Draw(t, "right"))
 		waves[i] = float64(rapid.IntRange(1, 12).Draw(t, "waves"))
 	}
-	if n == 1 {
-		sweeps[0], at[0] = 2*math.Pi, plane.Point{X: 30}
-		c := planted([]plane.Point{{X: 30}, {X: -30}}, []float64{math.Pi, math.Pi}, []float64{waves[0], waves[0]}, ripple)
-		return c
-	}
-	return planted(at, sweeps, waves, ripple)
+	cut := rapid.SampledFrom([]float64{0, 0.1, 0.5, 0.9}).Draw(t, "cut")
+	return planted(at, sweeps, waves, ripple, cut), n
 }
 
 // A curve within eps of n arcs never gets a floor above n, close as it may come to eps.
 func TestNeverAbovePlanted(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		eps := math.Pow(10, rapid.Float64Range(-6, -1).Draw(t, "log eps"))
-		c := drawPlanted(t, eps*rapid.SampledFrom([]float64{0, 0.5, 0.99, 0.999999}).Draw(t, "share"))
-		if n := mustFloor(t, c, eps); n > len(c.pieces) {
-			t.Fatalf("floor %d of a curve of %d arcs", n, len(c.pieces))
+		c, arcs := drawPlanted(t, eps*rapid.SampledFrom([]float64{0, 0.5, 0.99, 0.999999}).Draw(t, "share"))
+		if n := mustFloor(t, c, eps); n > arcs {
+			t.Fatalf("floor %d of a curve of %d arcs", n, arcs)
 		}
 	})
 }
@@ -125,8 +130,10 @@ func TestFindsPlanted(t *testing.T) {
 			sweeps[i] = []float64{-0.3, 0.1, -0.15}[i%3]
 		}
 		for _, eps := range []float64{1e-2, 1e-5} {
-			if got := mustFloor(t, planted(at, sweeps, make([]float64, n), 0), eps); got != n {
-				t.Errorf("%d arcs with corners, eps %g: floor %d", n, eps, got)
+			for _, cut := range []float64{0, 0.3} {
+				if got := mustFloor(t, planted(at, sweeps, make([]float64, n), 0, cut), eps); got != n {
+					t.Errorf("%d arcs with corners, cut at %g, eps %g: floor %d", n, cut, eps, got)
+				}
 			}
 		}
 	}
@@ -148,10 +155,10 @@ func (l liar) At(piece int, t float64) plane.Frame {
 // Only the enclosures prove anything: floats that lie may cost reach, never truth.
 func TestFloatsProveNothing(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
-		c := drawPlanted(t, 0)
+		c, arcs := drawPlanted(t, 0)
 		l := liar{c, math.Pow(10, rapid.Float64Range(-4, 1).Draw(t, "log noise"))}
-		if n := mustFloor(t, l, 1e-3); n > len(c.pieces) {
-			t.Fatalf("floor %d of a curve of %d arcs", n, len(c.pieces))
+		if n := mustFloor(t, l, 1e-3); n > arcs {
+			t.Fatalf("floor %d of a curve of %d arcs", n, arcs)
 		}
 	})
 }

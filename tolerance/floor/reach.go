@@ -1,6 +1,9 @@
 package floor
 
-import "math"
+import (
+	"math"
+	"sort"
+)
 
 const (
 	// margin is a share of eps by which a stretch is first taken beyond the float estimate of what fits. The
@@ -58,10 +61,13 @@ func (h *hunt) fit(ns []node, low, high float64) bool {
 		return true
 	}
 	h.buf = axes(ns, h.buf)
-	at := [4]int{0, n / 4, n - n/4, n}
-	if n < 8 {
-		at = [4]int{0, 1, n - 1, n}
+	// The best start where k' is constant, by the parameter for want of a better measure.
+	from, span := ns[0].since(mark{}), ns[n].since(ns[0].mark)
+	share := func(x float64) int {
+		return sort.Search(n, func(i int) bool { return ns[i].since(mark{}) >= from+x*span })
 	}
+	at := [4]int{0, max(1, min(share(0.25), n-2)), 0, n}
+	at[2] = max(at[1]+1, min(share(0.75), n-1))
 	var fits bool
 	h.found, fits = exchange(h.buf, at, low, high)
 	return fits

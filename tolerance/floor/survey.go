@@ -17,6 +17,9 @@ type mark struct {
 
 func (m mark) before(n mark) bool { return m.turn < n.turn || m.turn == n.turn && m.t < n.t }
 
+// since returns the parameter from n to m in degrees, rounded.
+func (m mark) since(n mark) float64 { return m.t - n.t + turnDegrees*float64(m.turn-n.turn) }
+
 func (m mark) turned(by int) mark { return mark{m.turn + by, m.t} }
 
 // node is a point of the curve, in floats.
@@ -41,11 +44,14 @@ const (
 	// where the deviation peaks at worst; (2/perArc)²/2 · 12/4 < 0.6 % of the deviation, 0.2 % of reach.
 	perArc     = 32
 	looked     = 49    // points a piece is first looked at with
-	leastTable = 16    // points of a piece at least
+	leastTable = 40    // points of a piece at least
 	mostTable  = 40000 // and at most
 	evenShare  = 0.15  // of the density's mean is added to it, so that no stretch goes bare
 	floatShare = 1e-11 // of the curve's size: the least eps that floats tell from rounding
-	endCuts    = 6     // how often the intervals at a piece's ends are halved: a jump of curvature makes a narrow peak
+	// A jump of curvature makes a narrow peak, and on a dwell the peaks crowd towards its ends: the intervals at
+	// a piece's ends, a quarter of a gentle piece, are graded by octaves.
+	octaves   = 8
+	perOctave = 6
 )
 
 func newSurvey(c Curve, pieces []plane.Piece, eps float64) (*survey, error) {
@@ -90,19 +96,38 @@ func (s *survey) spread(i int, p plane.Piece) ([]float64, error) {
 		return nil, fmt.Errorf("the curve is not regular between cam angles %g and %g (curvature or its rate is not finite)", p.From, p.To)
 	}
 	n := int(math.Min(math.Max(perArc*sum, leastTable), mostTable))
-	var ts []float64
-	t := func(x float64) float64 { return p.From + (p.To-p.From)*mean(x) }
+	wide := 1 // the intervals at an end that are graded
+	if n == leastTable {
+		wide = leastTable / 4
+	}
 	step := 1 / float64(n)
-	for k := endCuts; k > 0; k-- {
-		ts = append(ts, t(step*math.Ldexp(1, -k)))
+	ends := graded(float64(wide) * step)
+	var shares []float64
+	shares = append(shares, 0)
+	shares = append(shares, ends...)
+	for j := wide; j <= n-wide; j++ {
+		shares = append(shares, step*float64(j))
 	}
-	for j := 1; j < n; j++ {
-		ts = append(ts, t(step*float64(j)))
+	for k := range ends {
+		shares = append(shares, 1-ends[len(ends)-1-k])
 	}
-	for k := 1; k <= endCuts; k++ {
-		ts = append(ts, t(1-step*math.Ldexp(1, -k)))
+	ts := make([]float64, len(shares))
+	for k, x := range shares {
+		ts[k] = p.From + (p.To-p.From)*mean(x)
 	}
-	return append([]float64{p.From}, ts...), nil
+	ts[0] = p.From
+	return ts, nil
+}
+
+// graded returns numbers that grow to below end, closer the nearer to 0.
+func graded(end float64) []float64 {
+	var xs []float64
+	for k := octaves; k > 0; k-- {
+		for i := range perOctave {
+			xs = append(xs, math.Ldexp(end*(1+float64(i)/perOctave), -k))
+		}
+	}
+	return xs
 }
 
 // foresee returns the number of free arcs the piece takes by theory and a map of shares of
@@ -153,15 +178,15 @@ type window struct {
 	s     *survey
 	a     node
 	base  int // table index at or before a
-	last  int // index in the window of a + one turn
+	last  int // the last index before a + one turn
 	cache []node
 }
 
 func (s *survey) window(a node) *window {
 	base := s.index(a.t)
 	last := len(s.table)
-	if s.table[base].t != a.t {
-		last++
+	if s.table[base].t == a.t {
+		last--
 	}
 	return &window{s: s, a: a, base: base, last: last, cache: []node{a}}
 }
@@ -170,12 +195,6 @@ func (s *survey) window(a node) *window {
 func (w *window) to(j int) []node {
 	n := len(w.s.table)
 	for k := len(w.cache); k <= j; k++ {
-		if k == w.last {
-			end := w.a
-			end.turn++
-			w.cache = append(w.cache, end)
-			break
-		}
 		i := w.base + k
 		e := w.s.table[i%n]
 		e.turn = w.a.turn + i/n

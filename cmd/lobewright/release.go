@@ -36,21 +36,6 @@ func releaseCommand() *cli.Command {
 	}
 }
 
-func checkCommand() *cli.Command {
-	return &cli.Command{
-		Name:      "check",
-		Usage:     "show every gate of a spec; write nothing, or with -o what people look at",
-		UsageText: "lobewright check SPEC... [-o DIR]\n\nExamples:\n   lobewright check samples/stick-lift.yaml\n   lobewright check samples/refused-steep.yaml -o draft",
-		Flags: []cli.Flag{
-			&cli.StringFlag{Name: "o", Usage: "folder that receives drawing, charts and sheet, marked NOT RELEASED"},
-			&cli.BoolFlag{Name: "json", Usage: "print the report of each spec as JSON"},
-		},
-		Action: func(c *cli.Context) error {
-			return eachSpec(c, func(s *spec.Spec) error { return check(c, s) })
-		},
-	}
-}
-
 // eachSpec runs the job on every spec named; each stands for itself and the exit
 // status is the highest.
 func eachSpec(c *cli.Context, job func(*spec.Spec) error) error {
@@ -122,22 +107,6 @@ func older(folder string) string {
 		return "; the older pack in " + folder + " is left in place"
 	}
 	return ""
-}
-
-func check(c *cli.Context, s *spec.Spec) error {
-	p, err := prove(c, s)
-	if err != nil {
-		return err
-	}
-	if dir := c.String("o"); dir != "" {
-		if err := p.PlaceDraft(dir); err != nil {
-			return failure{statusOutput, fmt.Errorf("%s: cannot write the draft: %w", s.File, err)}
-		}
-	}
-	if !p.Passed {
-		return failure{status: statusGate}
-	}
-	return nil
 }
 
 // prove runs the job in memory and prints what it found.

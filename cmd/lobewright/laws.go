@@ -7,44 +7,8 @@ import (
 
 	"github.com/urfave/cli/v2"
 
-	"lobewright/synth"
 	"lobewright/synth/motion"
-	"lobewright/synth/spec"
 )
-
-func newCommand() *cli.Command {
-	return &cli.Command{
-		Name:      "new",
-		Usage:     "print a commented starter spec that releases as it stands",
-		UsageText: "lobewright new [KIND]\n\nExamples:\n   lobewright new > my-cam.yaml\n   lobewright new plate",
-		Action: func(c *cli.Context) error {
-			if c.NArg() > 1 {
-				return failure{statusInput, fmt.Errorf("lobewright new: found %d arguments; allowed: one kind at most", c.NArg())}
-			}
-			text, err := spec.Starter(c.Args().First())
-			if err != nil {
-				return failure{statusInput, fmt.Errorf("lobewright new: %w", err)}
-			}
-			_, err = fmt.Fprint(c.App.Writer, text)
-			return err
-		},
-	}
-}
-
-func schemaCommand() *cli.Command {
-	return &cli.Command{
-		Name:      "schema",
-		Usage:     "print the JSON Schema of the spec, for editors",
-		UsageText: "lobewright schema\n\nExamples:\n   lobewright schema > cam.schema.json\n   lobewright schema | head",
-		Action: func(c *cli.Context) error {
-			if c.NArg() > 0 {
-				return failure{statusInput, fmt.Errorf("lobewright schema: found %q; allowed: no arguments", c.Args().First())}
-			}
-			_, err := c.App.Writer.Write(spec.Schema(synth.Vocabulary()))
-			return err
-		},
-	}
-}
 
 // lawRow is one law with its peak factors; nil is infinite.
 type lawRow struct {

@@ -25,14 +25,20 @@ type sample struct {
 	t, s float64
 }
 
-// run is a stretch of the curve without circles, from one circle to the next, or the
-// whole curve when it has none.
+// part is a piece of the curve as a run sees it: its parameter is the curve's plus
+// shift, which is a whole turn for pieces behind the curve's start.
+type part struct {
+	plane.Piece
+	piece int
+	shift float64
+}
+
+// run is a stretch of parts that follow each other.
 type run struct {
-	curve    Curve
-	pieces   []plane.Piece // all of the curve's
-	first, n int           // the run's pieces
-	samples  []sample      // growing t; at a piece boundary both sides
-	pins     []int         // indices into samples: where the curvature or tangent jumps, the right side
+	curve   Curve
+	parts   []part
+	samples []sample // growing t; at a part's boundary both sides
+	pins    []int    // indices into samples: where the curvature or tangent jumps, or the curve starts; the right side
 }
 
 const (
@@ -105,13 +111,31 @@ func step(a, b plane.Frame) float64 {
 	return chord * (1 + x*x/24)
 }
 
-// samplePiece returns samples of one piece, enough for each element that density
-// foresees at its densest place to have the wanted number.
-func samplePiece(c Curve, i int, p plane.Piece, density per, wanted float64) ([]sample, error) {
+// partsOf returns all pieces of a curve as parts.
+func partsOf(pieces []plane.Piece) []part {
+	parts := make([]part, len(pieces))
+	for i, p := range pieces {
+		parts[i] = part{Piece: p, piece: i}
+	}
+	return parts
+}
+
+// turned returns the part one turn on.
+func (p part) turned() part {
+	p.From, p.To, p.shift = p.From+turnDegrees, p.To+turnDegrees, p.shift+turnDegrees
+	return p
+}
+
+// frame evaluates the curve at t of the part.
+func (p part) frame(c Curve, t float64) plane.Frame { return c.At(p.piece, t-p.shift) }
+
+// sampleEvenly returns samples of one part, equally spread over its parameter, enough for each element that
+// density foresees at its densest place to have the wanted number.
+func sampleEvenly(c Curve, p part, density per, wanted float64) ([]sample, error) {
 	densest, length := 0.0, 0.0
 	var before plane.Frame
 	for j := 0; j < surveyed; j++ {
-		f := c.At(i, at(p, j, surveyed))
+		f := p.frame(c, at(p.Piece, j, surveyed))
 		densest = math.Max(densest, density(f))
 		if j > 0 {
 			length += step(before, f)
@@ -119,15 +143,19 @@ func samplePiece(c Curve, i int, p plane.Piece, density per, wanted float64) ([]
 		before = f
 	}
 	if !(length*densest >= 0) || math.IsInf(length*densest, 0) {
-		return nil, fmt.Errorf("the curve is not regular between cam angles %g and %g (curvature or its rate is not finite)", p.From, p.To)
+		return nil, irregular(p)
 	}
 	n := int(math.Min(math.Max(wanted*length*densest, minSamples), maxSamples))
 	ss := make([]sample, n)
 	for j := range ss {
-		t := at(p, j, n)
-		ss[j] = sample{Frame: c.At(i, t), t: t}
+		t := at(p.Piece, j, n)
+		ss[j] = sample{Frame: p.frame(c, t), t: t}
 	}
 	return ss, nil
+}
+
+func irregular(p part) error {
+	return fmt.Errorf("the curve is not regular between cam angles %g and %g (curvature or its rate is not finite)", p.From, p.To)
 }
 
 // at returns the j-th of n equally spread parameters of a piece, its ends exact.
@@ -138,12 +166,12 @@ func at(p plane.Piece, j, n int) float64 {
 	return p.From + (p.To-p.From)*float64(j)/float64(n-1)
 }
 
-// newRun samples pieces first..first+n-1.
-func newRun(c Curve, pieces []plane.Piece, first, n int, density per, wanted float64) (*run, error) {
-	r := &run{curve: c, pieces: pieces, first: first, n: n}
+// newRun samples parts evenly.
+func newRun(c Curve, parts []part, density per, wanted float64) (*run, error) {
+	r := &run{curve: c, parts: parts}
 	s, steepest := 0.0, 0.0
-	for i := first; i < first+n; i++ {
-		ss, err := samplePiece(c, i, pieces[i], density, wanted)
+	for _, p := range parts {
+		ss, err := sampleEvenly(c, p, density, wanted)
 		if err != nil {
 			return nil, err
 		}
@@ -154,23 +182,29 @@ func newRun(c Curve, pieces []plane.Piece, first, n int, density per, wanted flo
 			ss[j].s = s
 			steepest = math.Max(steepest, math.Abs(ss[j].K))
 		}
-		r.samples = append(r.samples, ss...)
-	}
-	for j := 1; j < len(r.samples); j++ {
-		a, b := r.samples[j-1], r.samples[j]
-		if a.t == b.t && (math.Abs(a.K-b.K) > jumpShare*steepest || math.Abs(a.T.Cross(b.T)) > kinkAngle) {
-			r.pins = append(r.pins, j)
+		if n := len(r.samples); n > 0 && (p.piece == 0 || jumps(r.samples[n-1].Frame, ss[0].Frame, steepest) || breaks(r.samples[n-1].Frame, ss[0].Frame)) {
+			r.pins = append(r.pins, n)
 		}
+		r.samples = append(r.samples, ss...)
 	}
 	return r, nil
 }
 
-// frame returns the curve at t inside the run.
-func (r *run) frame(t float64) plane.Frame { return r.curve.At(r.pieceAt(t), t) }
+// jumps reports whether the curvature steps between frames at the same place of a curve whose
+// largest curvature is given.
+func jumps(a, b plane.Frame, steepest float64) bool {
+	return math.Abs(a.K-b.K) > jumpShare*steepest
+}
 
-func (r *run) pieceAt(t float64) int {
-	i := sort.Search(r.n-1, func(i int) bool { return t < r.pieces[r.first+i].To })
-	return r.first + i
+// breaks reports whether the tangent does.
+func breaks(a, b plane.Frame) bool {
+	return !(math.Abs(a.T.Cross(b.T)) <= kinkAngle && a.T.Dot(b.T) > 0)
+}
+
+// frame returns the curve at t inside the run.
+func (r *run) frame(t float64) plane.Frame {
+	i := sort.Search(len(r.parts)-1, func(i int) bool { return t < r.parts[i].To })
+	return r.parts[i].frame(r.curve, t)
 }
 
 // after returns the index of the first sample with a parameter above t.

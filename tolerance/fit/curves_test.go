@@ -200,7 +200,7 @@ func pathToCurve(c testCurve, p chain.Path, perElement int) float64 {
 			x := float64(j) / float64(perElement)
 			q := e.PointAt(x)
 			t, best := e.Source.From+x*(e.Source.To-e.Source.From), math.Inf(1)
-			for k := 0; k < 12; k++ {
+			for k := 0; k < 60; k++ {
 				f := c.frame(t)
 				best = math.Min(best, q.Dist(f.P))
 				speed := f.P.Dist(c.frame(t+1e-4).P) / 1e-4

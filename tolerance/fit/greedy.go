@@ -7,6 +7,12 @@ import (
 	"lobewright/synth/plane"
 )
 
+// The last resort, and the classical method without its tilt: the longest biarc from node to node, nodes
+// on the curve, their tangents tilted by a good part of what the best chain's are, and the share
+// of the first leg searched; then the deviation is lowered as far as the count allows,
+// which spreads the arcs evenly. Nodes are fixed where the curvature jumps and at the ends of the stretch; there
+// is no tilt there. It takes 1.2 to 1.4 times N*, and ends with an error only where the curve is not smooth.
+
 // section is a stretch of a run between two fixed nodes: ends of the run, and places
 // where the curvature or the tangent jumps. from and to are sample indices.
 type section struct {
@@ -18,6 +24,9 @@ type section struct {
 }
 
 const (
+	searchShare   = 0.99 // of eps: what the greedy allows itself, since its samples see a little less than all
+	samplesPerArc = 24   // where the curve needs arcs most densely
+
 	swingShare   = 1.0                 // of k'·h, h the length of an arc: what tilted ends may add to a curvature
 	reachFirst   = 2.2                 // longest pair tried, in ideal pair lengths
 	reachShrink  = 0.87                // next shorter pair tried

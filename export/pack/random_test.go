@@ -91,17 +91,21 @@ func randomSpec(r *rand.Rand) string {
 // A random spec whose cam is sound releases, whatever its size, units, laws, turning
 // direction, operations; and what it wrote is where its certificate says, by sampling.
 func TestRandomSpecsRelease(t *testing.T) {
-	const specs, seed = 24, 20
+	const specs, first = 24, 20_000
+	seeds := []int64{991_055} // once failed: a tab cut where no joint lies at the start of the first piece
+	for i := range int64(specs) {
+		seeds = append(seeds, first+i)
+	}
 	released := 0
-	for i := range specs {
-		text := randomSpec(rand.New(rand.NewSource(seed*1000 + int64(i))))
+	for _, seed := range seeds {
+		text := randomSpec(rand.New(rand.NewSource(seed)))
 		s, err := spec.Read("random.yaml", []byte(text), synth.Vocabulary())
 		if err != nil {
-			t.Fatalf("seed %d, spec %d: %v\n%s", seed, i, err, text)
+			t.Fatalf("seed %d: %v\n%s", seed, err, text)
 		}
 		p, j, err := work(s, options())
 		if err != nil {
-			t.Fatalf("seed %d, spec %d: %v\n%s", seed, i, err, text)
+			t.Fatalf("seed %d: %v\n%s", seed, err, text)
 		}
 		sound := true
 		for _, g := range j.gates {
@@ -110,7 +114,7 @@ func TestRandomSpecsRelease(t *testing.T) {
 			}
 		}
 		if sound != p.Passed {
-			t.Errorf("seed %d, spec %d: passed %v, the cam sound %v: %+v\n%s", seed, i, p.Passed, sound, p.Report.Gates, text)
+			t.Errorf("seed %d: passed %v, the cam sound %v: %+v\n%s", seed, p.Passed, sound, p.Report.Gates, text)
 			continue
 		}
 		if !sound {
@@ -120,7 +124,7 @@ func TestRandomSpecsRelease(t *testing.T) {
 		w := j.outline.paths[0]
 		// The sampled curve's chords are off by up to 160 x (0.05°)²/8 = 1.5e-5.
 		if d := farthest(w.exact, w.path); d > w.deviation.Bound+2e-5 {
-			t.Errorf("seed %d, spec %d: sampled deviation %v, certified %v\n%s", seed, i, d, w.deviation.Bound, text)
+			t.Errorf("seed %d: sampled deviation %v, certified %v\n%s", seed, d, w.deviation.Bound, text)
 		}
 	}
 	if released < specs/2 {

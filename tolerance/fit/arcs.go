@@ -59,8 +59,8 @@ type Options struct{}
 // becomes exactly one arc of that circle, which may end a little before or behind the piece. The
 // path breaks its tangent only where the curve does. No arc's curvature is further from
 // the curve's than that changes along an arc. The path runs with growing parameter; Source
-// holds the stretch each element stands for, the first from the start of the first piece, the last to
-// 360 on. Where no joint lies at that start, the nearest joint takes its name. Errors: eps not a
+// holds the stretch each element stands for, the first from the joint nearest to the start of the first
+// piece (at it, where a joint lies there), the last to 360 on from that. Errors: eps not a
 // length, a curve that is not one closed turn or has no finite curvature.
 func Arcs(c Curve, eps float64, _ Options) (chain.Path, error) {
 	pieces, err := validate(c, eps)
@@ -128,7 +128,8 @@ func settle(items []item, paths []chain.Path) {
 }
 
 // started turns the path so that its first element is the one that starts nearest to
-// parameter t or a turn on, and lets it start exactly there.
+// parameter t or a turn on. It keeps the name of its own joint: a stretch cut by
+// parameter must land where it was asked for.
 func started(p chain.Path, t float64) chain.Path {
 	best, turns := 0, 0.0
 	for i := range p {
@@ -150,7 +151,7 @@ func started(p chain.Path, t float64) chain.Path {
 	for i := 1; i < len(q); i++ {
 		q[i].Source.From = q[i-1].Source.To
 	}
-	q[0].Source.From, q[len(q)-1].Source.To = t, t+turnDegrees
+	q[len(q)-1].Source.To = q[0].Source.From + turnDegrees
 	return q
 }
 

@@ -61,7 +61,7 @@ func (p ProveOut) Text(color bool) string {
 	t.title("Read from the file")
 	t.row("program", fmt.Sprintf("%d blocks, %s, %s", p.Blocks, size(p.Bytes), duration(p.Seconds)))
 	for _, q := range p.Passes {
-		t.pass(q)
+		t.pass(q, p.Process)
 	}
 	t.follower(p.Follower)
 	t.title("Faults")

@@ -200,7 +200,7 @@ func (t *summary) operations() {
 		t.row("program", fmt.Sprintf("%d blocks (%d lines, %d arcs), %s, %s", o.Blocks, o.Lines, o.Arcs, size(o.Bytes),
 			duration(o.Seconds)))
 		for _, p := range o.Passes {
-			t.pass(p)
+			t.pass(p, o.Process)
 		}
 		if !t.r.hasPath(o.File) {
 			t.deviation(o.Deviation)
@@ -210,7 +210,7 @@ func (t *summary) operations() {
 }
 
 // pass is one line: blocks, theory, floor and bound of a pass.
-func (t *summary) pass(p Pass) {
+func (t *summary) pass(p Pass, process string) {
 	text := fmt.Sprintf("%d blocks (%d lines, %d arcs)", p.Lines+p.Arcs, p.Lines, p.Arcs)
 	if p.Theory != nil {
 		text += ", theory " + sig(*p.Theory, largeFigures)
@@ -221,7 +221,11 @@ func (t *summary) pass(p Pass) {
 	if p.Deviation != nil {
 		text += ", certified " + sig(p.Deviation.Bound, errorFigures) + " " + t.r.short()
 	}
-	t.row(fmt.Sprintf("pass %d, stock %s", p.Number, sig(p.Stock, errorFigures)), text)
+	left := "stock " + sig(p.Stock, errorFigures)
+	if process == "wire" {
+		left = "offset " + sig(p.Offset, errorFigures)
+	}
+	t.row(fmt.Sprintf("pass %d, %s", p.Number, left), text)
 }
 
 func (t *summary) verdict() {

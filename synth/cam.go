@@ -21,6 +21,8 @@ type Cam struct {
 	zones    []motion.Zone
 	lift     lift
 	follower follower.TranslatingRoller
+
+	completion *Completion // nil when nothing was left to complete
 }
 
 // lift is the completed motion as series in the cam angle in degrees, by zone.
@@ -74,21 +76,9 @@ func kindOf(k spec.EventKind) motion.Kind {
 // Build completes the cam of a spec. It fails only where the spec contradicts
 // itself in a way its reader cannot see.
 func Build(s *spec.Spec) (*Cam, error) {
-	events := make([]motion.Event, len(s.Motion.Events))
-	for i, e := range s.Motion.Events {
-		events[i] = motion.Event{Kind: kindOf(e.Kind), Lift: e.Lift, Over: e.Over}
-		if e.Kind == spec.Dwell {
-			continue
-		}
-		law, err := lawOf(e.Law)
-		if err != nil {
-			return nil, fmt.Errorf("%s:%d:%d: %w", s.File, e.Law.Place.Line, e.Law.Place.Column, err)
-		}
-		events[i].Law = law
-	}
-	cycle, err := motion.Join(s.Motion.StartAt, s.Motion.StartLift, events)
+	cycle, completion, err := complete(s)
 	if err != nil {
-		return nil, fmt.Errorf("%s:%d:%d: %w", s.File, s.Motion.Place.Line, s.Motion.Place.Column, err)
+		return nil, err
 	}
 	f, ok := follower.NewTranslatingRoller(s.Cam.BaseRadius, s.Follower.RollerDiameter/2, s.Follower.Offset, s.Camshaft.Clockwise)
 	if !ok {
@@ -96,7 +86,7 @@ func Build(s *spec.Spec) (*Cam, error) {
 			s.File, s.Follower.Place.Line, s.Follower.Place.Column, s.Follower.Offset, s.Cam.BaseRadius+s.Follower.RollerDiameter/2)
 	}
 	zones := cycle.Zones()
-	return &Cam{spec: s, cycle: cycle, zones: zones, lift: zoneLift(zones), follower: f}, nil
+	return &Cam{spec: s, cycle: cycle, zones: zones, lift: zoneLift(zones), follower: f, completion: completion}, nil
 }
 
 // Cycle returns the completed motion.

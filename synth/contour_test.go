@@ -99,7 +99,7 @@ func TestReferenceVectors(t *testing.T) {
 		p := cam.steepest(1)
 		near(t, "largest pressure angle", p.value, c.alpha, 1e-10)
 		near(t, "its place", p.t/90, c.u, 1e-6)
-		up := cam.Pitch().largest(func(i int) bool { return cam.moving(i) == 1 }, func(i int, t float64) float64 { return cam.Pitch().At(i, t).K })
+		up := cam.Pitch().largest(func(i int) bool { return cam.moving(i, cam.zones[i].From) == 1 }, func(i int, t float64) float64 { return cam.Pitch().At(i, t).K })
 		near(t, "least radius of curvature", 1/up.value, c.rho, 1e-10)
 		near(t, "its place", up.t/90, c.v, 1e-6)
 	}

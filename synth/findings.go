@@ -39,6 +39,9 @@ func (c *Cam) Findings() []gate.Finding {
 				Text: fmt.Sprintf("the acceleration jumps by %.4g %s/s² (from %.4g to %.4g)", step*w*w, c.unit(), j.Acceleration[0]*w*w, j.Acceleration[1]*w*w)})
 		}
 	}
+	if x := c.completionFinding(); x != nil {
+		f = append(f, *x)
+	}
 	if x := c.harmfulOffset(); x != nil {
 		f = append(f, *x)
 	}
@@ -49,14 +52,26 @@ func (c *Cam) Findings() []gate.Finding {
 		f = append(f, gate.Finding{ID: "small-radius", CamAngle: camAngle(r.ConvexAt),
 			Text: fmt.Sprintf("the contour's convex radius of curvature falls to %.4g %s, below half the roller's radius: high contact stress", radius, c.unit())})
 	}
-	for _, e := range c.spec.Motion.Events {
-		if e.Timed {
-			f = append(f, gate.Finding{ID: "tied-to-speed", CamAngle: math.NaN(),
-				Text: fmt.Sprintf("an event is given as a time: at another camshaft speed than %g rpm the contour would be another", c.spec.Camshaft.Speed)})
-			break
-		}
+	if what := c.tiedToSpeed(); what != "" {
+		f = append(f, gate.Finding{ID: "tied-to-speed", CamAngle: math.NaN(),
+			Text: fmt.Sprintf("%s: at another camshaft speed than %g rpm the contour would be another", what, c.spec.Camshaft.Speed)})
 	}
 	return f
+}
+
+// tiedToSpeed says what in the spec ties the geometry to the camshaft's speed.
+func (c *Cam) tiedToSpeed() string {
+	for _, e := range c.spec.Motion.Events {
+		if e.Timed {
+			return "an event is given as a time"
+		}
+	}
+	for _, p := range c.spec.Motion.Points {
+		if p.Timed {
+			return "a fact is given as a velocity or an acceleration per second"
+		}
+	}
+	return ""
 }
 
 // harmfulOffset compares the worse of rise and fall with what the same offset on the other side, or

@@ -42,21 +42,35 @@ func camAngle(t float64) float64 {
 
 func (c *Cam) unit() string { return c.spec.Units.Short() }
 
-// moving reports what the follower does in a zone: +1 rises, -1 falls, 0 dwells.
-func (c *Cam) moving(zone int) int {
+// moving reports what the follower does at cam angle t of a zone: +1 rises, -1
+// falls, 0 dwells. A zone of an event goes one way; one that was completed or smoothed
+// may turn back.
+func (c *Cam) moving(zone int, t float64) int {
 	z := c.zones[zone]
-	if z.Dwell {
+	switch {
+	case z.Dwell:
 		return 0
+	case z.Event >= 0:
+		if c.spec.Motion.Events[z.Event].Kind == spec.Rise {
+			return 1
+		}
+		return -1
 	}
-	if c.spec.Motion.Events[z.Event].Kind == spec.Rise {
+	const inside = 1e-6 // of the way to the middle: at a zone's end the velocity may be 0
+	if c.LiftIn(zone, t+inside*((z.From+z.To)/2-t)).V >= 0 {
 		return 1
 	}
 	return -1
 }
 
 func (c *Cam) steepest(way int) place {
-	return c.Pitch().largest(func(i int) bool { return c.moving(i) == way },
-		func(i int, t float64) float64 { return math.Abs(c.PressureAngleIn(i, t).Deg()) })
+	return c.Pitch().largest(func(i int) bool { return !c.zones[i].Dwell },
+		func(i int, t float64) float64 {
+			if c.moving(i, t) != way {
+				return 0
+			}
+			return math.Abs(c.PressureAngleIn(i, t).Deg())
+		})
 }
 
 func (c *Cam) pressureGate() gate.Gate {

@@ -133,7 +133,7 @@ func (c *Cam) samples() []sizeSample {
 		for k := range n + 1 {
 			t := z.From + (z.To-z.From)*float64(k)/float64(n)
 			l := c.LiftIn(i, t)
-			all = append(all, sizeSample{t, l.S, l.V, l.A, c.moving(i) > 0, c.moving(i) < 0})
+			all = append(all, sizeSample{t, l.S, l.V, l.A, c.moving(i, t) > 0, c.moving(i, t) < 0})
 		}
 	}
 	return all

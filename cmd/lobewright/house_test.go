@@ -14,7 +14,7 @@ func rooms() map[string][]string {
 	leaves := []string{"synth/taylor", "synth/plane"}
 	with := func(base []string, more ...string) []string { return append(slices.Clone(base), more...) }
 	motion := with(leaves, "synth/motion")
-	cam := with(motion, "synth/gate", "synth/spec", "synth/follower", "synth")
+	cam := with(motion, "synth/gate", "synth/spec", "synth/follower", "synth/qp", "synth/partial", "synth")
 	chain := []string{"synth/plane", "tolerance/chain"}
 	proof := with(leaves, "tolerance/chain", "tolerance/certify")
 	return map[string][]string{
@@ -23,6 +23,8 @@ func rooms() map[string][]string {
 		"synth/gate":        {"synth/plane"},
 		"synth/spec":        {"synth/plane"},
 		"synth/motion":      leaves,
+		"synth/qp":          {},
+		"synth/partial":     with(motion, "synth/qp"),
 		"synth/follower":    motion,
 		"synth":             cam,
 		"synth/evidence":    cam,

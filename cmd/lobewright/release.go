@@ -67,20 +67,35 @@ func eachSpec(c *cli.Context, job func(*spec.Spec) error) error {
 	return nil
 }
 
-// specLimit is the largest spec file read, bytes.
-const specLimit = 1 << 20
+// fileLimit is the largest file read, bytes: a spec's own limit is lower, a table's as
+// high.
+const fileLimit = 4 << 20
 
 func readSpec(file string) (*spec.Spec, error) {
-	f, err := os.Open(file)
+	data, err := readFile(file)
 	if err != nil {
 		return nil, fmt.Errorf("cannot read the spec: %w", err)
+	}
+	s, err := spec.Read(file, data, synth.Vocabulary())
+	if err != nil {
+		return nil, err
+	}
+	return s.Load(data, func(name string) ([]byte, error) {
+		if !filepath.IsAbs(name) {
+			name = filepath.Join(filepath.Dir(file), filepath.FromSlash(name))
+		}
+		return readFile(name)
+	})
+}
+
+// readFile reads a file, and no more of it than one byte above the limit.
+func readFile(name string) ([]byte, error) {
+	f, err := os.Open(name)
+	if err != nil {
+		return nil, err
 	}
 	defer f.Close()
-	data, err := io.ReadAll(io.LimitReader(f, specLimit+1))
-	if err != nil {
-		return nil, fmt.Errorf("cannot read the spec: %w", err)
-	}
-	return spec.Read(file, data, synth.Vocabulary())
+	return io.ReadAll(io.LimitReader(f, fileLimit+1))
 }
 
 func release(c *cli.Context, s *spec.Spec) error {

@@ -107,6 +107,9 @@ func (j *job) shape(c *synth.Curve) chain.Path {
 // events lists the events of the motion in words, with where each begins on the contour.
 func (j *job) events() []svg.Event {
 	s := j.spec
+	if len(s.Motion.Events) == 0 {
+		return j.stretches()
+	}
 	from := s.Motion.StartAt
 	var out []svg.Event
 	for _, e := range s.Motion.Events {

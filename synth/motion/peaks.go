@@ -24,6 +24,7 @@ const (
 	acceleration
 	jerk
 	torque // velocity times acceleration
+	height // the lift itself
 )
 
 // narrowest is the width, as a share of the zone, below which a stretch that
@@ -33,6 +34,9 @@ const narrowest = 1e-8
 
 // of returns the quantity of a lift, with its derivatives.
 func of[T taylor.Scalar[T]](q quantity, lift T) T {
+	if q == height {
+		return lift
+	}
 	v := lift.D()
 	switch q {
 	case velocity:

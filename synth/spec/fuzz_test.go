@@ -46,8 +46,25 @@ func FuzzRead(f *testing.F) {
 }
 
 func checkRead(t *testing.T, s *Spec) {
-	if s == nil || s.Part == "" || s.Units == "" || len(s.Motion.Events) == 0 {
+	if s == nil || s.Part == "" || s.Units == "" {
 		t.Fatalf("spec %+v", s)
+	}
+	forms := 0
+	for _, is := range []bool{len(s.Motion.Events) > 0, len(s.Motion.Points) > 0, s.Motion.Table != nil} {
+		if is {
+			forms++
+		}
+	}
+	if forms != 1 {
+		t.Fatalf("%d forms of motion: %+v", forms, s.Motion)
+	}
+	for _, f := range s.Motion.Points {
+		if !(f.From >= 0 && f.From < 360 && f.To >= f.From && f.To <= f.From+360) || f.Point != (f.To == f.From) {
+			t.Errorf("fact %+v", f)
+		}
+	}
+	if len(s.Motion.Events) == 0 {
+		return
 	}
 	sum, lift := 0.0, s.Motion.StartLift
 	for _, e := range s.Motion.Events {

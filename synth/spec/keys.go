@@ -69,19 +69,6 @@ func camshaftTable() table[Camshaft] {
 	}}
 }
 
-func motionTable(v Vocabulary) table[Motion] {
-	return table[Motion]{what: "a motion", place: func(m *Motion, p Place) { m.Place = p },
-		absent: []absent{{name: "points", instead: "events"}, {name: "table", instead: "events"}, {name: "minimize"}, {name: "jerk_ratio"}},
-		fields: []field[Motion]{
-			list("events", "dwells, rises and falls in order of cam angle; their angles sum to 360 degrees and their lifts close",
-				eventTable(v), func(r *reader, _ *Motion, all []draft) { r.events = all }).required(),
-			number("start_at_cam_angle", "cam angle where the first event begins, degrees, default 0", camAngle(),
-				func(m *Motion) *float64 { return &m.StartAt }),
-			number("start_lift", "lift where the first event begins, length, default 0", orNoLength(),
-				func(m *Motion) *float64 { return &m.StartLift }),
-		}}
-}
-
 func followerTable(v Vocabulary) table[Follower] {
 	return table[Follower]{what: "a follower", place: func(f *Follower, p Place) { f.Place = p },
 		kinds: v.Followers, name: "kind", kind: byKey("kind", v.Followers, everyFollower()),

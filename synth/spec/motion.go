@@ -29,6 +29,7 @@ func (r *reader) finishMotion(s *Spec) {
 	for _, d := range r.events {
 		s.Motion.Events = append(s.Motion.Events, d.Event)
 	}
+	r.finishPoints(s)
 	if whole && r.ok("motion.start_lift") {
 		r.checkLifts(s)
 	}

@@ -48,9 +48,8 @@ type table[T any] struct {
 
 // absent is a key the format has and this version, or this kind, has not.
 type absent struct {
-	name    string
-	of      string // the kind it belongs to; empty when only the version lacks it
-	instead string // the key of the same object that does its work in this version
+	name string
+	of   string // the kind it belongs to; empty when only the version lacks it
 }
 
 // where is a value under way: its path, its key (nil for the root and for
@@ -179,14 +178,6 @@ func (t table[T]) unknown(r *reader, w where, key *yaml.Node, kind string) (inst
 		f.Found = a.name + ", which is not available in this version"
 		if a.of != "" {
 			f.Found = a.name + ", a key of " + a.of
-		}
-		instead = a.instead
-		if _, both := w.find(a.instead); both {
-			instead = ""
-			f.Found = "two kinds of motion, " + a.instead + " and " + a.name
-			f.Allowed = "exactly one of events, points, table; in this version events"
-		} else if a.instead != "" {
-			f.Allowed = a.instead
 		}
 	} else {
 		f.Nearest = nearest(key.Value, t.names(kind))

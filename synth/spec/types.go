@@ -47,12 +47,40 @@ type Camshaft struct {
 // Place is where something stands in the spec, from 1.
 type Place struct{ Line, Column int }
 
-// Motion is the specification of the lift; Events is set.
+// Motion is the specification of the lift; exactly one of Events, Points and Table is
+// set.
 type Motion struct {
 	StartAt   float64 // cam angle where the first event begins, degrees, 0 <= StartAt < 360
 	StartLift float64 // lift at the start of the first event, length
 	Events    []Event
+
+	Points    []Fact
+	LeastJerk bool    // the peak jerk is minimized, else the peak acceleration
+	JerkRatio float64 // the largest peak jerk as a multiple of the least possible; default 2
+
+	Table *Table
+	Place Place
+}
+
+// Fact is one thing known of the motion: at a cam angle any of Lift, Velocity and
+// Acceleration; over a span Lift (held), or Velocity (carried), or a window, Above and
+// Below.
+type Fact struct {
+	Point                        bool    // at a single cam angle
+	From, To                     float64 // cam angles, degrees, 0 <= From < 360, From <= To <= From+360
+	Lift, Velocity, Acceleration *float64
+	Above, Below                 *float64 // length; Velocity in length/degree, Acceleration in length/degree²
+	Timed                        bool     // a velocity or an acceleration other than 0 was given, per second
+	Place                        Place
+}
+
+// Table is a table of cam angle and lift in a file of its own.
+type Table struct {
+	File      string  // as the spec names it, from the spec's folder
+	Smoothing float64 // length
+	Data      []byte  // the file's content
 	Place     Place
+	FilePlace Place // of the file's name in the spec
 }
 
 // EventKind says what an event does.

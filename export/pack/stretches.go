@@ -1,0 +1,48 @@
+package pack
+
+import (
+	"fmt"
+
+	"lobewright/export/svg"
+	"lobewright/synth/motion"
+	"lobewright/synth/plane"
+)
+
+// stretches lists what a motion does that is not made of events: where it is held,
+// where it is carried, and what was found between.
+func (j *job) stretches() []svg.Event {
+	var out []svg.Event
+	zones := j.cam.Cycle().Zones()
+	for i, z := range zones {
+		text := j.stretch(z)
+		if n := len(out); n > 0 && out[n-1].Text == text {
+			out[n-1].To += z.To - z.From
+			continue
+		}
+		from := plane.Wrap360(z.From)
+		out = append(out, svg.Event{From: from, To: from + z.To - z.From, Text: text, Start: j.cam.Contour().At(i, z.From).P})
+	}
+	if n := len(out); n > 1 && out[0].Text == out[n-1].Text {
+		out[n-1].To += out[0].To - out[0].From
+		out = append(out[n-1:n:n], out[1:n-1]...)
+	}
+	for i := 1; i < len(out); i++ { // in order of cam angle
+		for k := i; k > 0 && out[k].From < out[k-1].From; k-- {
+			out[k], out[k-1] = out[k-1], out[k]
+		}
+	}
+	return out
+}
+
+func (j *job) stretch(z motion.Zone) string {
+	u := j.spec.Units.Short()
+	switch {
+	case j.spec.Motion.Table != nil:
+		return "smoothed from the table"
+	case z.Dwell:
+		return fmt.Sprintf("held at %.6g %s", z.Poly[0], u)
+	case len(z.Poly) == 2 && len(z.Sines) == 0:
+		return fmt.Sprintf("carried at %.6g %s/s", z.Poly[1]/z.Span*j.spec.Camshaft.Speed*6, u)
+	}
+	return "completed"
+}

@@ -161,6 +161,52 @@ func (j *job) runs(f func(zone int, t float64) float64) []svg.Run {
 	return all
 }
 
+// curve is a panel of the motion chart: its samples, and its least and greatest value
+// where they truly are, between the samples.
+func (j *job) curve(unit string, limits []svg.Limit, f func(zone int, t float64) float64) svg.Curve {
+	c := svg.Curve{Unit: unit, Limits: limits, Runs: j.runs(f), Peaks: []svg.Sample{}}
+	for _, sign := range []float64{-1, 1} {
+		at, value := j.greatest(func(zone int, t float64) float64 { return sign * f(zone, t) })
+		if value > 0 {
+			c.Peaks = append(c.Peaks, svg.Sample{CamAngle: at, Value: sign * value})
+		}
+	}
+	return c
+}
+
+// greatest finds the greatest value over the cycle: the best of close samples, then
+// the golden section between its neighbors.
+func (j *job) greatest(f func(zone int, t float64) float64) (at, value float64) {
+	const step = 0.5
+	zone, best := 0, -math.MaxFloat64
+	zones := j.cam.Cycle().Zones()
+	var lo, hi float64
+	for i, z := range zones {
+		n := int(math.Ceil((z.To - z.From) / step))
+		h := (z.To - z.From) / float64(n)
+		for k := range n + 1 {
+			t := z.From + h*float64(k)
+			if v := f(i, t); v > best+1e-12*math.Abs(best) {
+				zone, best, at = i, v, t
+				lo, hi = math.Max(z.From, t-h), math.Min(z.To, t+h)
+			}
+		}
+	}
+	const golden = 0.6180339887498949
+	for hi-lo > 1e-7 {
+		a, b := hi-golden*(hi-lo), lo+golden*(hi-lo)
+		if f(zone, a) >= f(zone, b) {
+			hi = b
+		} else {
+			lo = a
+		}
+	}
+	if v := f(zone, (lo+hi)/2); v > best+1e-12*math.Abs(best) {
+		at, best = (lo+hi)/2, v
+	}
+	return plane.Wrap360(at), best
+}
+
 func (j *job) motionChart(head svg.Head) svg.MotionChart {
 	w, u, l := j.cam.Omega(), j.spec.Units.Short(), j.spec.Limits
 	contour := j.cam.Contour()
@@ -171,19 +217,28 @@ func (j *job) motionChart(head svg.Head) svg.MotionChart {
 		return []svg.Limit{{Value: *limit}, {Value: -*limit}}
 	}
 	c := svg.MotionChart{
-		Head:         head,
-		Lift:         svg.Curve{Unit: u, Runs: j.runs(func(z int, t float64) float64 { return j.cam.LiftIn(z, t).S })},
-		Velocity:     svg.Curve{Unit: u + "/s", Runs: j.runs(func(z int, t float64) float64 { return j.cam.LiftIn(z, t).V * w }), Limits: both(l.Velocity)},
-		Acceleration: svg.Curve{Unit: u + "/s²", Runs: j.runs(func(z int, t float64) float64 { return j.cam.LiftIn(z, t).A * w * w }), Limits: both(l.Acceleration)},
-		Jerk:         svg.Curve{Unit: u + "/s³", Runs: j.runs(func(z int, t float64) float64 { return j.cam.LiftIn(z, t).J * w * w * w }), Limits: both(l.Jerk)},
-		PressureAngle: svg.Curve{Unit: "deg", Runs: j.runs(func(z int, t float64) float64 { return j.cam.PressureAngleIn(z, t).Deg() }),
-			Limits: []svg.Limit{{Value: l.PressureAngle}}},
+		Head:          head,
+		Lift:          j.curve(u, nil, func(z int, t float64) float64 { return j.cam.LiftIn(z, t).S }),
+		Velocity:      j.curve(u+"/s", both(l.Velocity), func(z int, t float64) float64 { return j.cam.LiftIn(z, t).V * w }),
+		Acceleration:  j.curve(u+"/s²", both(l.Acceleration), func(z int, t float64) float64 { return j.cam.LiftIn(z, t).A * w * w }),
+		Jerk:          j.curve(u+"/s³", both(l.Jerk), func(z int, t float64) float64 { return j.cam.LiftIn(z, t).J * w * w * w }),
+		PressureAngle: j.curve("deg", []svg.Limit{{Value: l.PressureAngle}}, func(z int, t float64) float64 { return j.cam.PressureAngleIn(z, t).Deg() }),
 		Radius: svg.Curve{Unit: u, Runs: j.runs(func(z int, t float64) float64 {
 			f := contour.At(z, t)
 			return j.convex(f) * math.Abs(f.K)
 		})},
 		Events: j.events(),
 	}
+	for _, x := range j.cam.Cycle().Junctions() {
+		step := func(to *[]svg.Step, pair [2]float64, scale float64) {
+			if pair[0] != pair[1] {
+				*to = append(*to, svg.Step{CamAngle: plane.Wrap360(x.At), Before: pair[0] * scale, After: pair[1] * scale})
+			}
+		}
+		step(&c.Acceleration.Steps, x.Acceleration, w*w)
+		step(&c.Jerk.Steps, x.Jerk, w*w*w)
+	}
+	c.Lift.Marks, c.Velocity.Marks, c.Acceleration.Marks = j.knowns()
 	if r := l.PressureAngleReturn; r != nil {
 		c.PressureAngle.Limits = append(c.PressureAngle.Limits, svg.Limit{Value: -*r})
 	}

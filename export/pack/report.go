@@ -1,6 +1,7 @@
 package pack
 
 import (
+	"cmp"
 	"crypto/sha256"
 	"encoding/hex"
 	"fmt"
@@ -151,7 +152,20 @@ func (j *job) contourFacts() sheet.Contour {
 // motionFacts: the jerk is that inside the zones; jumps of the acceleration are findings.
 func (j *job) motionFacts() sheet.Motion {
 	p, w := j.cam.Cycle().Peaks(), j.cam.Omega()
-	return sheet.Motion{PeakVelocity: p.Velocity.Value * w, PeakAcceleration: p.Acceleration.Value * w * w, PeakJerk: p.Jerk.Value * w * w * w}
+	m := sheet.Motion{PeakVelocity: p.Velocity.Value * w, PeakAcceleration: p.Acceleration.Value * w * w, PeakJerk: p.Jerk.Value * w * w * w, Jumps: []sheet.Jump{}}
+	for _, x := range j.cam.Cycle().Junctions() {
+		if a, k := x.AccelerationStep(), x.Jerk[1]-x.Jerk[0]; a != 0 || k != 0 {
+			m.Jumps = append(m.Jumps, sheet.Jump{CamAngle: plane.Wrap360(x.At), Acceleration: a * w * w, Jerk: k * w * w * w})
+		}
+	}
+	slices.SortStableFunc(m.Jumps, func(a, b sheet.Jump) int { return cmp.Compare(a.CamAngle, b.CamAngle) })
+	if c := j.cam.Completion(); c != nil {
+		m.Completion = &sheet.Completion{Minimized: "acceleration", Reached: c.Reached, Least: c.Least, JerkLimit: sheet.Maybe(c.JerkLimit), LeastJerk: c.LeastJerk}
+		if c.Jerk {
+			m.Completion.Minimized = "jerk"
+		}
+	}
+	return m
 }
 
 func (j *job) budgetFacts() sheet.Budget {

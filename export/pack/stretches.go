@@ -46,3 +46,26 @@ func (j *job) stretch(z motion.Zone) string {
 	}
 	return "completed"
 }
+
+// knowns are what is known of the motion, for its chart: facts and windows, at the
+// camshaft's speed.
+func (j *job) knowns() (lift, velocity, acceleration []svg.Mark) {
+	w := j.spec.Camshaft.Speed * 6 // degrees a second
+	for _, f := range j.spec.Motion.Points {
+		kind := svg.MarkHeld
+		if f.Point {
+			kind = svg.MarkFact
+		}
+		add := func(to *[]svg.Mark, kind svg.MarkKind, x *float64, scale float64) {
+			if x != nil {
+				*to = append(*to, svg.Mark{Kind: kind, From: f.From, To: f.To, Value: *x * scale})
+			}
+		}
+		add(&lift, kind, f.Lift, 1)
+		add(&velocity, kind, f.Velocity, w)
+		add(&acceleration, kind, f.Acceleration, w*w)
+		add(&lift, svg.MarkAbove, f.Above, 1)
+		add(&lift, svg.MarkBelow, f.Below, 1)
+	}
+	return lift, velocity, acceleration
+}

@@ -97,6 +97,25 @@ type Motion struct {
 	PeakVelocity     float64 `json:"peak_velocity"`
 	PeakAcceleration float64 `json:"peak_acceleration"`
 	PeakJerk         float64 `json:"peak_jerk"`
+
+	Jumps      []Jump      `json:"jumps"`                // where acceleration or jerk jump, in order of cam angle
+	Completion *Completion `json:"completion,omitempty"` // of a motion completed from facts
+}
+
+// Jump is a place where the motion is not smooth: what acceleration and jerk step by.
+type Jump struct {
+	CamAngle     float64 `json:"cam_angle"`    // degrees
+	Acceleration float64 `json:"acceleration"` // length/s², 0 where it is continuous
+	Jerk         float64 `json:"jerk"`         // length/s³
+}
+
+// Completion says how near to the optimum a motion is that was completed from facts.
+type Completion struct {
+	Minimized string   `json:"minimized"`  // "acceleration" or "jerk": the peak that was made least
+	Reached   float64  `json:"reached"`    // length/s² or length/s³
+	Least     float64  `json:"least"`      // proven: no motion that meets the facts has a smaller one
+	JerkLimit *float64 `json:"jerk_limit"` // length/s³; nil when the jerk was minimized
+	LeastJerk float64  `json:"least_jerk"` // length/s³, proven
 }
 
 // Deviation is the certified deviation of a written path.

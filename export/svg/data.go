@@ -103,7 +103,12 @@ type Curve struct {
 	Unit   string   // printed on the axis: "mm", "mm/s", "deg"
 	Limits []Limit  // in Unit
 	Peaks  []Sample // labeled places, in Unit; nil labels the greatest and the least sample
+	Steps  []Step   // jumps, labeled with their size as far as there is room, the largest first
+	Marks  []Mark   // what is known, in Unit; table points in order of cam angle
 }
+
+// Step is a jump of a curve at a cam angle, degrees.
+type Step struct{ CamAngle, Before, After float64 }
 
 // MotionChart is the six panels over cam angle 0 to 360.
 type MotionChart struct {

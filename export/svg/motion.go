@@ -1,6 +1,7 @@
 package svg
 
 import (
+	"cmp"
 	"fmt"
 	"math"
 	"slices"
@@ -90,6 +91,14 @@ func (m MotionChart) panels() ([]panel, error) {
 		if err := checkRuns("motion chart, peaks of "+n.name, []Run{n.c.Peaks}); err != nil && len(n.c.Peaks) > 0 {
 			return nil, err
 		}
+		for _, t := range n.c.Steps {
+			if !finite(t.CamAngle, t.Before, t.After) {
+				return nil, fmt.Errorf("svg: motion chart, %s: a step from %v to %v at cam angle %v; all must be finite", n.name, t.Before, t.After, t.CamAngle)
+			}
+		}
+		if err := checkMarks("motion chart, "+n.name, n.c.Marks); err != nil {
+			return nil, err
+		}
 		for _, l := range n.c.Limits {
 			if !finite(l.Value, l.From, l.To) {
 				return nil, fmt.Errorf("svg: motion chart, %s: a limit is %v from %v to %v; all must be finite", n.name, l.Value, l.From, l.To)
@@ -114,6 +123,9 @@ func plain(name string, c Curve) panel {
 		if math.Abs(l.Value) <= farOff*size {
 			lo, hi = math.Min(lo, l.Value), math.Max(hi, l.Value)
 		}
+	}
+	for _, m := range c.Marks { // windows and facts stay on the chart
+		lo, hi = math.Min(lo, m.Value), math.Max(hi, m.Value)
 	}
 	if c.Peaks == nil {
 		if least.Value < 0 {
@@ -233,16 +245,34 @@ func (p panel) draw(c *canvas, b box, events []Event, angles bool) {
 	x := b.x0 + widthOf(title, titleSize, true) + 2
 	a.frame(events, angles)
 	l := newLayout(b.grown(-0.6))
+	a.under(p.curve.Marks)
 	off := p.limits(a, l)
-	if note := joinNotes(p.note, off); note != "" {
+	if note := joinNotes(joinNotes(p.note, legend(p.curve.Marks)), off); note != "" {
 		text, size := fitted(note, b.x1-x, axisSize, 1.6, false)
 		c.text(pt{x, b.y0 - 1.6}, text, font{size: size, color: gray})
 	}
 	a.series(p.curve.Runs, pen{width: 0.45, color: blue}, l)
+	a.over(p.curve.Marks, l)
 	for _, s := range p.curve.Peaks {
 		a.peak(s, l)
 	}
 	p.limitTexts(a, l)
+	p.steps(a, l)
+}
+
+// steps labels jumps with their size and angle where there is room, the largest first.
+func (p panel) steps(a axes, l *layout) {
+	steps := slices.Clone(p.curve.Steps)
+	size := func(s Step) float64 { return math.Abs(s.After - s.Before) }
+	slices.SortStableFunc(steps, func(s, t Step) int { return cmp.Compare(size(t), size(s)) })
+	for _, s := range steps {
+		mid := math.Min(math.Max((s.Before+s.After)/2, a.lo), a.hi)
+		text := "steps by " + figures((s.After-s.Before)/a.unit) + " at " + num(s.CamAngle, 2) + "°"
+		w := wish{at: pt{a.x(s.CamAngle), a.y(mid)}, away: 0, w: widthOf(text, axisSize, false), h: axisSize, near: 0.8, far: 12, direct: true}
+		if sp, ok := l.place(w); ok {
+			a.c.text(pt{sp.box.x0, sp.box.y1 - axisSize*0.2}, text, font{size: axisSize, color: gray})
+		}
+	}
 }
 
 func joinNotes(a, b string) string {

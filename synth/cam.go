@@ -16,13 +16,11 @@ import (
 
 // Cam is a plate cam with its follower, complete and not changed after Build.
 type Cam struct {
+	completed
 	spec     *spec.Spec
-	cycle    *motion.Cycle
 	zones    []motion.Zone
 	lift     lift
 	follower follower.TranslatingRoller
-
-	completion *Completion // nil when nothing was left to complete
 }
 
 // lift is the completed motion as series in the cam angle in degrees, by zone.
@@ -46,6 +44,9 @@ func Vocabulary() spec.Vocabulary {
 		Cams:      []string{"plate"},
 		Processes: []string{"mill", "wire"},
 		ShareLaws: []string{"modified-constant-velocity"},
+
+		SymmetricLaws: motion.SymmetricNames(),
+		HalfLaws:      halfLaws(),
 		EndSpeeds: func(l spec.Law) (start, end float64) {
 			law, err := lawOf(l)
 			if err != nil {
@@ -54,13 +55,6 @@ func Vocabulary() spec.Vocabulary {
 			return law.EndSpeeds()
 		},
 	}
-}
-
-func lawOf(l spec.Law) (motion.Law, error) {
-	if l.Name == "trigonometric" {
-		return motion.Trigonometric(l.Sine, l.Constant, l.Cosine)
-	}
-	return motion.Named(l.Name, l.ConstantShare)
 }
 
 func kindOf(k spec.EventKind) motion.Kind {
@@ -76,7 +70,7 @@ func kindOf(k spec.EventKind) motion.Kind {
 // Build completes the cam of a spec. It fails only where the spec contradicts
 // itself in a way its reader cannot see.
 func Build(s *spec.Spec) (*Cam, error) {
-	cycle, completion, err := complete(s)
+	m, err := complete(s)
 	if err != nil {
 		return nil, err
 	}
@@ -85,8 +79,8 @@ func Build(s *spec.Spec) (*Cam, error) {
 		return nil, fmt.Errorf("%s:%d:%d: follower.offset %g reaches past the prime circle of radius %g; make it smaller",
 			s.File, s.Follower.Place.Line, s.Follower.Place.Column, s.Follower.Offset, s.Cam.BaseRadius+s.Follower.RollerDiameter/2)
 	}
-	zones := cycle.Zones()
-	return &Cam{spec: s, cycle: cycle, zones: zones, lift: zoneLift(zones), follower: f, completion: completion}, nil
+	zones := m.cycle.Zones()
+	return &Cam{spec: s, completed: m, zones: zones, lift: zoneLift(zones), follower: f}, nil
 }
 
 // Cycle returns the completed motion.

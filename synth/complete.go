@@ -8,40 +8,30 @@ import (
 	"strings"
 
 	"lobewright/synth/gate"
+	"lobewright/synth/measured"
 	"lobewright/synth/motion"
 	"lobewright/synth/partial"
 	"lobewright/synth/spec"
 )
 
-// complete makes the motion of a spec, in whichever of its forms it is given.
-func complete(s *spec.Spec) (*motion.Cycle, *Completion, error) {
+// completed is a motion made from a spec, in whichever of its forms it is given, and what
+// is to be said of the making.
+type completed struct {
+	cycle      *motion.Cycle
+	completion *Completion      // of facts
+	rows       []measured.Row   // of a table
+	smoothed   *measured.Report // of a table
+}
+
+func complete(s *spec.Spec) (completed, error) {
 	switch {
 	case len(s.Motion.Points) > 0:
 		return fromPoints(s)
-	default:
-		cycle, err := fromEvents(s)
-		return cycle, nil, err
+	case s.Motion.Table != nil:
+		return fromTable(s)
 	}
-}
-
-func fromEvents(s *spec.Spec) (*motion.Cycle, error) {
-	events := make([]motion.Event, len(s.Motion.Events))
-	for i, e := range s.Motion.Events {
-		events[i] = motion.Event{Kind: kindOf(e.Kind), Lift: e.Lift, Over: e.Over}
-		if e.Kind == spec.Dwell {
-			continue
-		}
-		law, err := lawOf(e.Law)
-		if err != nil {
-			return nil, fmt.Errorf("%s:%d:%d: %w", s.File, e.Law.Place.Line, e.Law.Place.Column, err)
-		}
-		events[i].Law = law
-	}
-	cycle, err := motion.Join(s.Motion.StartAt, s.Motion.StartLift, events)
-	if err != nil {
-		return nil, fmt.Errorf("%s:%d:%d: %w", s.File, s.Motion.Place.Line, s.Motion.Place.Column, err)
-	}
-	return cycle, nil
+	cycle, err := fromEvents(s)
+	return completed{cycle: cycle}, err
 }
 
 // Completion tells how near to the optimum a motion is that was completed from facts.
@@ -66,28 +56,28 @@ func (c Completion) Share() float64 {
 // complete.
 func (c *Cam) Completion() *Completion { return c.completion }
 
-func fromPoints(s *spec.Spec) (*motion.Cycle, *Completion, error) {
+func fromPoints(s *spec.Spec) (completed, error) {
 	facts := make([]partial.Fact, len(s.Motion.Points))
 	for i, f := range s.Motion.Points {
 		facts[i] = partial.Fact{From: f.From, To: f.To, Lift: f.Lift, Velocity: f.Velocity, Acceleration: f.Acceleration, Above: f.Above, Below: f.Below, ID: i}
 	}
 	if conflict := partial.Conflict(facts); conflict != nil {
-		return nil, nil, conflictFault(s, conflict)
+		return completed{}, conflictFault(s, conflict)
 	}
 	m := s.Motion
 	r, err := partial.Solve(partial.Problem{Facts: facts, Jerk: m.LeastJerk, JerkRatio: m.JerkRatio})
 	if errors.Is(err, partial.ErrTooHard) {
 		a, b := closest(m.Points)
-		return nil, nil, spec.Faults{{File: s.File, Line: a.Place.Line, Column: a.Place.Column, Path: "motion.points",
+		return completed{}, spec.Faults{{File: s.File, Line: a.Place.Line, Column: a.Place.Column, Path: "motion.points",
 			Found:   fmt.Sprintf("facts too hard to meet (the closest two are at cam angles %.6g and %.6g)", a.From, b.From),
 			Allowed: "facts that a follower could be carried through", Advice: "leave more degrees between them, or take one out"}}
 	}
 	if err != nil {
-		return nil, nil, fmt.Errorf("%s:%d:%d: motion.points: %w", s.File, m.Place.Line, m.Place.Column, err)
+		return completed{}, fmt.Errorf("%s:%d:%d: motion.points: %w", s.File, m.Place.Line, m.Place.Column, err)
 	}
 	cycle, err := motion.Of(r.Zones)
 	if err != nil {
-		return nil, nil, fmt.Errorf("%s:%d:%d: motion.points: %w", s.File, m.Place.Line, m.Place.Column, err)
+		return completed{}, fmt.Errorf("%s:%d:%d: motion.points: %w", s.File, m.Place.Line, m.Place.Column, err)
 	}
 	w := s.Camshaft.Speed * 6 // degrees a second
 	c := &Completion{Jerk: m.LeastJerk, Reached: r.Acceleration * w * w, Least: r.LeastAcceleration * w * w,
@@ -95,7 +85,7 @@ func fromPoints(s *spec.Spec) (*motion.Cycle, *Completion, error) {
 	if m.LeastJerk {
 		c.Reached, c.Least = r.Jerk*w*w*w, c.LeastJerk
 	}
-	return cycle, c, nil
+	return completed{cycle: cycle, completion: c}, nil
 }
 
 // closest returns the two neighbors in cam angle with the least room between them.

@@ -29,6 +29,13 @@ func (c *Curve) largest(use func(piece int) bool, f func(piece int, t float64) f
 	return largest(c.pieces, use, f)
 }
 
+// samples is how many steps a piece is looked at in: a narrow one, of which a smoothed
+// table has many, needs fewer.
+func samples(p plane.Piece) int {
+	const fullWidth, least = 40.0, 12
+	return max(least, min(samplesPerPiece, int(samplesPerPiece*(p.To-p.From)/fullWidth)))
+}
+
 func largest(pieces []plane.Piece, use func(piece int) bool, f func(piece int, t float64) float64) place {
 	best := place{value: math.Inf(-1)}
 	for i, p := range pieces {
@@ -36,7 +43,7 @@ func largest(pieces []plane.Piece, use func(piece int) bool, f func(piece int, t
 			continue
 		}
 		at := func(t float64) float64 { return f(i, t) }
-		if b := largestOn(p.From, p.To, samplesPerPiece, at); b.value > above(best.value) {
+		if b := largestOn(p.From, p.To, samples(p), at); b.value > above(best.value) {
 			best = place{b.value, i, b.t}
 		}
 	}

@@ -42,6 +42,7 @@ func (c *Cam) Findings() []gate.Finding {
 	if x := c.completionFinding(); x != nil {
 		f = append(f, *x)
 	}
+	f = append(f, c.tableFindings()...)
 	if x := c.harmfulOffset(); x != nil {
 		f = append(f, *x)
 	}

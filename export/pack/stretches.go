@@ -1,7 +1,9 @@
 package pack
 
 import (
+	"cmp"
 	"fmt"
+	"slices"
 
 	"lobewright/export/svg"
 	"lobewright/synth/motion"
@@ -47,7 +49,7 @@ func (j *job) stretch(z motion.Zone) string {
 	return "completed"
 }
 
-// knowns are what is known of the motion, for its chart: facts and windows, at the
+// knowns are what is known of the motion, for its chart: facts, windows and table points, at the
 // camshaft's speed.
 func (j *job) knowns() (lift, velocity, acceleration []svg.Mark) {
 	w := j.spec.Camshaft.Speed * 6 // degrees a second
@@ -67,5 +69,11 @@ func (j *job) knowns() (lift, velocity, acceleration []svg.Mark) {
 		add(&lift, svg.MarkAbove, f.Above, 1)
 		add(&lift, svg.MarkBelow, f.Below, 1)
 	}
+	rows, _ := j.cam.Table()
+	for _, r := range rows {
+		at := plane.Wrap360(r.Angle)
+		lift = append(lift, svg.Mark{Kind: svg.MarkSample, From: at, To: at, Value: r.Lift})
+	}
+	slices.SortStableFunc(lift, func(a, b svg.Mark) int { return cmp.Compare(a.From, b.From) })
 	return lift, velocity, acceleration
 }

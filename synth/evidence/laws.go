@@ -3,6 +3,8 @@ package evidence
 import (
 	"fmt"
 	"math"
+
+	"lobewright/synth/motion"
 )
 
 // Factors of a law in the order velocity, acceleration, jerk, torque; "" where the
@@ -77,18 +79,77 @@ func printed(laws Laws) ([]Row, error) {
 	if err != nil {
 		return nil, err
 	}
+	parabola, err = parabola.Skewed(40.0 / 160)
+	if err != nil {
+		return nil, err
+	}
+	const lift, over = 1.25, 160 * math.Pi / 180
 	w := 1200 * math.Pi / 30
-	_, _, up, _ := parabola.At(0.25)
-	for _, half := range []struct {
-		what      string
-		h, deg    float64
-		published string
-		sign      float64
-	}{{"p. 227: acceleration of the first part, 10³ in/s²", 5.0 / 8, 80, "20.2", 1}, {"p. 227: acceleration of the second part, 10³ in/s²", 15.0 / 8, 240, "-6.750", -1}} {
-		beta := half.deg * math.Pi / 180
-		rows = append(rows, Row{source, Seen, half.what, half.published, half.sign * up * half.h * w * w / (beta * beta) / 1000})
+	for _, part := range []struct {
+		what, published string
+		u               float64
+	}{{"p. 227: acceleration of the first part, 10³ in/s²", "20.2", 0.1}, {"p. 227: acceleration of the second part, 10³ in/s²", "-6.750", 0.5}} {
+		_, _, a, _ := parabola.At(part.u)
+		rows = append(rows, Row{source, Seen, part.what, part.published, a * lift * w * w / (over * over) / 1000})
 	}
 	return rows, nil
+}
+
+// skewed are laws whose inflection is not in their middle, and laws that are joined at
+// speed.
+func skewed(laws Laws) ([]Row, error) {
+	const source = "Skewed laws, p. 71 (3.11-3.13) of Rothbart 2004: a (1+p)/2p, p = b1/b2"
+	var rows []Row
+	for _, c := range []struct {
+		law, published string
+		parts          float64
+	}{
+		{"parabolic", "6.00000000000", 3},
+		{"modified-trapezoidal", "7.33218564422", 3},
+		{"modified-sine", "8.29193560582", 3},
+		{"cycloidal", "9.42477796077", 3},
+		{"polynomial-3-4-5", "8.66025403784", 3},
+		{"parabolic", "8.00000000000", 4},
+		{"modified-trapezoidal", "9.77624752563", 4},
+		{"modified-sine", "11.0559141411", 4},
+	} {
+		law, err := laws(c.law)
+		if err != nil {
+			return nil, err
+		}
+		skew, err := law.Skewed(1 / c.parts)
+		if err != nil {
+			return nil, err
+		}
+		rows = append(rows, Row{source, Derived, fmt.Sprintf("%s, inflection 1/%g: peak acceleration factor", c.law, c.parts), c.published, skew.Peaks().Acceleration})
+	}
+	return rows, nil
+}
+
+// joined are laws between neighbors at speed.
+func joined(Laws) ([]Row, error) {
+	const source = "H. A. Rothbart (ed.), Cam Design Handbook (2004), p. 85"
+	c1, err := motion.FromRest("cycloidal")
+	if err != nil {
+		return nil, err
+	}
+	h2, err := motion.ToRest("simple-harmonic")
+	if err != nil {
+		return nil, err
+	}
+	quartic, err := motion.Polynomial(0, 2)
+	if err != nil {
+		return nil, err
+	}
+	_, up := c1.EndSpeeds()
+	down, _ := h2.EndSpeeds()
+	s, _, _, _ := quartic.At(0.25)
+	return []Row{
+		{source, Seen, "half cycloid (C-1): velocity at its end, L/B", "2", up},
+		{source, Derived, "C-1 into H-2 over equal angles, 2 h1/b1 = pi h2/2 b2: share of the first in the lift", "0.4399008464884", down / (up + down)},
+		{"Quintic Hermite interpolation", Derived, "dwell to velocity 2 L/B, 2u³ - u⁴: lift at a quarter", "0.02734375", s},
+		{"Quintic Hermite interpolation", Derived, "dwell to velocity 2 L/B: peak acceleration factor", "3.0000000000", quartic.Peaks().Acceleration},
+	}, nil
 }
 
 // tables are tabulated laws at n/120 of the stroke, in the normalization of Rothbart

@@ -88,6 +88,10 @@ func Join(startAt, startLift float64, events []Event) (*Cycle, error) {
 	angles := boundaries(startAt, events)
 	for i, e := range events {
 		c.add(e.zones(i, angles[i], angles[i+1], levels[i], levels[i+1]))
+		if e.Kind != Dwell && (e.Law.below > 0 || e.Law.above > 0) {
+			low, h := math.Min(levels[i], levels[i+1]), math.Abs(levels[i+1]-levels[i])
+			c.min, c.max = math.Min(c.min, low-h*e.Law.below), math.Max(c.max, low+h+h*e.Law.above)
+		}
 	}
 	c.wrap()
 	return c, nil
@@ -242,10 +246,3 @@ func perRad(f taylor.F, k int) float64 { return f.Deriv(k) * degreesPerRad(k) }
 
 // degreesPerRad returns (180/π)^k.
 func degreesPerRad(k int) float64 { return math.Pow(180/math.Pi, float64(k)) }
-
-// MaxLift returns the largest lift of the cycle, length; exact, because every
-// law rises without turning back.
-func (c *Cycle) MaxLift() float64 { return c.max }
-
-// MinLift returns the smallest lift of the cycle, length.
-func (c *Cycle) MinLift() float64 { return c.min }

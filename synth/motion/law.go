@@ -9,10 +9,14 @@ import (
 )
 
 // Law is a motion law S(u) that rises from 0 at u = 0 to 1 at u = 1, u being the
-// share of the event's angle. The zero Law is no law; use Named or Trigonometric.
+// share of the event's angle. Only a Polynomial may turn back on its way. The zero Law is
+// no law; use Named, Trigonometric, FromRest, ToRest or Polynomial.
 type Law struct {
-	name  string
-	zones []Zone
+	name         string
+	zones        []Zone
+	symmetric    bool    // Skewed takes it
+	handsOver    bool    // made to stand beside neighbors that hold its end velocities
+	below, above float64 // how far S goes below 0 and above 1
 }
 
 // DefaultConstantShare is the share of constant velocity that
@@ -34,31 +38,35 @@ func Names() []string {
 func Named(name string, constantShare float64) (Law, error) {
 	switch name {
 	case "constant-velocity":
-		return Law{name, constantVelocity()}, nil
+		return Law{name: name, zones: constantVelocity()}, nil
 	case "parabolic":
-		return Law{name, parabolic()}, nil
+		return symmetric(name, parabolic()), nil
 	case "simple-harmonic":
-		return Law{name, simpleHarmonic()}, nil
+		return symmetric(name, simpleHarmonic()), nil
 	case "double-harmonic":
-		return Law{name, doubleHarmonic()}, nil
+		return Law{name: name, zones: doubleHarmonic()}, nil
 	case "cycloidal":
-		return Law{name, cycloidal()}, nil
+		return symmetric(name, cycloidal()), nil
 	case "modified-trapezoidal":
-		return Law{name, modifiedTrapezoidal()}, nil
+		return symmetric(name, modifiedTrapezoidal()), nil
 	case "modified-sine":
-		return Law{name, modifiedSine()}, nil
+		return symmetric(name, modifiedSine()), nil
 	case "polynomial-3-4-5":
-		return Law{name, polynomial345()}, nil
+		return symmetric(name, polynomial345()), nil
 	case "polynomial-4-5-6-7":
-		return Law{name, polynomial4567()}, nil
+		return symmetric(name, polynomial4567()), nil
 	case "modified-constant-velocity":
 		if !(constantShare >= 0 && constantShare < 1) {
 			return Law{}, fmt.Errorf("law modified-constant-velocity: constant_share is %g; it must be at least 0 and below 1", constantShare)
 		}
-		return Law{name, modifiedConstantVelocity(constantShare)}, nil
+		return symmetric(name, modifiedConstantVelocity(constantShare)), nil
 	}
 	return Law{}, fmt.Errorf("law %q is not known; the laws are %s, and the trigonometric family {sine, constant, cosine}",
 		name, strings.Join(Names(), ", "))
+}
+
+func symmetric(name string, zones []Zone) Law {
+	return Law{name: name, zones: zones, symmetric: true}
 }
 
 // shareSum is how far the shares of the trigonometric family may sum from 1:
@@ -77,11 +85,11 @@ func Trigonometric(sine, constant, cosine float64) (Law, error) {
 	case !(math.Abs(sum-1) <= shareSum):
 		return Law{}, fmt.Errorf("law trigonometric: shares sine %g, constant %g, cosine %g sum to %.10g; they must sum to 1", sine, constant, cosine, sum)
 	}
-	return Law{"trigonometric", scca{b: sine / sum, c: constant / sum, d: cosine / sum}.zones()}, nil
+	return symmetric("trigonometric", scca{b: sine / sum, c: constant / sum, d: cosine / sum}.zones()), nil
 }
 
-// Name returns the law's name; "trigonometric" for the general family, "" for
-// the zero Law.
+// Name returns the law's name; "trigonometric" for the general family, "half " and a
+// name for a half law, "" for the zero Law.
 func (l Law) Name() string { return l.name }
 
 // Zones returns the law's zones on u in [0, 1], lift 0 to 1. The caller owns them.

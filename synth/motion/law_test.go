@@ -62,7 +62,11 @@ func TestPeakFactorsClosedForm(t *testing.T) {
 		near(t, c.name+" acceleration", p.Acceleration, c.a, 1e-12*c.a)
 		near(t, c.name+" jerk", p.Jerk, c.j, 1e-12*c.j)
 		near(t, c.name+" smooth jerk", p.SmoothJerk, c.smooth, 1e-12*math.Max(1, c.smooth))
-		near(t, c.name+" torque", p.Torque, c.m, 1e-10*c.m)
+		digits := 1e-12
+		if c.name == "double-harmonic" || c.name == "polynomial-3-4-5" || c.name == "polynomial-4-5-6-7" {
+			digits = 1e-11 // given to so many
+		}
+		near(t, c.name+" torque", p.Torque, c.m, digits*c.m)
 	}
 }
 
@@ -133,72 +137,6 @@ func TestFamilyPeaks(t *testing.T) {
 			got, _, _, _ := family.At(u)
 			want, _, _, _ := law.At(u)
 			near(t, name+" as a member of the family", got, want, 3e-16)
-		}
-	}
-}
-
-// S, V and A at n/120, the tabulation of H. A. Rothbart ed., Cam Design Handbook
-// (2004), appendix B; values by 30-digit arithmetic from the formulas.
-func TestTables(t *testing.T) {
-	for name, rows := range map[string][][4]float64{
-		"simple-harmonic": {{5, .004277569313095, .2050300632898, 4.892584283626}, {20, .06698729810778, .7853981633974, 4.273664068323}, {50, .3705904774487, 1.517272739891, 1.277220793315}},
-		"cycloidal":       {{5, .0004743362722763, .03407417371093, 1.626208021406}, {15, .01246046048036, .2928932188135, 4.442882938158}, {50, .3370891951207, 1.866025403784, 3.141592653590}},
-		"modified-trapezoidal": {{5, .0007304860653952, .05211404529374, 2.444061881407}, {10, .005608076087297, .1944922648242, 4.233239355439}, {15, .01766866086614, .3889845296483, 4.888123762813},
-			{30, .1044801939692, 1, 4.888123762813}, {40, .2047861792567, 1.407343646901, 4.888123762813}, {50, .3389414094206, 1.805507735176, 4.233239355439}},
-		"modified-sine": {{5, .0008261033897823, .05893553828317, 2.763978535272}, {15, .01998140871658, .4399008464884, 5.527957070544}, {20, .04309701578486, .669064787529, 5.443974981390},
-			{40, .2241692444608, 1.450851643416, 3.553302311825}, {50, .3555861751981, 1.680015584456, 1.890672669566}},
-	} {
-		l := named(t, name)
-		for _, r := range rows {
-			s, v, a, _ := l.At(r[0] / 120)
-			near(t, name+" S", s, r[1], 5e-14)
-			near(t, name+" V", v, r[2], 5e-13)
-			near(t, name+" A", a, r[3], 5e-12)
-			s, v, a, _ = l.At(1 - r[0]/120) // point symmetry
-			near(t, name+" S mirrored", s, 1-r[1], 5e-14)
-			near(t, name+" V mirrored", v, r[2], 5e-13)
-			near(t, name+" A mirrored", a, -r[3], 5e-12)
-		}
-	}
-	for name, want := range map[string]map[float64]float64{
-		"polynomial-3-4-5":           {.05: .001158125, .1: .00856, .2: .05792, .25: .103515625, .4: .31744},
-		"polynomial-4-5-6-7":         {.05: .000193578125, .1: .002728, .2: .033344, .25: .070556640625, .4: .289792},
-		"double-harmonic":            {.05: 3.7894239325333e-5, .125: .0014485813926751, .3: .042480249556895, .5: .25, .75: .72855339059327},
-		"modified-constant-velocity": {.05: .0038763587716561, .0625: .0072406813306170, .1: .024783959783821, .125: .042462074518041, .2: .11880880752012, .25: .18118545677432, .4: .37247418270973},
-	} {
-		for u, s := range want {
-			got, _, _, _ := named(t, name).At(u)
-			near(t, name+" S", got, s, 5e-15)
-		}
-	}
-}
-
-// The laws as their sources print them, against the zones, which are written
-// about other points.
-func TestSourceFormulas(t *testing.T) {
-	pi, pow := math.Pi, math.Pow
-	for name, s := range map[string]func(u float64) float64{
-		"simple-harmonic":    func(u float64) float64 { return (1 - math.Cos(pi*u)) / 2 },
-		"double-harmonic":    func(u float64) float64 { return (1-math.Cos(pi*u))/2 - (1-math.Cos(2*pi*u))/8 },
-		"cycloidal":          func(u float64) float64 { return u - math.Sin(2*pi*u)/(2*pi) },
-		"polynomial-3-4-5":   func(u float64) float64 { return 10*pow(u, 3) - 15*pow(u, 4) + 6*pow(u, 5) },
-		"polynomial-4-5-6-7": func(u float64) float64 { return 35*pow(u, 4) - 84*pow(u, 5) + 70*pow(u, 6) - 20*pow(u, 7) },
-		"modified-sine": func(u float64) float64 {
-			k := 1 / (4 + pi)
-			switch {
-			case u < 1./8:
-				return k * (pi*u - math.Sin(4*pi*u)/4)
-			case u < 7./8:
-				return k * (2 + pi*u - 9./4*math.Sin(4*pi*u/3+pi/3))
-			}
-			return k * (4 + pi*u - math.Sin(4*pi*u)/4)
-		},
-	} {
-		l := named(t, name)
-		for i := range 1001 {
-			u := float64(i) / 1000
-			got, _, _, _ := l.At(u)
-			near(t, name, got, s(u), 2e-14)
 		}
 	}
 }
@@ -281,13 +219,6 @@ func TestIntegrals(t *testing.T) {
 }
 
 func pow4(x float64) float64 { return x * x * x * x }
-
-// The largest acceleration of the double harmonic's rise, inside, by 40-digit arithmetic.
-func TestDoubleHarmonicInside(t *testing.T) {
-	_, _, a, j := named(t, "double-harmonic").At(0.4195693767)
-	near(t, "acceleration", a, 9*math.Pi*math.Pi/16, 1e-12)
-	near(t, "jerk there", j, 0, 1e-7)
-}
 
 func TestLawErrors(t *testing.T) {
 	for want, err := range map[string]error{

@@ -3,8 +3,6 @@ package motion
 import (
 	"fmt"
 	"math"
-
-	"lobewright/synth/taylor"
 )
 
 // Of returns the cycle of zones that were made elsewhere: from partial facts or from a
@@ -24,12 +22,13 @@ func Of(zones []Zone) (*Cycle, error) {
 		if !(z.From < z.To) || z.Span == 0 {
 			return nil, fmt.Errorf("zone %d covers %g to %g with a span of %g", i+1, z.From, z.To, z.Span)
 		}
+		z = z.scaled(1, 0) // a copy, with at least one coefficient
 		lo, hi := z.lifts()
 		if math.IsNaN(lo+hi) || math.IsInf(lo, 0) || math.IsInf(hi, 0) {
 			return nil, fmt.Errorf("zone %d is not finite", i+1)
 		}
 		c.min, c.max = math.Min(c.min, lo), math.Max(c.max, hi)
-		c.zones = append(c.zones, z.scaled(1, 0))
+		c.zones = append(c.zones, z)
 	}
 	first, last := zones[0].From, zones[len(zones)-1].To
 	if !(first >= 0 && first < 360) || math.Abs(last-first-360) > angleSlack {
@@ -37,19 +36,4 @@ func Of(zones []Zone) (*Cycle, error) {
 	}
 	c.zones[len(zones)-1].To = first + 360
 	return c, nil
-}
-
-// lifts returns the least and largest lift of a zone, exact to rounding.
-func (z Zone) lifts() (lo, hi float64) {
-	if z.Dwell {
-		return z.Poly[0], z.Poly[0]
-	}
-	over := Eval(z, taylor.IVar(taylor.Interval{Lo: z.From, Hi: z.To}, 0)).Range()
-	base := over.Mag()
-	if math.IsNaN(base) || math.IsInf(base, 0) {
-		return base, base
-	}
-	up, _ := extreme(z.scaled(1, base), height) // base keeps both above 0
-	down, _ := extreme(z.scaled(-1, base), height)
-	return base - down, up - base
 }

@@ -125,6 +125,7 @@ func bisect(z Zone, q quantity, lo, hi float64) float64 {
 // acceleration Acceleration*h/β², peak jerk Jerk*h/β³, and the product of velocity
 // and acceleration at most Torque*h²/β³. A step makes what it is the derivative of
 // infinite: a step of velocity Acceleration, Torque and Jerk, a step of acceleration Jerk.
+// A half law and a polynomial stand between neighbors that hold their end velocities.
 type Peaks struct {
 	Velocity, Acceleration, Jerk, Torque float64
 	SmoothJerk                           float64 // largest |jerk| inside the zones, finite
@@ -152,10 +153,14 @@ func (l Law) Peaks() Peaks {
 }
 
 // steps returns the largest steps of velocity and acceleration of the law between
-// two dwells.
+// its neighbors.
 func (l Law) steps() (v, a float64) {
-	before := Zone{From: -1, To: 0, Span: 1, Poly: []float64{0}}
-	for _, z := range append(l.Zones(), Zone{From: 1, To: 2, Span: 1, Poly: []float64{1}}) {
+	var start, end float64
+	if l.handsOver {
+		start, end = l.EndSpeeds()
+	}
+	before := Zone{From: -1, To: 0, Span: 1, Poly: []float64{0, start}}
+	for _, z := range append(l.Zones(), Zone{From: 1, To: 2, Origin: 1, Span: 1, Poly: []float64{1, end}}) {
 		j, _ := between(before, z)
 		v = math.Max(v, math.Abs(j.VelocityStep())/degreesPerRad(1))
 		a = math.Max(a, math.Abs(j.AccelerationStep())/degreesPerRad(2))

@@ -79,7 +79,10 @@ const Tolerance = 1e-9
 // acceptable is what is still taken when rounding keeps the method from Tolerance.
 const acceptable = 1e-6
 
-const mostSteps = 120
+const (
+	mostSteps = 120
+	stalled   = 20 // steps without progress that tell a program without a solution
+)
 
 // ErrNoSolution says that no point was found: the rows contradict each other, the
 // objective is unbounded, or the numbers are beyond the arithmetic.
@@ -102,7 +105,7 @@ func Solve(p Problem) (Solution, error) {
 			at = s.point()
 			at.Steps, at.Residual = step, worst
 		}
-		if worst <= Tolerance {
+		if worst <= Tolerance || step-at.Steps > stalled {
 			break
 		}
 		if !s.advance() {

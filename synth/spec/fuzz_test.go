@@ -75,7 +75,12 @@ func checkRead(t *testing.T, s *Spec) {
 		case Fall:
 			lift -= e.Lift
 		}
-		if !(e.Over > 0) || !(lift > -1e-5) {
+		for _, v := range []*float64{e.FromVelocity, e.ToVelocity} {
+			if v != nil && (e.Kind == Dwell || !(math.Abs(*v) <= math.MaxFloat64)) {
+				t.Errorf("event %+v, velocity %v", e, *v)
+			}
+		}
+		if !(e.Inflection >= 0 && e.Inflection < 1) || !(e.Over > 0) || !(lift > -1e-5) {
 			t.Errorf("event %+v, lift %v", e, lift)
 		}
 	}

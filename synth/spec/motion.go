@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 	"slices"
-	"strings"
 )
 
 // Rounding allowed in sums over a cycle: a thousand events, each rounded once
@@ -22,10 +21,11 @@ const degreesPerMillisecond = fullTurn / 60e3
 // finishMotion turns the events read into those of the spec and checks the cycle.
 func (r *reader) finishMotion(s *Spec) {
 	for i := range r.events {
-		r.checkShare(&r.events[i])
+		r.checkLaw(&r.events[i])
 	}
 	whole := len(r.events) > 0 && r.ok("motion.events")
 	r.finishAngles(s)
+	moving := whole && r.ok("camshaft.speed") && r.finishVelocities(s)
 	for _, d := range r.events {
 		s.Motion.Events = append(s.Motion.Events, d.Event)
 	}
@@ -33,20 +33,9 @@ func (r *reader) finishMotion(s *Spec) {
 	if whole && r.ok("motion.start_lift") {
 		r.checkLifts(s)
 	}
-	if whole && r.ok("camshaft.speed") && r.vocabulary.EndSpeeds != nil {
+	if moving && r.vocabulary.EndSpeeds != nil {
 		r.checkSpeeds(s)
 	}
-}
-
-func (r *reader) checkShare(d *draft) {
-	if slices.Contains(r.vocabulary.ShareLaws, d.Law.Name) {
-		return
-	}
-	if d.share && d.Law.Name != "" {
-		r.faultAt(d.where.path+".constant_share", Fault{Found: "constant_share with the law " + d.Law.Name,
-			Allowed: "constant_share only with " + strings.Join(r.vocabulary.ShareLaws, ", "), Advice: "take it out"})
-	}
-	d.Law.ConstantShare = 0
 }
 
 // finishAngles converts times, gives rest its angle and holds the sum to 360
@@ -128,47 +117,4 @@ func (r *reader) checkLifts(s *Spec) {
 				figure(tidy(up)), figure(tidy(down)), figure(tidy(math.Abs(open))), s.Units, word),
 			Allowed: "rises and falls of the same sum"})
 	}
-}
-
-// checkSpeeds finds jumps in velocity between neighbors, the last and the first
-// event included.
-func (r *reader) checkSpeeds(s *Spec) {
-	events := s.Motion.Events
-	perSecond := s.Camshaft.Speed * fullTurn / 60 // degrees a second
-	steepest := 0.0
-	for _, e := range events {
-		if e.Kind != Dwell {
-			steepest = max(steepest, e.Lift/e.Over)
-		}
-	}
-	at := s.Motion.StartAt
-	for i, e := range events {
-		_, before := r.endSpeeds(events[(i+len(events)-1)%len(events)])
-		after, _ := r.endSpeeds(e)
-		if !(math.Abs(after-before) <= steepest*roundShare) {
-			r.faultAt(fmt.Sprintf("motion.events[%d]", i+1), Fault{
-				Found: fmt.Sprintf("a jump in velocity from %s to %s %s/s where this %s begins, at cam angle %s",
-					speed(before*perSecond), speed(after*perSecond), s.Units.Short(), e.Kind, figure(tidy(math.Mod(at, fullTurn)))),
-				Allowed: "neighbors whose velocities meet",
-				Advice:  "laws that start and end at rest: " + strings.Join(r.vocabulary.restLaws(), ", ")})
-		}
-		at += e.Over
-	}
-}
-
-// speed prints a velocity with six significant digits.
-func speed(x float64) string { return fmt.Sprintf("%.6g", x+0) }
-
-// endSpeeds returns the velocity of an event at its two ends, lift per degree. A
-// fall is h S(1-u): the law's ends change places and the sign turns.
-func (r *reader) endSpeeds(e Event) (start, end float64) {
-	if e.Kind == Dwell {
-		return 0, 0
-	}
-	start, end = r.vocabulary.EndSpeeds(e.Law)
-	mean := e.Lift / e.Over
-	if e.Kind == Fall {
-		return -mean * end, -mean * start
-	}
-	return mean * start, mean * end
 }

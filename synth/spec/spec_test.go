@@ -2,6 +2,7 @@ package spec
 
 import (
 	"errors"
+	"math"
 	"os"
 	"path/filepath"
 	"strings"
@@ -15,10 +16,12 @@ func vocabulary() Vocabulary {
 	return Vocabulary{
 		Laws: []string{"constant-velocity", "simple-harmonic", "cycloidal", "modified-sine",
 			"polynomial-3-4-5", "modified-constant-velocity", "half-cycloid"},
-		ShareLaws: []string{"modified-constant-velocity"},
-		Followers: []string{"translating-roller"},
-		Cams:      []string{"plate"},
-		Processes: []string{"mill", "wire"},
+		ShareLaws:     []string{"modified-constant-velocity"},
+		SymmetricLaws: []string{"simple-harmonic", "cycloidal", "modified-sine", "polynomial-3-4-5", "modified-constant-velocity"},
+		HalfLaws:      []HalfLaw{{"simple-harmonic", math.Pi / 2}, {"cycloidal", 2}},
+		Followers:     []string{"translating-roller"},
+		Cams:          []string{"plate"},
+		Processes:     []string{"mill", "wire"},
 		EndSpeeds: func(l Law) (start, end float64) {
 			switch l.Name {
 			case "constant-velocity":

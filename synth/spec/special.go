@@ -85,6 +85,9 @@ type draft struct {
 	ms    float64 // the duration when Timed
 	where where
 	share bool // constant_share was given
+
+	inflection bool // inflection was given
+	from, to   stated
 }
 
 func overSpan() span { return span{noun: "an angle in degrees", lo: 0, hi: 360, above: true} }
@@ -103,14 +106,17 @@ func eventTable(v Vocabulary) table[draft] {
 		fresh: draft{Event: Event{Law: Law{ConstantShare: defaultConstantShare}}},
 		place: func(d *draft, p Place) { d.Place = p },
 		kind:  func(r *reader, w where) (string, bool) { return eventKind(r, w, verbs) },
-		after: func(_ *reader, w where, d *draft, _ bool) { d.where = w },
+		after: finishEvent,
 		fields: []field[draft]{
 			durationField("dwell", "how long the lift is held: degrees of cam angle, a time, or rest: what is left of 360, once", true).of(string(Dwell)).required(),
 			move(Rise, "by how much the lift grows, length"),
 			move(Fall, "by how much the lift falls, length; the law runs backwards in time"),
 			durationField("over", "how long it takes: degrees of cam angle or a time", false).of(string(Rise), string(Fall)).required(),
-			lawField(v).of(string(Rise), string(Fall)).required(),
+			lawField(v).of(string(Rise), string(Fall)),
 			shareField().of(string(Rise), string(Fall)),
+			inflectionField().of(string(Rise), string(Fall)),
+			velocityField(v, "from_velocity", "starts", "the event before", func(d *draft) *stated { return &d.from }).of(string(Rise), string(Fall)),
+			velocityField(v, "to_velocity", "ends", "the next event", func(d *draft) *stated { return &d.to }).of(string(Rise), string(Fall)),
 		}}
 }
 
@@ -204,11 +210,17 @@ func lawTable() table[Law] {
 	}}
 }
 
+const lawDoc = "the motion law: a name, or the shares of the angle of the general trigonometric family, which sum to 1; left out beside from_velocity or to_velocity it is polynomial"
+
+func lawAllowed(v Vocabulary) string {
+	return strings.Join(v.Laws, ", ") + ", " + Polynomial + ", or " + sharesForm + " with shares that sum to 1"
+}
+
 func lawField(v Vocabulary) field[draft] {
 	t := lawTable()
-	allowed := strings.Join(v.Laws, ", ") + ", or {sine: , constant: , cosine: } with shares that sum to 1"
-	return field[draft]{name: "law", doc: "the motion law: a name, or the shares of the angle of the general trigonometric family, which sum to 1", allowed: allowed,
-		schema: object{{"oneOf", []object{enum(v.Laws), t.schema()}}},
+	names := append(slices.Clone(v.Laws), Polynomial)
+	return field[draft]{name: "law", doc: lawDoc, allowed: lawAllowed(v),
+		schema: object{{"oneOf", []object{enum(names), t.schema()}}},
 		read: func(r *reader, w where, d *draft) {
 			d.Law.Place = w.place()
 			if w.val.Kind == yaml.MappingNode {
@@ -217,14 +229,14 @@ func lawField(v Vocabulary) field[draft] {
 				return
 			}
 			r.seen(w)
-			if w.val.Kind == yaml.ScalarNode && slices.Contains(v.Laws, w.val.Value) {
+			if w.val.Kind == yaml.ScalarNode && slices.Contains(names, w.val.Value) {
 				d.Law.Name = w.val.Value
 				return
 			}
 			near := ""
 			if w.val.Kind == yaml.ScalarNode {
-				near = nearest(w.val.Value, v.Laws)
+				near = nearest(w.val.Value, names)
 			}
-			r.fault(w.place(), Fault{Path: w.path, Found: describe(w.val), Allowed: allowed, Nearest: near})
+			r.fault(w.place(), Fault{Path: w.path, Found: describe(w.val), Allowed: lawAllowed(v), Nearest: near})
 		}}
 }

@@ -98,13 +98,21 @@ type Event struct {
 	Lift  float64 // length, positive for rise and fall; 0 for a dwell
 	Over  float64 // degrees of cam angle, above 0
 	Law   Law     // rise and fall
-	Timed bool    // Over was given as a time
+	Timed bool    // Over was given as a time, or a velocity other than 0 shapes it
 	Place Place
+
+	// Inflection is the share of Over, counted as the cam turns, where the acceleration
+	// changes sign: 0 < Inflection < 1, or 0 when not given, for the law's own.
+	Inflection float64
+	// FromVelocity and ToVelocity are the velocities where the event starts and ends,
+	// length/degree, positive when the lift grows; nil when not given: at rest. With
+	// one of them the law Polynomial meets it, and another law is run by half.
+	FromVelocity, ToVelocity *float64
 }
 
 // Law names a motion law with its parameters.
 type Law struct {
-	Name                   string  // a contract name, or "trigonometric" for the general family
+	Name                   string  // a contract name, Polynomial, or "trigonometric" for the general family
 	ConstantShare          float64 // modified-constant-velocity; default 0.5
 	Sine, Constant, Cosine float64 // trigonometric: shares of the angle, sum 1
 	Place                  Place

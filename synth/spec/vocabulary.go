@@ -5,6 +5,12 @@ package spec
 type Vocabulary struct {
 	Laws      []string // plain names of motion laws
 	ShareLaws []string // those of Laws that take constant_share
+
+	// SymmetricLaws are those of Laws that take inflection; Trigonometric does as well.
+	SymmetricLaws []string
+	// HalfLaws are those of Laws that can be run by half, between rest and speed.
+	HalfLaws []HalfLaw
+
 	Followers []string // available follower.kind
 	Cams      []string // available cam.kind
 	Processes []string // available operation processes: of "mill" and "wire"
@@ -14,6 +20,17 @@ type Vocabulary struct {
 	// constant velocity. When nil, jumps in velocity are not looked for.
 	EndSpeeds func(Law) (start, end float64)
 }
+
+// HalfLaw is a law that can be run by half: from rest to Speed, in units of lift over
+// angle, or back.
+type HalfLaw struct {
+	Name  string
+	Speed float64
+}
+
+// Polynomial is the Law.Name of the polynomial of least degree that has the event's
+// velocities at its ends, and no acceleration there.
+const Polynomial = "polynomial"
 
 // Trigonometric is the Law.Name of a law given by its shares {sine, constant, cosine}.
 const Trigonometric = "trigonometric"
@@ -34,6 +51,26 @@ func everyCam() []string { return []string{"plate", "groove", "barrel"} }
 func everyProcess() []string { return []string{"mill", "grind", "wire"} }
 
 func everyAxes() []string { return []string{"xy", "polar", "cylinder"} }
+
+// half returns the speed of the law's half, in units of lift over angle; false when it
+// cannot be run by half.
+func (v Vocabulary) half(law string) (speed float64, ok bool) {
+	for _, h := range v.HalfLaws {
+		if h.Name == law {
+			return h.Speed, true
+		}
+	}
+	return 0, false
+}
+
+// velocityLaws are the laws that take from_velocity and to_velocity.
+func (v Vocabulary) velocityLaws() []string {
+	laws := []string{Polynomial}
+	for _, h := range v.HalfLaws {
+		laws = append(laws, h.Name)
+	}
+	return laws
+}
 
 // restLaws are the plain laws that start and end at rest, for advice.
 func (v Vocabulary) restLaws() []string {

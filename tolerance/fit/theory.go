@@ -12,6 +12,13 @@ import (
 // is that of the linear course: about 1e-4 of a piece's share.
 const theorySamples = 300
 
+// A piece of less than 1/fullShare of the whole, of which a smoothed table has many,
+// takes as many fewer samples, but leastSamples.
+const (
+	fullShare    = 9
+	leastSamples = 12
+)
+
 // Theory returns the asymptotic count (as eps goes to 0) of the elements of the given
 // kind that keep the curve within ±eps:
 //
@@ -27,14 +34,18 @@ func Theory(c Curve, eps float64, kind chain.Kind) float64 {
 	if kind == chain.Arc {
 		power, unit = 1.0/3, arcConstant*eps
 	}
-	sum := 0.0
+	sum, whole := 0.0, 0.0
+	for _, p := range c.Pieces() {
+		whole += p.To - p.From
+	}
 	for i, p := range c.Pieces() {
 		if p.Circle != nil && kind == chain.Arc {
 			continue
 		}
 		var before plane.Frame
-		for j := 0; j < theorySamples; j++ {
-			f := c.At(i, at(p, j, theorySamples))
+		n := max(leastSamples, min(theorySamples, int(theorySamples*fullShare*(p.To-p.From)/whole)))
+		for j := 0; j < n; j++ {
+			f := c.At(i, at(p, j, n))
 			a, b := before.K, f.K
 			if kind == chain.Arc {
 				a, b = before.DK, f.DK

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"path/filepath"
 
 	"lobewright/synth/gate"
 	"lobewright/synth/measured"
@@ -21,7 +22,7 @@ func fromTable(s *spec.Spec) (completed, error) {
 	if len(faults) > 0 {
 		var out spec.Faults
 		for _, f := range faults {
-			out = append(out, spec.Fault{File: t.File, Line: f.Line, Column: f.Column, Found: f.Found, Allowed: f.Allowed, Advice: f.Advice})
+			out = append(out, spec.Fault{File: beside(s.File, t.File), Line: f.Line, Column: f.Column, Found: f.Found, Allowed: f.Allowed, Advice: f.Advice})
 		}
 		return completed{}, out
 	}
@@ -30,7 +31,7 @@ func fromTable(s *spec.Spec) (completed, error) {
 	var noisy measured.TooNoisy
 	switch {
 	case errors.As(err, &low):
-		return completed{}, spec.Faults{{File: t.File, Line: low.Row.Line, Column: 1, Found: fmt.Sprintf("the lift %g at cam angle %g", low.Row.Lift, low.Row.Angle),
+		return completed{}, spec.Faults{{File: beside(s.File, t.File), Line: low.Row.Line, Column: 1, Found: fmt.Sprintf("the lift %g at cam angle %g", low.Row.Lift, low.Row.Angle),
 			Allowed: "lifts of 0 or more, within the smoothing: lift 0 is the lowest of the cycle", Advice: "raise the whole table"}}
 	case errors.As(err, &noisy):
 		return completed{}, spec.Faults{{File: s.File, Line: t.Place.Line, Column: t.Place.Column, Path: "motion.table.smoothing",
@@ -44,6 +45,14 @@ func fromTable(s *spec.Spec) (completed, error) {
 		return completed{}, fmt.Errorf("%s:%d:%d: motion.table: %w", s.File, t.Place.Line, t.Place.Column, err)
 	}
 	return completed{cycle: cycle, rows: rows, smoothed: &curve.Report}, nil
+}
+
+// beside is the path of a file that a spec names from its own folder.
+func beside(spec, name string) string {
+	if filepath.IsAbs(name) {
+		return name
+	}
+	return filepath.Join(filepath.Dir(spec), filepath.FromSlash(name))
 }
 
 // tableFindings say what the smoothing did, and what is wrong with the table.

@@ -80,12 +80,15 @@ func readSpec(file string) (*spec.Spec, error) {
 	if err != nil {
 		return nil, err
 	}
-	return s.Load(data, func(name string) ([]byte, error) {
-		if !filepath.IsAbs(name) {
-			name = filepath.Join(filepath.Dir(file), filepath.FromSlash(name))
-		}
-		return readFile(name)
-	})
+	return s.Load(data, func(name string) ([]byte, error) { return readFile(beside(file, name)) })
+}
+
+// beside is the path of a file that a spec names from its own folder.
+func beside(spec, name string) string {
+	if filepath.IsAbs(name) {
+		return name
+	}
+	return filepath.Join(filepath.Dir(spec), filepath.FromSlash(name))
 }
 
 // readFile reads a file, and no more of it than one byte above the limit.

@@ -4,17 +4,19 @@ import (
 	"crypto/sha256"
 	"errors"
 	"fmt"
-	"os"
 	"time"
 
 	"github.com/urfave/cli/v2"
+
+	"lobewright/synth"
+	"lobewright/synth/spec"
 )
 
 // watchEvery is how often the specs are looked at.
 const watchEvery = 200 * time.Millisecond
 
-// watch does a job now and again whenever the bytes of a spec change, until the
-// context ends. A spec that is refused or wrong is waited on like any other.
+// watch does a job now and again whenever the bytes of a spec, or of a file it names,
+// change, until the context ends. A spec that is refused or wrong is waited on like any other.
 func watch(c *cli.Context, job func() error) error {
 	files := c.Args().Slice()
 	seen := ""
@@ -41,13 +43,21 @@ func watch(c *cli.Context, job func() error) error {
 	}
 }
 
-// fingerprint changes when the bytes of a file change, or when it comes or goes.
+// fingerprint changes when the bytes of a spec or of a file it names change, or when
+// one comes or goes.
 func fingerprint(files []string) string {
 	h := sha256.New()
-	for _, f := range files {
-		data, err := os.ReadFile(f)
+	add := func(data []byte, err error) {
 		fmt.Fprintf(h, "%d %v\n", len(data), err != nil)
 		h.Write(data)
+	}
+	for _, f := range files {
+		data, err := readFile(f)
+		add(data, err)
+		s, err := spec.Read(f, data, synth.Vocabulary())
+		if err == nil && s.Motion.Table != nil {
+			add(readFile(beside(f, s.Motion.Table.File)))
+		}
 	}
 	return string(h.Sum(nil))
 }

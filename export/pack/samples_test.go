@@ -45,6 +45,10 @@ func readSample(t testing.TB, file string) *spec.Spec {
 	if err != nil {
 		t.Fatal(err)
 	}
+	s, err = s.Load(data, func(name string) ([]byte, error) { return os.ReadFile(filepath.Join(filepath.Dir(file), name)) })
+	if err != nil {
+		t.Fatal(err)
+	}
 	return s
 }
 

@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"lobewright/synth/gate"
+	"lobewright/synth/spec"
 )
 
 // Peaks are the largest absolute values of the motion's derivatives, length a
@@ -39,6 +40,7 @@ func (c *Cam) Findings() []gate.Finding {
 				Text: fmt.Sprintf("the acceleration jumps by %.4g %s/s² (from %.4g to %.4g)", step*w*w, c.unit(), j.Acceleration[0]*w*w, j.Acceleration[1]*w*w)})
 		}
 	}
+	f = append(f, c.overshoots()...)
 	if x := c.completionFinding(); x != nil {
 		f = append(f, *x)
 	}
@@ -60,11 +62,30 @@ func (c *Cam) Findings() []gate.Finding {
 	return f
 }
 
+// overshoots finds polynomials that go past the lifts their events name.
+func (c *Cam) overshoots() []gate.Finding {
+	var f []gate.Finding
+	for i, z := range c.zones {
+		if z.Event < 0 || c.spec.Motion.Events[z.Event].Law.Name != spec.Polynomial {
+			continue
+		}
+		from, to := c.LiftIn(i, z.From).S, c.LiftIn(i, z.To).S
+		lo, hi := z.Lifts()
+		for _, past := range []float64{hi - math.Max(from, to), math.Min(from, to) - lo} {
+			if past > 1e-9*(hi-lo) {
+				f = append(f, gate.Finding{ID: "overshoot", CamAngle: camAngle(z.From),
+					Text: fmt.Sprintf("this %s goes %.4g %s past its own end, because of the velocities at its ends", c.spec.Motion.Events[z.Event].Kind, past, c.unit())})
+			}
+		}
+	}
+	return f
+}
+
 // tiedToSpeed says what in the spec ties the geometry to the camshaft's speed.
 func (c *Cam) tiedToSpeed() string {
 	for _, e := range c.spec.Motion.Events {
 		if e.Timed {
-			return "an event is given as a time"
+			return "an event is given as a time, or with a velocity per second"
 		}
 	}
 	for _, p := range c.spec.Motion.Points {

@@ -43,14 +43,14 @@ func camAngle(t float64) float64 {
 func (c *Cam) unit() string { return c.spec.Units.Short() }
 
 // moving reports what the follower does at cam angle t of a zone: +1 rises, -1
-// falls, 0 dwells. A zone of an event goes one way; one that was completed or smoothed
-// may turn back.
+// falls, 0 dwells. A zone of a law goes one way; a polynomial between velocities may turn
+// back, and so may what was completed or smoothed.
 func (c *Cam) moving(zone int, t float64) int {
 	z := c.zones[zone]
 	switch {
 	case z.Dwell:
 		return 0
-	case z.Event >= 0:
+	case z.Event >= 0 && c.spec.Motion.Events[z.Event].Law.Name != spec.Polynomial:
 		if c.spec.Motion.Events[z.Event].Kind == spec.Rise {
 			return 1
 		}

@@ -115,7 +115,7 @@ func (j *job) events() []svg.Event {
 	for _, e := range s.Motion.Events {
 		text := "dwell"
 		if e.Kind != spec.Dwell {
-			text = fmt.Sprintf("%s %.6g %s, %s", e.Kind, e.Lift, s.Units.Short(), e.Law.Name)
+			text = fmt.Sprintf("%s %.6g %s, %s", e.Kind, e.Lift, s.Units.Short(), lawText(e))
 		}
 		zone, t := j.cam.Cycle().Zone(from)
 		at := plane.Wrap360(from)
@@ -123,6 +123,18 @@ func (j *job) events() []svg.Event {
 		from += e.Over
 	}
 	return out
+}
+
+// lawText names the law of an event with what changes it.
+func lawText(e spec.Event) string {
+	text := e.Law.Name
+	if e.Law.Name != spec.Polynomial && (e.FromVelocity != nil || e.ToVelocity != nil) {
+		text = "half " + text
+	}
+	if e.Inflection != 0 {
+		text += fmt.Sprintf(", inflection at %.4g", e.Inflection)
+	}
+	return text
 }
 
 // runs samples a quantity over 0 to 360, a run for each zone, so that jumps stay jumps.

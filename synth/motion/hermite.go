@@ -105,7 +105,7 @@ func Polynomial(start, end float64) (Law, error) {
 		{0, 0, 0}, {0, 1, start}, {0, 2, 0},
 		{1, 0, 1}, {1, 1, end}, {1, 2, 0},
 	})}
-	lo, hi := z.lifts()
+	lo, hi := z.Lifts()
 	return Law{name: "polynomial", zones: []Zone{z}, handsOver: true,
 		below: unlessRounding(math.Max(0, -lo), 1), above: unlessRounding(math.Max(0, hi-1), 1)}, nil
 }

@@ -25,9 +25,9 @@ func (c *Cycle) Lowest() (at float64, event int) {
 	return at, event
 }
 
-// lifts returns the least and largest lift of a zone, exact to rounding; infinite or
+// Lifts returns the least and largest lift of a zone, exact to rounding; infinite or
 // not a number where the zone is.
-func (z Zone) lifts() (lo, hi float64) {
+func (z Zone) Lifts() (lo, hi float64) {
 	base := z.mag()
 	switch {
 	case z.Dwell:

@@ -23,7 +23,7 @@ func Of(zones []Zone) (*Cycle, error) {
 			return nil, fmt.Errorf("zone %d covers %g to %g with a span of %g", i+1, z.From, z.To, z.Span)
 		}
 		z = z.scaled(1, 0) // a copy, with at least one coefficient
-		lo, hi := z.lifts()
+		lo, hi := z.Lifts()
 		if math.IsNaN(lo+hi) || math.IsInf(lo, 0) || math.IsInf(hi, 0) {
 			return nil, fmt.Errorf("zone %d is not finite", i+1)
 		}

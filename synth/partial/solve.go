@@ -143,12 +143,13 @@ func (s *search) run() error {
 	}
 	s.limitA, s.limitJ, s.found.JerkLimit = free, s.reached.j*(1+slack), free
 	if !s.p.Jerk {
-		if err := s.leastAcceleration(); err != nil {
+		if x, err = s.leastAcceleration(); err != nil {
 			return err
 		}
 	}
-	if s.x, err = s.solve(limits{s.limitA, s.limitJ, roughness}, 1); err != nil {
-		return err
+	s.x = x // serves when its limits leave the smoothest no room for the arithmetic
+	if smooth, err := s.solve(limits{s.limitA, s.limitJ, roughness}, 1); err == nil {
+		s.x = smooth
 	}
 	s.peakA, _ = s.primal.peaks(s.x)
 	return nil
@@ -157,17 +158,17 @@ func (s *search) run() error {
 // leastAcceleration holds the jerk to its ratio of the bound, so that it is within the
 // ratio of the least possible, and bounds the acceleration with what the ratio of the
 // least found would allow, so that the bound is true whatever the least possible is.
-func (s *search) leastAcceleration() error {
+func (s *search) leastAcceleration() ([]float64, error) {
 	s.found.JerkLimit = math.Max(s.p.JerkRatio*s.found.LeastJerk, s.limitJ*(1+slack))
 	s.limitJ = s.found.JerkLimit / (1 + slack)
 	x, err := s.solve(limits{math.Inf(1), s.limitJ, leastPeakA}, s.unitA)
 	if err != nil {
-		return err
+		return nil, err
 	}
 	s.reached.a, _ = s.primal.peaks(x)
 	s.limitA = s.reached.a * (1 + slack)
 	s.found.LeastAcceleration, err = s.bound(leastPeakA, math.Max(s.p.JerkRatio*s.reached.j, s.found.JerkLimit), s.unitA)
-	return err
+	return x, err
 }
 
 func (s *search) solve(l limits, unit float64) ([]float64, error) {

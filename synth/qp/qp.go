@@ -96,6 +96,7 @@ func Solve(p Problem) (Solution, error) {
 	s.start()
 	at := s.point()
 	at.Residual = math.Inf(1)
+	moved, least := 0, math.Inf(1) // the last step that got anywhere, the least gap
 	for step := range mostSteps {
 		worst := s.residuals()
 		if math.IsNaN(worst) {
@@ -103,9 +104,12 @@ func Solve(p Problem) (Solution, error) {
 		}
 		if worst < at.Residual {
 			at = s.point()
-			at.Steps, at.Residual = step, worst
+			at.Steps, at.Residual, moved = step, worst, step
 		}
-		if worst <= Tolerance || step-at.Steps > stalled {
+		if s.gap < 0.9*least {
+			least, moved = s.gap, step
+		}
+		if worst <= Tolerance || step-moved > stalled {
 			break
 		}
 		if !s.advance() {

@@ -12,6 +12,7 @@ type solver struct {
 	schur      *envelope // E normal⁻¹ E', factored
 	d          []float64 // D = z/s
 	size       float64   // scale of the objective's gradient
+	gap        float64   // s'z at the present point
 }
 
 func newSolver(p Problem) *solver {
@@ -245,6 +246,7 @@ func (s *solver) residuals() float64 {
 		primal = math.Max(primal, math.Abs(s.re[i]))
 		hs = math.Max(hs, math.Abs(s.p.F[i]))
 	}
+	s.gap = gap
 	dual := 0.0
 	for _, r := range s.rd {
 		dual = math.Max(dual, math.Abs(r))

@@ -94,11 +94,14 @@ func (j *job) writeSmoothEnough() {
 	first := 0
 	for j.tight = 1; ; j.tight *= finer {
 		j.gates, j.outline, j.programs = j.gates[:before], nil, nil
-		if err := j.writeOutline(); err != nil {
+		programs := j.startPrograms()
+		err := j.writeOutline()
+		tried := programs()
+		if err != nil {
 			j.gates = append(j.gates, gate.Gate{ID: "outline", Limit: 1, AtLeast: true, CamAngle: math.NaN(), Polar: math.NaN(), Text: err.Error()})
 			return
 		}
-		j.writePrograms()
+		j.addPrograms(tried)
 		worst := j.runFollower()
 		n := len(j.outline.paths[0].path)
 		if j.tight == 1 {

@@ -3,6 +3,7 @@ package pack
 import (
 	"fmt"
 	"math"
+	"sync"
 
 	"lobewright/gcode"
 	"lobewright/gcode/read"
@@ -29,29 +30,49 @@ type program struct {
 // short names the program within the part: "1-mill".
 func (p program) short() string { return fmt.Sprintf("%d-%s", p.index+1, p.expect.Process) }
 
-// writePrograms plans, writes, reads back and verifies one program an operation.
-// An operation whose tool cannot reach has been refused by its gate already.
-func (j *job) writePrograms() {
-	unreached := map[int]bool{}
+// tried is what became of an operation: a program, or why there is none.
+type tried struct {
+	program program
+	err     error
+	skipped bool // its tool cannot reach, which its gate has refused already
+}
+
+// startPrograms plans, writes, reads back and verifies one program an operation, each on
+// its own thread: they share nothing but what the job has settled before. The function
+// returned waits for them.
+func (j *job) startPrograms() func() []tried {
+	all := make([]tried, len(j.spec.Operations))
 	n := 0
 	for _, g := range j.gates {
-		if g.ID == "reach" {
-			unreached[n] = !g.Pass
+		if g.ID == "reach" && n < len(all) {
+			all[n].skipped = !g.Pass
 			n++
 		}
 	}
-	for i := range j.spec.Operations {
-		if unreached[i] {
-			continue
+	var wait sync.WaitGroup
+	for i := range all {
+		if !all[i].skipped {
+			wait.Go(func() { all[i].program, all[i].err = j.bestProgram(i) })
 		}
-		p, err := j.bestProgram(i)
-		if err != nil {
+	}
+	return func() []tried {
+		wait.Wait()
+		return all
+	}
+}
+
+// addPrograms adds the programs in the order of the spec, and their gates.
+func (j *job) addPrograms(all []tried) {
+	for i, t := range all {
+		switch {
+		case t.skipped:
+		case t.err != nil:
 			j.gates = append(j.gates, gate.Gate{ID: "program", Value: 0, Limit: 1, AtLeast: true, CamAngle: math.NaN(), Polar: math.NaN(),
-				Text: fmt.Sprintf("operation %d (%s) cannot be programmed: %v", i+1, j.spec.Operations[i].Process, err)})
-			continue
+				Text: fmt.Sprintf("operation %d (%s) cannot be programmed: %v", i+1, j.spec.Operations[i].Process, t.err)})
+		default:
+			j.programs = append(j.programs, t.program)
+			j.gates = append(j.gates, j.programGates(t.program)...)
 		}
-		j.programs = append(j.programs, p)
-		j.gates = append(j.gates, j.programGates(p)...)
 	}
 }
 

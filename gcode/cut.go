@@ -144,7 +144,7 @@ func frameAt(c Curve, t float64) plane.Frame {
 
 // searchSteps is how many points of a curve a search looks at before it refines;
 // contours of cams turn by less than half a turn between them.
-const searchSteps = 3600
+const searchSteps = 1200
 
 // angleOfPolar returns the cam angle of the contour point at the polar angle, in
 // degrees: the outermost when there are several. Exact to 1e-9 degrees.
@@ -153,9 +153,13 @@ func angleOfPolar(c Curve, polar float64) float64 {
 	side := func(t float64) float64 { return dir.Cross(pointAt(c, t).Sub(plane.Point{})) }
 	ahead := func(t float64) float64 { return dir.Dot(pointAt(c, t).Sub(plane.Point{})) }
 	first, best, radius := c.Pieces()[0].From, 0.0, math.Inf(-1)
+	before := side(first) < 0
 	for k := range searchSteps {
 		lo, hi := first+float64(k)*360/searchSteps, first+float64(k+1)*360/searchSteps
-		if (side(lo) < 0) == (side(hi) < 0) || ahead(lo) <= 0 {
+		now := side(hi) < 0
+		crossed := now != before
+		before = now
+		if !crossed || ahead(lo) <= 0 {
 			continue
 		}
 		t := bisect(side, lo, hi)

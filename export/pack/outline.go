@@ -3,6 +3,7 @@ package pack
 import (
 	"errors"
 	"fmt"
+	"sync"
 
 	"lobewright/export/dxf"
 	"lobewright/export/dxf/read"
@@ -37,10 +38,30 @@ type written struct {
 	toPitch     float64 // distance from path to pitch curve, to the left of its travel, length
 }
 
-// pitchFit fits the pitch curve with arcs once; its parallels are parallel chains
-// with the same deviation.
+// pitchFit fits the pitch curve with arcs once for each tolerance; its parallels are
+// parallel chains with the same deviation.
 func (j *job) pitchFit(eps float64) (chain.Path, error) {
-	return fit.Arcs(j.cam.Pitch(), eps, fit.Options{})
+	return j.fits.get(eps, func() (chain.Path, error) { return fit.Arcs(j.cam.Pitch(), eps, fit.Options{}) })
+}
+
+// fits keeps what was fitted, for programs that are written at the same time. A path is
+// not changed once it is there.
+type fits struct {
+	lock sync.Mutex
+	made map[float64]func() (chain.Path, error)
+}
+
+func (f *fits) get(eps float64, fit func() (chain.Path, error)) (chain.Path, error) {
+	f.lock.Lock()
+	if f.made == nil {
+		f.made = map[float64]func() (chain.Path, error){}
+	}
+	if f.made[eps] == nil {
+		f.made[eps] = sync.OnceValues(fit)
+	}
+	get := f.made[eps]
+	f.lock.Unlock()
+	return get()
 }
 
 // writeOutline writes the DXF, reads it back and certifies its curves.

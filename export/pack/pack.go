@@ -55,6 +55,7 @@ type job struct {
 	unknown  []gate.Finding // paths the follower cannot be run over
 	follows  map[string]run // what the follower does, by file and curve
 	budget   tolerance.Budget
+	fits     fits
 }
 
 // Make runs the job. An error means that the spec cannot be built at all; a

@@ -52,8 +52,15 @@ func of[T taylor.Scalar[T]](q quantity, lift T) T {
 // extreme returns the largest absolute value of the quantity on the zone and
 // where it is, per unit of the zone's parameter. Of equal peaks it returns the
 // first.
-func extreme(z Zone, q quantity) (value, at float64) {
-	s := search{zone: z, of: q, at: z.From}
+func extreme(z Zone, q quantity) (value, at float64) { return extremeAbove(z, q, 0) }
+
+// extremeAbove is extreme, but for a zone that has nothing above the floor, of which it
+// returns something at or below it.
+func extremeAbove(z Zone, q quantity, floor float64) (value, at float64) {
+	if floor > 0 && of(q, Eval(z, taylor.IVar(taylor.Interval{Lo: z.From, Hi: z.To}, taylor.Order))).Range().Mag() <= floor {
+		return 0, z.From
+	}
+	s := search{zone: z, of: q, at: z.From, floor: floor}
 	for i := range coarse {
 		s.floor = math.Max(s.floor, s.size(z.From+(z.To-z.From)*float64(i)/(coarse-1)))
 	}
@@ -187,7 +194,7 @@ func (c *Cycle) Peaks() CyclePeaks {
 func (c *Cycle) peak(q quantity, order int) Peak {
 	var most Peak
 	for _, z := range c.zones {
-		if v, at := extreme(z, q); v > most.Value*(1+rounding) {
+		if v, at := extremeAbove(z, q, most.Value); v > most.Value*(1+rounding) {
 			most = Peak{v, at}
 		}
 	}

@@ -1,6 +1,7 @@
 package partial
 
 import (
+	"cmp"
 	"errors"
 	"fmt"
 	"math"
@@ -134,13 +135,14 @@ func (s *search) run() error {
 		return err
 	}
 	s.unitA, s.unitJ = s.primal.peaks(x)
-	if x, err = s.solve(limits{free, free, leastPeakJerk}, s.unitJ); err != nil {
+	bound := s.startBound(leastPeakJerk, 0, s.unitJ)
+	x, err = s.solve(limits{free, free, leastPeakJerk}, s.unitJ)
+	least, wrong := bound()
+	if err = cmp.Or(err, wrong); err != nil {
 		return err
 	}
 	_, s.reached.j = s.primal.peaks(x)
-	if s.found.LeastJerk, err = s.bound(leastPeakJerk, 0, s.unitJ); err != nil {
-		return err
-	}
+	s.found.LeastJerk = least
 	s.limitA, s.limitJ, s.found.JerkLimit = free, s.reached.j*(1+slack), free
 	if !s.p.Jerk {
 		if x, err = s.leastAcceleration(); err != nil {
@@ -161,14 +163,31 @@ func (s *search) run() error {
 func (s *search) leastAcceleration() ([]float64, error) {
 	s.found.JerkLimit = math.Max(s.p.JerkRatio*s.found.LeastJerk, s.limitJ*(1+slack))
 	s.limitJ = s.found.JerkLimit / (1 + slack)
+	bound := s.startBound(leastPeakA, math.Max(s.p.JerkRatio*s.reached.j, s.found.JerkLimit), s.unitA)
 	x, err := s.solve(limits{math.Inf(1), s.limitJ, leastPeakA}, s.unitA)
-	if err != nil {
+	least, wrong := bound()
+	if err = cmp.Or(err, wrong); err != nil {
 		return nil, err
 	}
 	s.reached.a, _ = s.primal.peaks(x)
-	s.limitA = s.reached.a * (1 + slack)
-	s.found.LeastAcceleration, err = s.bound(leastPeakA, math.Max(s.p.JerkRatio*s.reached.j, s.found.JerkLimit), s.unitA)
-	return x, err
+	s.limitA, s.found.LeastAcceleration = s.reached.a*(1+slack), least
+	return x, nil
+}
+
+// startBound computes a bound beside the motion, which it does not depend on. The
+// function returned waits for it.
+func (s *search) startBound(least goal, jerk, unit float64) func() (float64, error) {
+	var b float64
+	var err error
+	done := make(chan struct{})
+	go func() {
+		defer close(done)
+		b, err = s.bound(least, jerk, unit)
+	}()
+	return func() (float64, error) {
+		<-done
+		return b, err
+	}
 }
 
 func (s *search) solve(l limits, unit float64) ([]float64, error) {

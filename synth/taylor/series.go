@@ -63,6 +63,13 @@ func (a F) Radians() F { return a.Scale(math.Pi / 180) }
 
 func (a F) Mul(b F) F {
 	var c F
+	if b.C[2] == 0 && b.C[3] == 0 && b.C[4] == 0 && b.C[5] == 0 { // a linear factor, as in every step of Horner's rule
+		c.C[0] = a.C[0] * b.C[0]
+		for k := 1; k <= Order; k++ {
+			c.C[k] = a.C[k-1]*b.C[1] + a.C[k]*b.C[0]
+		}
+		return c
+	}
 	for k := 0; k <= Order; k++ {
 		s := 0.0
 		for i := 0; i <= k; i++ {
@@ -180,7 +187,19 @@ func (a I) by(x Interval) I {
 
 func (a I) Mul(b I) I {
 	c := I{N: min(a.N, b.N)}
+	top := c.N // the highest power in b
+	for top > 0 && b.C[top] == (Interval{}) {
+		top--
+	}
 	for k := 0; k <= c.N; k++ {
+		if k > top {
+			s := a.C[k-top].Mul(b.C[top])
+			for i := k - top + 1; i <= k; i++ {
+				s = s.Add(a.C[i].Mul(b.C[k-i]))
+			}
+			c.C[k] = s
+			continue
+		}
 		s := a.C[0].Mul(b.C[k])
 		for i := 1; i <= k; i++ {
 			s = s.Add(a.C[i].Mul(b.C[k-i]))

@@ -4,7 +4,6 @@
 package synth
 
 import (
-	"fmt"
 	"math"
 
 	"lobewright/synth/follower"
@@ -20,7 +19,7 @@ type Cam struct {
 	spec     *spec.Spec
 	zones    []motion.Zone
 	lift     lift
-	follower follower.TranslatingRoller
+	follower follower.Kind
 }
 
 // lift is the completed motion as series in the cam angle in degrees, by zone.
@@ -40,7 +39,7 @@ func (z zoneLift) I(zone int, deg taylor.I) taylor.I { return motion.Eval(z[zone
 func Vocabulary() spec.Vocabulary {
 	return spec.Vocabulary{
 		Laws:      motion.Names(),
-		Followers: []string{"translating-roller"},
+		Followers: followers(),
 		Cams:      []string{"plate"},
 		Processes: []string{"mill", "wire"},
 		ShareLaws: []string{"modified-constant-velocity"},
@@ -74,10 +73,9 @@ func Build(s *spec.Spec) (*Cam, error) {
 	if err != nil {
 		return nil, err
 	}
-	f, ok := follower.NewTranslatingRoller(s.Cam.BaseRadius, s.Follower.RollerDiameter/2, s.Follower.Offset, s.Camshaft.Clockwise)
-	if !ok {
-		return nil, fmt.Errorf("%s:%d:%d: follower.offset %g reaches past the prime circle of radius %g; make it smaller",
-			s.File, s.Follower.Place.Line, s.Follower.Place.Column, s.Follower.Offset, s.Cam.BaseRadius+s.Follower.RollerDiameter/2)
+	f, err := newFollower(s)
+	if err != nil {
+		return nil, err
 	}
 	zones := m.cycle.Zones()
 	return &Cam{spec: s, completed: m, zones: zones, lift: zoneLift(zones), follower: f}, nil
@@ -87,24 +85,21 @@ func Build(s *spec.Spec) (*Cam, error) {
 func (c *Cam) Cycle() *motion.Cycle { return c.cycle }
 
 // Follower returns the follower.
-func (c *Cam) Follower() follower.TranslatingRoller { return c.follower }
+func (c *Cam) Follower() follower.Kind { return c.follower }
 
-// Prime returns the radius of the prime circle, length.
-func (c *Cam) Prime() float64 { return c.spec.Cam.BaseRadius + c.follower.RollerRadius }
+// Prime returns the radius of the prime circle, length: of the base circle where the
+// follower has no roller.
+func (c *Cam) Prime() float64 { return c.spec.Cam.BaseRadius + c.follower.Radius() }
 
 // Omega returns the camshaft's speed in rad/s.
 func (c *Cam) Omega() float64 { return c.spec.Camshaft.Speed * math.Pi / 30 }
 
 // outward returns +1 when the outside of the cam lies to the left of travel: a
 // cam that turns clockwise has its curves run counterclockwise, outside to the right.
-func (c *Cam) outward() float64 {
-	if c.follower.Clockwise {
-		return -1
-	}
-	return 1
-}
+func (c *Cam) outward() float64 { return -c.follower.Sense() }
 
-// Pitch returns the curve of the roller center.
+// Pitch returns the base curve: the path of the follower's center, or the contour where it
+// has none.
 func (c *Cam) Pitch() *Curve { return c.curve(0) }
 
 // Contour returns the curve that is cut.
@@ -115,14 +110,14 @@ func (c *Cam) Parallel(outside float64) *Curve { return c.curve(c.LeftOfPitch(ou
 
 // LeftOfPitch turns a distance outside the contour into one to the left of the pitch curve's travel.
 func (c *Cam) LeftOfPitch(outside float64) float64 {
-	return c.outward() * (outside - c.follower.RollerRadius)
+	return c.outward() * (outside - c.follower.Radius())
 }
 
 // OutsideIsLeft reports whether the outside of the cam lies to the left of travel with growing cam angle.
 func (c *Cam) OutsideIsLeft() bool { return c.outward() > 0 }
 
-// Lift is the motion at one cam angle: length, and length per radian, radian²,
-// radian³.
+// Lift is the motion at one cam angle: lift (length; degrees of a swinging follower), and
+// lift per radian, radian², radian³ of cam angle.
 type Lift struct{ S, V, A, J float64 }
 
 // LiftIn returns the motion at cam angle t, in degrees, of a zone.

@@ -141,7 +141,7 @@ func conflictFault(s *spec.Spec, conflict []partial.Fact) error {
 
 // factText says a fact in words.
 func factText(f spec.Fact, s *spec.Spec) string {
-	u, w := s.Units.Short(), s.Camshaft.Speed*6
+	u, w := liftUnit(s), s.Camshaft.Speed*6
 	var parts []string
 	add := func(x *float64, scale float64, format string) {
 		if x != nil {
@@ -171,7 +171,7 @@ func (c *Cam) completionFinding() *gate.Finding {
 	if k == nil || k.Reached == 0 {
 		return nil
 	}
-	what, unit, u := "acceleration", "/s²", c.unit()
+	what, unit, u := "acceleration", "/s²", c.LiftUnit()
 	if k.Jerk {
 		what, unit = "jerk", "/s³"
 	}

@@ -159,7 +159,7 @@ func TestEccentricCircles(t *testing.T) {
 	for _, p := range []eccentric{{12, 50, 0}, {12, 50, 6}} {
 		const roller = 10
 		cam := eccentricCam(p, roller)
-		gamma := math.Atan2(p.f, cam.follower.Datum)
+		gamma := math.Atan2(p.f, cam.follower.(follower.TranslatingRoller).Datum)
 		center := plane.Polar(p.e, plane.Angle(gamma+math.Pi))
 		con := cam.Contour()
 		for deg := 0.0; deg < 360; deg += 7.5 {

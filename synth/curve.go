@@ -3,6 +3,7 @@ package synth
 import (
 	"math"
 
+	"lobewright/synth/follower"
 	"lobewright/synth/plane"
 	"lobewright/synth/taylor"
 )
@@ -28,11 +29,19 @@ func (c *Curve) Closed() bool { return true }
 // Left returns the distance from the pitch curve to the left of travel.
 func (c *Curve) Left() float64 { return c.left }
 
+// outside is the distance outside the base curve.
+func (c *Curve) outside() float64 { return c.left * c.cam.outward() }
+
 // At returns point, unit tangent, curvature and its rate at cam angle t in
 // degrees, which must lie in the piece; exact to rounding. The tangent is that of
 // the pitch curve: where a parallel is undercut (1 - left*K < 0) the curve runs
 // against it.
 func (c *Curve) At(piece int, t float64) plane.Frame {
+	if f, ok := c.cam.face(); ok {
+		p, phi := f.SupportF(taylor.FVar(t), c.cam.liftF(piece, t))
+		frame, _ := follower.FaceFrame(p, phi, c.outside())
+		return frame
+	}
 	x, y := c.cam.pitchF(piece, t)
 	return offsetFrame(frame(x, y), c.left)
 }
@@ -40,6 +49,11 @@ func (c *Curve) At(piece int, t float64) plane.Frame {
 // Over encloses the curve and its derivatives by t in degrees over the whole
 // interval, to the given order, at most taylor.Order-1.
 func (c *Curve) Over(piece int, t taylor.Interval, order int) (x, y taylor.I) {
+	if f, ok := c.cam.face(); ok {
+		deg := taylor.IVar(t, order+1)
+		p, phi := f.SupportI(deg, c.cam.lift.I(piece, deg))
+		return follower.Contour(p.Add(p.Of(c.outside())), phi)
+	}
 	if c.left == 0 {
 		return c.cam.pitchI(piece, t, order)
 	}

@@ -92,7 +92,7 @@ func belowZero(s *spec.Spec, cycle *motion.Cycle) error {
 	at, i := cycle.Lowest()
 	e := s.Motion.Events[i]
 	return spec.Faults{{File: s.File, Line: e.Place.Line, Column: e.Place.Column, Path: fmt.Sprintf("motion.events[%d]", i+1),
-		Found:   fmt.Sprintf("a lift of %.6g %s at cam angle %.6g, the lowest of this %s", cycle.MinLift(), s.Units.Short(), camAngle(at), e.Kind),
+		Found:   fmt.Sprintf("a lift of %.6g %s at cam angle %.6g, the lowest of this %s", cycle.MinLift(), liftUnit(s), camAngle(at), e.Kind),
 		Allowed: "lifts of 0 or more: lift 0 is the lowest of the cycle",
 		Advice:  "a smaller velocity at its ends, a larger lift or a shorter angle brings it up, or a higher motion.start_lift"}}
 }

@@ -37,7 +37,7 @@ func (c *Cam) Findings() []gate.Finding {
 	for _, j := range c.cycle.Junctions() {
 		if step := j.AccelerationStep(); step != 0 {
 			f = append(f, gate.Finding{ID: "acceleration-jump", CamAngle: camAngle(j.At),
-				Text: fmt.Sprintf("the acceleration jumps by %.4g %s/s² (from %.4g to %.4g)", step*w*w, c.unit(), j.Acceleration[0]*w*w, j.Acceleration[1]*w*w)})
+				Text: fmt.Sprintf("the acceleration jumps by %.4g %s/s² (from %.4g to %.4g)", step*w*w, c.LiftUnit(), j.Acceleration[0]*w*w, j.Acceleration[1]*w*w)})
 		}
 	}
 	f = append(f, c.overshoots()...)
@@ -49,11 +49,8 @@ func (c *Cam) Findings() []gate.Finding {
 		f = append(f, *x)
 	}
 	f = append(f, c.dwellAngles()...)
-	// Through the pitch curve: an undercut contour is the undercut gate's affair.
-	r := c.Pitch().Radii()
-	if radius := r.Convex - c.follower.RollerRadius; radius > 0 && radius < smallRadiusShare*c.follower.RollerRadius {
-		f = append(f, gate.Finding{ID: "small-radius", CamAngle: camAngle(r.ConvexAt),
-			Text: fmt.Sprintf("the contour's convex radius of curvature falls to %.4g %s, below half the roller's radius: high contact stress", radius, c.unit())})
+	if x := c.smallRadius(); x != nil {
+		f = append(f, *x)
 	}
 	if what := c.tiedToSpeed(); what != "" {
 		f = append(f, gate.Finding{ID: "tied-to-speed", CamAngle: math.NaN(),
@@ -74,7 +71,7 @@ func (c *Cam) overshoots() []gate.Finding {
 		for _, past := range []float64{hi - math.Max(from, to), math.Min(from, to) - lo} {
 			if past > 1e-9*(hi-lo) {
 				f = append(f, gate.Finding{ID: "overshoot", CamAngle: camAngle(z.From),
-					Text: fmt.Sprintf("this %s goes %.4g %s past its own end, because of the velocities at its ends", c.spec.Motion.Events[z.Event].Kind, past, c.unit())})
+					Text: fmt.Sprintf("this %s goes %.4g %s past its own end, because of the velocities at its ends", c.spec.Motion.Events[z.Event].Kind, past, c.LiftUnit())})
 			}
 		}
 	}
@@ -99,18 +96,34 @@ func (c *Cam) tiedToSpeed() string {
 // harmfulOffset compares the worse of rise and fall with what the same offset on the other side, or
 // none, would give.
 func (c *Cam) harmfulOffset() *gate.Finding {
-	if c.follower.Offset == 0 {
+	if c.spec.Follower.Offset == 0 {
 		return nil
 	}
 	worst := func(d *Cam) float64 { return math.Max(d.steepest(1).value, d.steepest(-1).value) }
-	without := *c
-	without.follower.Offset, without.follower.Datum = 0, c.Prime()
+	straight, without := *c.spec, *c
+	straight.Follower.Offset = 0
+	f, err := newFollower(&straight)
+	if err != nil {
+		return nil
+	}
+	without.follower = f
 	have, none := worst(c), worst(&without)
 	if have <= none {
 		return nil
 	}
 	return &gate.Finding{ID: "harmful-offset", CamAngle: math.NaN(),
 		Text: fmt.Sprintf("the offset raises the worse pressure angle of rise and fall from %.2f° to %.2f°; for this turning direction the other side or a smaller offset is better", none, have)}
+}
+
+// smallRadius finds a contour that is sharp against its roller.
+func (c *Cam) smallRadius() *gate.Finding {
+	roller := c.spec.Follower.RollerDiameter / 2
+	radius, at := c.leastRound() // an undercut contour is the undercut gate's affair
+	if roller == 0 || !(radius > 0 && radius < smallRadiusShare*roller) {
+		return nil
+	}
+	return &gate.Finding{ID: "small-radius", CamAngle: camAngle(at.t),
+		Text: fmt.Sprintf("the contour's convex radius of curvature falls to %.4g %s, below half the roller's radius: high contact stress", radius, c.unit())}
 }
 
 // dwellAngles reports the pressure angle of every dwell, which is not gated.

@@ -15,6 +15,7 @@ func (c *Cam) Gates() []gate.Gate {
 	if r := c.returnGate(); r != nil {
 		g = append(g, *r)
 	}
+	g = append(g, c.kindGates()...)
 	g = append(g, c.undercutGate())
 	if r := c.radiusGate(); r != nil {
 		g = append(g, *r)
@@ -96,16 +97,20 @@ func (c *Cam) returnGate() *gate.Gate {
 
 // undercutGate compares the roller with the largest disc that fits inside the
 // pitch curve everywhere. A smaller disc than the roller means the contour loops,
-// comes to a cusp, or is cut away from elsewhere on the cam.
+// comes to a cusp, or is cut away from elsewhere on the cam. Under a flat face the
+// contour's radius of curvature must stay above 0.
 func (c *Cam) undercutGate() gate.Gate {
-	d, r := c.Pitch().LeastDisc(false), c.follower.RollerRadius
+	if _, ok := c.face(); ok {
+		return c.faceUndercut()
+	}
+	d, r := c.Pitch().LeastDisc(false), c.follower.Radius()
 	why := "the pitch curve turns too sharply there"
 	if d.Neck {
 		why = fmt.Sprintf("the roller already overlaps the flank at cam angle %.2f°", camAngle(d.Other))
 	}
 	text := "largest roller that fits inside the pitch curve everywhere"
 	if d.Radius <= r {
-		text = fmt.Sprintf("a roller of radius %.4g cannot follow the pitch curve: %s, and the contour would lose the lift there; use a smaller roller or a larger base_radius", r, why)
+		text = fmt.Sprintf("a roller of radius %.4g cannot follow the pitch curve: %s, and the contour would lose the lift there%s; use a smaller roller or a larger base_radius", r, why, c.stays())
 	}
 	return gate.Gate{
 		ID: "undercut", Value: d.Radius, Limit: r, Unit: c.unit(), AtLeast: true,
@@ -113,24 +118,35 @@ func (c *Cam) undercutGate() gate.Gate {
 	}
 }
 
+func (c *Cam) faceUndercut() gate.Gate {
+	r, at := c.leastRound()
+	g := gate.Gate{ID: "undercut", Value: r, Unit: c.unit(), AtLeast: true, CamAngle: camAngle(at.t), Polar: c.polarAt(at.piece, at.t), Pass: r > 0,
+		Text: "least radius of curvature of the contour under the face, negative where it would loop"}
+	if !g.Pass {
+		g.Text = "the contour would loop there, and the face would not touch it" + c.stays() + "; enlarge base_radius or lengthen the event"
+	}
+	return g
+}
+
+// stays says what an undercut cam would do to the follower.
+func (c *Cam) stays() string { return "" }
+
 func (c *Cam) radiusGate() *gate.Gate {
 	if c.spec.Limits.RadiusOfCurvature == nil {
 		return nil
 	}
-	// Through the pitch curve, so that an undercut contour gives a radius below 0.
-	p, limit := c.Pitch().Radii(), *c.spec.Limits.RadiusOfCurvature
-	r := p.Convex - c.follower.RollerRadius
-	zone, t := c.cycle.Zone(p.ConvexAt)
+	r, at := c.leastRound()
+	limit := *c.spec.Limits.RadiusOfCurvature
 	return &gate.Gate{
 		ID: "radius-of-curvature", Value: r, Limit: limit, Unit: c.unit(), AtLeast: true,
-		CamAngle: camAngle(p.ConvexAt), Polar: c.polarAt(zone, t), Pass: r >= limit,
+		CamAngle: camAngle(at.t), Polar: c.polarAt(at.piece, at.t), Pass: r >= limit,
 		Text: "least convex radius of curvature of the contour; enlarge base_radius or lengthen the event",
 	}
 }
 
 // motionGates judge the peaks of the motion at the camshaft's speed.
 func (c *Cam) motionGates() []gate.Gate {
-	peaks, w, u := c.Peaks(), c.Omega(), c.unit()
+	peaks, w, u := c.Peaks(), c.Omega(), c.LiftUnit()
 	var g []gate.Gate
 	add := func(id string, limit *float64, value, at float64, unit, text string) {
 		if limit != nil {

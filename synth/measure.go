@@ -5,7 +5,9 @@ import (
 
 	"gonum.org/v1/gonum/integrate/quad"
 
+	"lobewright/synth/follower"
 	"lobewright/synth/plane"
+	"lobewright/synth/taylor"
 )
 
 // gaussPoints and gaussParts: each analytic piece is cut into parts of at most
@@ -32,6 +34,11 @@ func (c *Curve) integral(f func(piece int, t float64) float64) float64 {
 // speed returns the length the curve runs per degree of cam angle, negative
 // where it is undercut and runs against its tangent.
 func (c *Curve) speed(piece int, t float64) (float64, plane.Frame) {
+	if f, ok := c.cam.face(); ok {
+		p, phi := f.SupportF(taylor.FVar(t), c.cam.liftF(piece, t))
+		frame, rho := follower.FaceFrame(p, phi, c.outside())
+		return rho * math.Abs(phi.C[1]), frame
+	}
 	x, y := c.cam.pitchF(piece, t)
 	f := frame(x, y)
 	return math.Hypot(x.C[1], y.C[1]) * (1 - c.left*f.K), offsetFrame(f, c.left)
@@ -86,4 +93,21 @@ func (c *Curve) Radii() Radii {
 		r.Concave = 1 / concave.value
 	}
 	return r
+}
+
+// leastRound is the least convex radius of curvature of the contour with its sign: below
+// 0 where it is undercut, which a contour of curvature alone would hide.
+func (c *Cam) leastRound() (radius float64, at place) {
+	if f, ok := c.face(); ok {
+		p := largest(c.Contour().pieces, every, func(i int, t float64) float64 { return -faceRound(f, c.liftF(i, t), t) })
+		return -p.value, p
+	}
+	r := c.Pitch().Radii()
+	zone, t := c.cycle.Zone(r.ConvexAt)
+	return r.Convex - c.follower.Radius(), place{piece: zone, t: t}
+}
+
+// faceRound is the radius of curvature under a flat face at cam angle t, degrees.
+func faceRound(f follower.Face, lift taylor.F, t float64) float64 {
+	return follower.RadiusOfCurvature(f.SupportF(taylor.FVar(t), lift)).C[0]
 }

@@ -20,6 +20,7 @@ import (
 	"fmt"
 	"math"
 
+	"lobewright/synth/follower"
 	"lobewright/synth/gate"
 	"lobewright/synth/motion"
 	"lobewright/synth/spec"
@@ -71,7 +72,11 @@ func Size(s *spec.Spec) (Sizing, error) {
 	if err != nil {
 		return Sizing{}, err
 	}
-	z := &sizer{cam: c, rows: c.samples()}
+	roller, ok := c.follower.(follower.TranslatingRoller)
+	if !ok {
+		return Sizing{}, fmt.Errorf("%s:%d:%d: found follower.kind %s; allowed for sizing: translating-roller", s.File, s.Follower.Place.Line, s.Follower.Place.Column, s.Follower.Kind)
+	}
+	z := &sizer{cam: c, line: roller, rows: c.samples()}
 	out := Sizing{Floor: z.floor()}
 	for _, l := range z.limits() {
 		r, ok := z.least(out.Floor, l.value)
@@ -141,6 +146,7 @@ func (c *Cam) samples() []sizeSample {
 
 type sizer struct {
 	cam  *Cam
+	line follower.TranslatingRoller
 	rows []sizeSample
 }
 
@@ -154,17 +160,17 @@ type sizeLimit struct {
 // sigma is +1 for a cam that turns clockwise, the sign of the offset in the formulas.
 func (z *sizer) sigma() float64 { return -z.cam.outward() }
 
-func (z *sizer) roller() float64 { return z.cam.follower.RollerRadius }
+func (z *sizer) roller() float64 { return z.line.RollerRadius }
 
 // datum is the roller center at lift 0 for a base radius.
 func (z *sizer) datum(base float64) float64 {
-	p, e := base+z.roller(), z.cam.follower.Offset
+	p, e := base+z.roller(), z.line.Offset
 	return math.Sqrt((p - e) * (p + e))
 }
 
 // floor is the smallest base radius that leaves room for the bore and takes the offset.
 func (z *sizer) floor() float64 {
-	f := math.Abs(z.cam.follower.Offset) - z.roller()
+	f := math.Abs(z.line.Offset) - z.roller()
 	if b := z.cam.spec.Cam.Bore; b != nil {
 		f = math.Max(f, b.Diameter/2)
 		if b.Keyway != nil {
@@ -253,12 +259,12 @@ func (z *sizer) at(zone int, t float64, like sizeSample) sizeSample {
 
 // pressure is the size of the pressure angle in degrees.
 func (z *sizer) pressure(p sizeSample, d float64) float64 {
-	return math.Abs(math.Atan2(p.v-z.sigma()*z.cam.follower.Offset, d+p.s)) * 180 / math.Pi
+	return math.Abs(math.Atan2(p.v-z.sigma()*z.line.Offset, d+p.s)) * 180 / math.Pi
 }
 
 // bend is the curvature of the pitch curve, positive where convex.
 func (z *sizer) bend(p sizeSample, d float64) float64 {
-	u, w := d+p.s, p.v-z.sigma()*z.cam.follower.Offset
+	u, w := d+p.s, p.v-z.sigma()*z.line.Offset
 	return (u*u + w*(w+p.v) - u*p.a) / math.Pow(u*u+w*w, 1.5)
 }
 
@@ -323,7 +329,7 @@ func (z *sizer) broken(id string, t float64, base taylor.Interval) bool {
 	perRad := taylor.Exactly(1).Div(taylor.PiOver180())
 	s, v := lift.C[0], lift.C[1].Mul(perRad)
 	a := lift.C[2].Mul(taylor.Exactly(2)).Mul(perRad).Mul(perRad)
-	e := taylor.Exactly(z.sigma() * z.cam.follower.Offset)
+	e := taylor.Exactly(z.sigma() * z.line.Offset)
 	p := base.Add(taylor.Exactly(z.roller()))
 	u := p.Sqr().Sub(e.Sqr()).Sqrt().Add(s)
 	w := v.Sub(e)

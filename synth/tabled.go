@@ -61,7 +61,7 @@ func (c *Cam) tableFindings() []gate.Finding {
 	if r == nil {
 		return nil
 	}
-	u, w, s := c.unit(), c.Omega(), c.spec.Motion.Table.Smoothing
+	u, w, s := c.LiftUnit(), c.Omega(), c.spec.Motion.Table.Smoothing
 	f := []gate.Finding{{ID: "smoothed-table", CamAngle: camAngle(r.LargestAt.Angle),
 		Text: fmt.Sprintf("%d rows became %d pieces; the rows were moved by %.3g %s root mean square, the most by %.3g at line %d of %s (allowed %g); the table's own noise of about %.2g %s leaves about %.3g %s/s² of noise in the acceleration",
 			r.Rows, r.Knots, r.RMS, u, r.Largest, r.LargestAt.Line, c.spec.Motion.Table.File, s, r.NoiseLift, u, r.NoiseAcceleration*w*w, u)}}

@@ -10,6 +10,7 @@ import (
 	"lobewright/synth/plane"
 	"lobewright/synth/spec"
 	"lobewright/tolerance/chain"
+	"lobewright/tolerance/follow"
 )
 
 // figures draws the three SVG files. released says what is stamped on them.
@@ -40,8 +41,12 @@ func (j *job) turn() *sheet.Turn {
 	if j.outline == nil {
 		return nil
 	}
-	f, w := j.cam.Follower(), j.cam.Omega()
-	t := &sheet.Turn{Clockwise: f.Clockwise, Contour: j.shape(j.cam.Contour()), Roller: f.RollerRadius, Datum: f.Datum, Offset: f.Offset, Step: turnStep}
+	f, ok := j.linkage().(follow.Roller)
+	if !ok {
+		return nil // a face or an arm: the figure knows centers on a line
+	}
+	w := j.cam.Omega()
+	t := &sheet.Turn{Clockwise: f.Clockwise, Contour: j.shape(j.cam.Contour()), Roller: j.cam.Follower().Radius(), Datum: f.Datum, Offset: f.Offset, Step: turnStep}
 	if b := j.spec.Cam.Bore; b != nil {
 		t.Bore = b.Diameter
 	}
@@ -63,10 +68,18 @@ func (j *job) drawingData(head svg.Head) svg.DrawingData {
 	d := svg.DrawingData{
 		Head: head, Material: s.Material, Hardness: s.Hardness, Finish: s.Finish, Date: s.Date, Drawn: s.Drawn, Checked: s.Checked,
 		Thickness: s.Cam.Thickness, OutsideDiameter: s.Cam.OutsideDiameter,
-		Contours: []chain.Path{j.shape(j.cam.Contour())}, PitchCurve: j.shape(j.cam.Pitch()),
-		BaseRadius: s.Cam.BaseRadius, RollerDiameter: s.Follower.RollerDiameter,
-		Roller: plane.Point{X: j.cam.Follower().Datum, Y: s.Follower.Offset}, Offset: s.Follower.Offset,
+		Contours:   []chain.Path{j.shape(j.cam.Contour())},
+		BaseRadius: s.Cam.BaseRadius, Offset: s.Follower.Offset,
 		Profile: s.Tolerance.Profile, NoDatum: s.Cam.NoDatum, Events: j.events(), Notes: s.Notes, Cautions: drawingCautions(),
+	}
+	if s.Follower.Kind != "translating-roller" {
+		d.Follower, d.Swings = j.followerText()+", "+j.placeText(), j.cam.Swings()
+	}
+	if r := s.Follower.FaceRadius; r > 0 {
+		d.RollerText = "FACE R" + fmt.Sprintf("%g", r)
+	}
+	if j.cam.HasPitchCurve() {
+		d.PitchCurve, d.RollerDiameter, d.Roller = j.shape(j.cam.Pitch()), 2*j.cam.Follower().Radius(), j.cam.AtRest()
 	}
 	zone, t := j.cam.Cycle().Zone(0)
 	d.Zero = j.cam.Contour().At(zone, t).P
@@ -115,7 +128,7 @@ func (j *job) events() []svg.Event {
 	for _, e := range s.Motion.Events {
 		text := "dwell"
 		if e.Kind != spec.Dwell {
-			text = fmt.Sprintf("%s %.6g %s, %s", e.Kind, e.Lift, s.Units.Short(), lawText(e))
+			text = fmt.Sprintf("%s %.6g %s, %s", e.Kind, e.Lift, j.cam.LiftUnit(), lawText(e))
 		}
 		zone, t := j.cam.Cycle().Zone(from)
 		at := plane.Wrap360(from)
@@ -220,7 +233,7 @@ func (j *job) greatest(f func(zone int, t float64) float64) (at, value float64) 
 }
 
 func (j *job) motionChart(head svg.Head) svg.MotionChart {
-	w, u, l := j.cam.Omega(), j.spec.Units.Short(), j.spec.Limits
+	w, u, l := j.cam.Omega(), j.cam.LiftUnit(), j.spec.Limits
 	contour := j.cam.Contour()
 	both := func(limit *float64) []svg.Limit {
 		if limit == nil {
@@ -235,7 +248,7 @@ func (j *job) motionChart(head svg.Head) svg.MotionChart {
 		Acceleration:  j.curve(u+"/s²", both(l.Acceleration), func(z int, t float64) float64 { return j.cam.LiftIn(z, t).A * w * w }),
 		Jerk:          j.curve(u+"/s³", both(l.Jerk), func(z int, t float64) float64 { return j.cam.LiftIn(z, t).J * w * w * w }),
 		PressureAngle: j.curve("deg", []svg.Limit{{Value: l.PressureAngle}}, func(z int, t float64) float64 { return j.cam.PressureAngleIn(z, t).Deg() }),
-		Radius: svg.Curve{Unit: u, Runs: j.runs(func(z int, t float64) float64 {
+		Radius: svg.Curve{Unit: j.spec.Units.Short(), Runs: j.runs(func(z int, t float64) float64 {
 			f := contour.At(z, t)
 			return j.convex(f) * math.Abs(f.K)
 		})},

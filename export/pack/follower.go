@@ -6,6 +6,7 @@ import (
 
 	"lobewright/export/sheet"
 	"lobewright/export/svg"
+	"lobewright/synth/follower"
 	"lobewright/synth/gate"
 	"lobewright/synth/plane"
 	"lobewright/tolerance/follow"
@@ -17,14 +18,53 @@ type run struct {
 	samples []follow.Sample
 }
 
-// follower runs the roller over a written path.
+// linkage is the follower as something to be run over a path.
+func (j *job) linkage() follow.Follower {
+	switch f := j.cam.Follower().(type) {
+	case follower.TranslatingRoller:
+		return follow.Roller{Offset: f.Offset, Datum: f.Datum, Clockwise: f.Clockwise}
+	case follower.TranslatingKnife:
+		return follow.Roller{Offset: f.Offset, Datum: f.Datum, Clockwise: f.Clockwise}
+	case follower.TranslatingMushroom:
+		return follow.Roller{Offset: f.Offset, Datum: f.Datum, Clockwise: f.Clockwise}
+	default:
+		on := func(theta float64, arc plane.Frame) (lift, v, a float64, at plane.Point, ok bool) {
+			r, ok := f.OnArc(theta, arc)
+			return r.Lift, r.Velocity, r.Acceleration, r.At, ok
+		}
+		k := follow.Kind{On: on, Near: j.nearBase(), Sense: f.Sense()}
+		if !j.cam.HasCenter() {
+			k.Kinks = 0.5
+		}
+		return k
+	}
+}
+
+// nearBase returns a function that finds the cam angle, to a degree or so, at which the
+// design is nearest to a point of its base curve.
+func (j *job) nearBase() func(plane.Point) float64 {
+	var at []plane.Point
+	for deg := range 360 {
+		zone, t := j.cam.Cycle().Zone(float64(deg))
+		at = append(at, j.cam.Pitch().At(zone, t).P)
+	}
+	return func(p plane.Point) float64 {
+		best := 0
+		for i := range at {
+			if at[i].Dist(p) < at[best].Dist(p) {
+				best = i
+			}
+		}
+		return float64(best)
+	}
+}
+
+// follower runs the follower over a written path.
 func (j *job) follower(w written) (run, error) {
 	centers, err := follow.Centers(w.path, w.toPitch)
 	if err != nil {
 		return run{}, fmt.Errorf("%s, %s: %w", w.file, w.curve, err)
 	}
-	f := j.cam.Follower()
-	roller := follow.Roller{Offset: f.Offset, Datum: f.Datum, Clockwise: f.Clockwise}
 	lift := func(t float64) (s, ds, dds float64) {
 		l := j.cam.LiftAt(t)
 		return l.S, l.V, l.A
@@ -35,7 +75,7 @@ func (j *job) follower(w written) (run, error) {
 			jumps = append(jumps, x.At)
 		}
 	}
-	e, samples, err := roller.Compare(centers, lift, j.cam.Cycle().Zones()[0].From, jumps...)
+	e, samples, err := follow.Compare(j.linkage(), centers, lift, j.cam.Cycle().Zones()[0].From, jumps...)
 	if err != nil {
 		return run{}, fmt.Errorf("%s, %s: %w", w.file, w.curve, err)
 	}
@@ -74,7 +114,7 @@ func (j *job) accelerationRuns(r run) []svg.Run {
 }
 
 func (j *job) deviationChart(head svg.Head) svg.DeviationChart {
-	w, u := j.cam.Omega(), j.spec.Units.Short()
+	w, u := j.cam.Omega(), j.cam.LiftUnit()
 	c := svg.DeviationChart{Head: head, Chord: j.chord, DesignPeak: j.cam.Peaks().A * w * w, AccelerationUnit: u + "/s²", Events: j.events()}
 	shown := []written{j.outline.paths[0]}
 	for _, p := range j.programs {
@@ -133,7 +173,7 @@ func (j *job) followerGates(e follow.Error) {
 			"largest acceleration error of the follower on any written path, as a share of the design's peak; blocks were added down to the smallest tolerance the grid allows; take more decimals or accept a larger share")
 	}
 	if t.VelocityStep != nil {
-		j.add("velocity-step", e.VelocityStep*w, *t.VelocityStep, j.spec.Units.Short()+"/s", e.VelocityStepAt,
+		j.add("velocity-step", e.VelocityStep*w, *t.VelocityStep, j.cam.LiftUnit()+"/s", e.VelocityStepAt,
 			"largest velocity step of the follower at a joint of any written path; take arcs instead of lines, or more decimals")
 	}
 }

@@ -3,6 +3,7 @@ package pack
 import (
 	"errors"
 	"fmt"
+	"math"
 	"sync"
 
 	"lobewright/export/dxf"
@@ -128,10 +129,15 @@ func (j *job) proveOutline(drawing dxf.Drawing, data []byte) (*outline, error) {
 	if err := sameDrawing(drawing, file); err != nil {
 		return nil, fmt.Errorf("%s: %w", o.name, err)
 	}
-	for _, c := range []struct {
+	type layer struct {
 		layer, curve string
 		exact        *synth.Curve
-	}{{dxf.LayerContour, "contour", j.cam.Contour()}, {dxf.LayerPitchCurve, "pitch curve", j.cam.Pitch()}} {
+	}
+	layers := []layer{{dxf.LayerContour, "contour", j.cam.Contour()}}
+	if j.cam.HasPitchCurve() {
+		layers = append(layers, layer{dxf.LayerPitchCurve, "pitch curve", j.cam.Pitch()})
+	}
+	for _, c := range layers {
 		w, err := j.proveLayer(o.name, file, c.layer, c.curve, c.exact)
 		if err != nil {
 			return nil, err
@@ -182,6 +188,9 @@ func (j *job) floor(exact *synth.Curve) *int {
 // drawing composes the DXF.
 func (j *job) drawing(contour, pitch chain.Path) (dxf.Drawing, error) {
 	s := j.spec
+	if !j.cam.HasPitchCurve() {
+		pitch = nil
+	}
 	d := dxf.Drawing{Inch: s.Units == spec.Inch, Version: dxf.Version(j.opt.DXF)}
 	for _, c := range []struct {
 		layer string
@@ -252,8 +261,13 @@ func (j *job) marks(d *dxf.Drawing) {
 // extent returns the least and the largest radius of the pitch curve, near enough
 // for a layout.
 func (j *job) extent() (least, most float64) {
-	least = j.cam.Prime()
-	return least, least + j.cam.Cycle().MaxLift()
+	least = math.Inf(1)
+	for deg := range 360 {
+		zone, t := j.cam.Cycle().Zone(float64(deg))
+		r := j.cam.Pitch().At(zone, t).P.Radius()
+		least, most = math.Min(least, r), math.Max(most, r)
+	}
+	return least, most
 }
 
 func (j *job) rotation() string {
@@ -276,7 +290,7 @@ func (j *job) outlineNotes() []string {
 		title,
 		"All lengths in " + string(s.Units) + ", true scale.",
 		"Seen on the marked face (Z0). Camshaft turns " + j.rotation() + ".",
-		fmt.Sprintf("Contour within %g %s of the exact cam for a roller of diameter %g.", j.chord, s.Units.Short(), s.Follower.RollerDiameter),
+		fmt.Sprintf("Contour within %g %s of the exact cam for a %s.", j.chord, s.Units.Short(), j.followerText()),
 		"Verify units, turning direction and datum before cutting.",
 	}
 }

@@ -79,7 +79,8 @@ func (j *job) finish() (*Pack, error) {
 func (j *job) report(released bool) sheet.Report {
 	s := j.spec
 	r := sheet.Report{
-		Tool: j.opt.Tool, Part: s.Part, Title: s.Title, Revision: s.Revision, Units: string(s.Units), SpecSHA256: s.SHA256, Released: released,
+		LiftUnit: j.liftUnit(),
+		Tool:     j.opt.Tool, Part: s.Part, Title: s.Title, Revision: s.Revision, Units: string(s.Units), SpecSHA256: s.SHA256, Released: released,
 		Camshaft: sheet.Camshaft{Speed: s.Camshaft.Speed, Rotation: j.rotation()},
 		Facts:    j.facts(), Gates: sheet.Gates(j.gates), Findings: sheet.Findings(j.findings),
 		Contour: j.contourFacts(), Motion: j.motionFacts(), Budget: j.budgetFacts(),
@@ -112,16 +113,15 @@ func (j *job) facts() []sheet.Fact {
 	add := func(name, format string, args ...any) {
 		f = append(f, sheet.Fact{Name: name, Text: fmt.Sprintf(format, args...)})
 	}
-	side := "on the axis's line"
-	if s.Follower.Offset > 0 {
-		side = fmt.Sprintf("offset %g %s to the left (+Y), looking along the lift", s.Follower.Offset, u)
-	} else if s.Follower.Offset < 0 {
-		side = fmt.Sprintf("offset %g %s to the right (-Y), looking along the lift", -s.Follower.Offset, u)
-	}
 	add("Camshaft", "%g rpm, %s as seen on the marked face", s.Camshaft.Speed, j.rotation())
-	add("Follower", "translating roller of diameter %g %s, %s", s.Follower.RollerDiameter, u, side)
+	add("Follower", "%s, %s", j.followerText(), j.placeText())
+	if stroke := j.cam.Stroke(); stroke > 0 {
+		add("Stroke", "%.6g %s of the roller center along its arc, for %.6g deg of swing", stroke, u, j.cam.Cycle().MaxLift())
+	}
 	add("Base circle", "radius %g %s", s.Cam.BaseRadius, u)
-	add("Prime circle", "radius %g %s", j.cam.Prime(), u)
+	if j.cam.HasPitchCurve() {
+		add("Prime circle", "radius %g %s", j.cam.Prime(), u)
+	}
 	add("Thickness", "%g %s", s.Cam.Thickness, u)
 	if b := s.Cam.Bore; b != nil {
 		text := fmt.Sprintf("diameter %g %s %s", b.Diameter, u, b.Fit)

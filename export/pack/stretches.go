@@ -37,7 +37,7 @@ func (j *job) stretches() []svg.Event {
 }
 
 func (j *job) stretch(z motion.Zone) string {
-	u := j.spec.Units.Short()
+	u := j.cam.LiftUnit()
 	switch {
 	case j.spec.Motion.Table != nil:
 		return "smoothed from the table"

@@ -83,7 +83,7 @@ func (j *job) inspectionTable() ([]byte, error) {
 		p, k := pitch.At(s.zone, s.t), contour.At(s.zone, s.t)
 		rows = append(rows, table.InspectionRow{
 			CamAngle: s.angle, Lift: j.cam.LiftIn(s.zone, s.t).S,
-			CenterX: p.P.X, CenterY: p.P.Y, ContourX: k.P.X, ContourY: k.P.Y,
+			CenterX: p.P.X, CenterY: p.P.Y, NoCenter: !j.cam.HasCenter(), ContourX: k.P.X, ContourY: k.P.Y,
 			Radius: k.P.Radius(), PolarAngle: k.P.PolarAngle(),
 			NormalAngle:       plane.Wrap360(j.outward(k).Angle().Deg()),
 			PressureAngle:     j.cam.PressureAngleIn(s.zone, s.t).Deg(),

@@ -15,7 +15,8 @@ type Report struct {
 	Part       string `json:"part"`
 	Title      string `json:"title"`
 	Revision   string `json:"revision"`
-	Units      string `json:"units"` // "mm" or "inch"
+	Units      string `json:"units"`               // "mm" or "inch"
+	LiftUnit   string `json:"lift_unit,omitempty"` // "deg" of a swinging follower: the unit of lifts; else that of lengths
 	SpecSHA256 string `json:"spec_sha256"`
 	Released   bool   `json:"released"`
 

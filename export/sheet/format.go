@@ -80,6 +80,14 @@ func size(n int) string {
 	return fmt.Sprintf("%.1f kB", float64(n)/1000)
 }
 
+// liftUnit is the unit of lifts as it follows a number: deg of a swinging follower.
+func (r Report) liftUnit() string {
+	if r.LiftUnit != "" {
+		return r.LiftUnit
+	}
+	return r.short()
+}
+
 // short is the unit of length as it follows a number.
 func (r Report) short() string {
 	if r.Units == "inch" {

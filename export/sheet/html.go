@@ -57,6 +57,7 @@ func functions(r Report) template.FuncMap {
 	return template.FuncMap{
 		"verdict":  r.verdict,
 		"unit":     r.short,
+		"liftunit": r.liftUnit,
 		"failed":   r.failed,
 		"plain":    plain,
 		"value":    func(v float64) string { return sig(v, valueFigures) },

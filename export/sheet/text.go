@@ -178,7 +178,7 @@ func (t *summary) follower(f *Follower) {
 	if f == nil {
 		return
 	}
-	u := t.r.short()
+	u := t.r.liftUnit()
 	t.row("follower lift error", sig(f.Lift, errorFigures)+" "+u)
 	t.row("velocity error", fmt.Sprintf("%s %s/s, step at a joint %s %s/s", sig(f.Velocity, errorFigures), u,
 		sig(f.VelocityStep, errorFigures), u))

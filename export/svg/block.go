@@ -58,6 +58,9 @@ func (g *drawing) standing() []string {
 	if g.d.Thickness > 0 {
 		ns = append(ns, "Thickness "+g.len(g.d.Thickness)+" "+g.unitWord()+".")
 	}
+	if g.d.Follower != "" {
+		ns = append(ns, "Follower: "+g.d.Follower+".")
+	}
 	ns = append(ns, "Angles at ticks are cam angles, counted against the turning direction from the zero mark. "+
 		"Other angles are polar angles, counterclockwise from +X (right).")
 	return append(ns, g.d.Notes...)

@@ -264,8 +264,15 @@ func (g *drawing) followerCallouts() []callout {
 	cs := []callout{zero, {lines: []string{"CAM TURNS", word}, at: plane.Polar(r, plane.Degrees(mid)), away: mid}}
 	reach := g.reach()
 	if g.d.RollerDiameter > 0 {
-		cs = append(cs, callout{lines: []string{"ROLLER Ø" + g.len(g.d.RollerDiameter), "AT LIFT 0"},
+		text := g.d.RollerText
+		if text == "" {
+			text = "ROLLER Ø" + g.len(g.d.RollerDiameter)
+		}
+		cs = append(cs, callout{lines: []string{text, "AT LIFT 0"},
 			at: g.d.Roller, round: g.d.RollerDiameter / 2, away: 35})
+	}
+	if g.d.Swings {
+		return cs
 	}
 	return append(cs, callout{lines: g.followerLine(), at: plane.Point{X: reach + 3/g.v.k, Y: g.d.Offset}, away: -35})
 }

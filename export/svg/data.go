@@ -37,7 +37,10 @@ type DrawingData struct {
 	BaseRadius      float64      // length
 	RollerDiameter  float64      // length, 0 when the follower has no roller
 	Roller          plane.Point  // roller center at lift 0, as at cam angle 0: (sqrt((Rb+r)²-offset²), offset)
+	RollerText      string       // what the circle at lift 0 is; empty for ROLLER and its diameter
 	Offset          float64      // length, distance of the follower's line from the axis, positive to +Y
+	Swings          bool         // the follower swings about a pivot: it has no line
+	Follower        string       // a note that says what the follower is and where it stands; may be empty
 	Profile         float64      // length, total width of the profile zone
 	Bore            *Bore        // nil when there is none
 	Holes           []Hole

@@ -31,10 +31,10 @@ func (r *reader) checkBody(s *Spec) {
 	if b := c.Bore; b != nil && b.Keyway != nil && r.ok("cam.bore.diameter", "cam.bore.keyway.width") && b.Keyway.Width >= b.Diameter {
 		r.faultAt("cam.bore.keyway.width", Fault{Found: figure(b.Keyway.Width), Allowed: "a keyway narrower than the bore, whose diameter is " + figure(b.Diameter)})
 	}
-	prime := c.BaseRadius + s.Follower.RollerDiameter/2
-	if r.ok("follower.offset", "follower.roller_diameter", "cam.base_radius") && math.Abs(s.Follower.Offset) >= prime {
+	prime := c.BaseRadius + s.Follower.RollerDiameter/2 + s.Follower.FaceRadius
+	if r.ok("follower", "cam.base_radius") && math.Abs(s.Follower.Offset) >= prime {
 		r.faultAt("follower.offset", Fault{Found: figure(s.Follower.Offset),
-			Allowed: "an offset smaller than the prime radius (base radius and roller radius), which is " + figure(prime)})
+			Allowed: "an offset smaller than the prime radius (base radius and roller or face radius), which is " + figure(prime)})
 	}
 }
 

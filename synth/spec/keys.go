@@ -69,19 +69,42 @@ func camshaftTable() table[Camshaft] {
 	}}
 }
 
+// Kinds of followers, by what they have.
+const (
+	transRoller = "translating-roller"
+	transKnife  = "translating-knife"
+	mushroom    = "translating-mushroom"
+	transFlat   = "translating-flat"
+	swingRoller = "swinging-roller"
+	swingFlat   = "swinging-flat"
+)
+
 func followerTable(v Vocabulary) table[Follower] {
 	return table[Follower]{what: "a follower", place: func(f *Follower, p Place) { f.Place = p },
 		kinds: v.Followers, name: "kind", kind: byKey("kind", v.Followers, everyFollower()),
-		absent: []absent{{name: "face_radius", of: "translating-mushroom"}, {name: "head_diameter", of: "translating-mushroom"},
-			{name: "face_width", of: "translating-flat"}, {name: "arm_length", of: "swinging-roller"},
-			{name: "pivot_distance", of: "swinging-roller and swinging-flat"}, {name: "side", of: "swinging-roller and swinging-flat"},
-			{name: "face_offset", of: "swinging-flat"}, {name: "face", of: "swinging-flat"}},
 		fields: []field[Follower]{
 			kindKey("kind", "kind of follower", v.Followers, func(f *Follower, w string) { f.Kind = w }),
-			number("roller_diameter", "diameter of the roller, length", length(), func(f *Follower) *float64 { return &f.RollerDiameter }).required(),
+			number("roller_diameter", "diameter of the roller, length", length(), func(f *Follower) *float64 { return &f.RollerDiameter }).of(transRoller, swingRoller).required(),
+			number("face_radius", "radius of the mushroom's spherical face, length", length(), func(f *Follower) *float64 { return &f.FaceRadius }).of(mushroom).required(),
+			number("head_diameter", "diameter of the mushroom's head, length; contact stays within it", length(), func(f *Follower) *float64 { return &f.HeadDiameter }).of(mushroom).required(),
+			number("face_width", "width of the face across the follower's line, length, centered on it", length(), func(f *Follower) *float64 { return &f.FaceWidth }).of(transFlat).required(),
 			number("offset", "distance of the follower's line from the camshaft axis, length, positive towards +Y, default 0", eitherWay(),
-				func(f *Follower) *float64 { return &f.Offset }),
+				func(f *Follower) *float64 { return &f.Offset }).of(transRoller, transKnife, mushroom),
+			number("arm_length", "from the pivot to the roller's center, length", length(), func(f *Follower) *float64 { return &f.ArmLength }).of(swingRoller).required(),
+			number("pivot_distance", "from the camshaft axis to the pivot, which lies on +X, length", length(), func(f *Follower) *float64 { return &f.PivotDistance }).of(swingRoller, swingFlat).required(),
+			choice("side", "side of the center line the follower touches the cam on, default above (+Y)", []string{"above", "below"}, nil,
+				func(f *Follower, w string) { f.Below = w == "below" }).of(swingRoller, swingFlat),
+			number("face_offset", "from the pivot to the face's line, length, positive towards the cam, default 0", eitherWay(),
+				func(f *Follower) *float64 { return &f.FaceOffset }).of(swingFlat),
+			child("face", "the face, along its line from the foot of the pivot", faceTable(), func(f *Follower) *Face { return &f.Face }).of(swingFlat).required(),
 		}}
+}
+
+func faceTable() table[Face] {
+	return table[Face]{what: "a face", fields: []field[Face]{
+		number("from", "where the face begins, length from the foot of the pivot towards the cam", eitherWay(), func(f *Face) *float64 { return &f.From }).required(),
+		number("to", "where the face ends, length from the foot of the pivot towards the cam", eitherWay(), func(f *Face) *float64 { return &f.To }).required(),
+	}}
 }
 
 func camTable(v Vocabulary) table[Cam] {
@@ -128,7 +151,7 @@ func holeTable() table[Hole] {
 
 func limitsTable() table[Limits] {
 	return table[Limits]{what: "limits", fields: []field[Limits]{
-		number("pressure_angle", "largest pressure angle where the follower moves, degrees, default 30", pressure(), func(l *Limits) *float64 { return &l.PressureAngle }),
+		number("pressure_angle", "largest pressure angle where the follower moves, degrees, default 30 for translating and 35 for swinging followers", pressure(), func(l *Limits) *float64 { return &l.PressureAngle }),
 		optional("pressure_angle_return", "largest pressure angle of the falls, degrees; not gated when left out", pressure(), func(l *Limits) **float64 { return &l.PressureAngleReturn }),
 		optional("radius_of_curvature", "least convex radius of the contour, length", length(), func(l *Limits) **float64 { return &l.RadiusOfCurvature }),
 		optional("velocity", "largest follower velocity, length/s", rate("s"), func(l *Limits) **float64 { return &l.Velocity }),

@@ -13,8 +13,11 @@ import (
 	"go.yaml.in/yaml/v3"
 )
 
-// defaultPressureAngle in degrees, for translating followers: common practice, no source.
-const defaultPressureAngle = 30
+// Default pressure angles in degrees: common practice, no source.
+const (
+	defaultPressureAngle = 30.0 // translating followers
+	defaultSwingAngle    = 35.0 // swinging followers
+)
 
 // Read reads a spec. The file's name is only used in messages. The spec comes
 // back complete: defaults filled in, times and rest turned into degrees, SHA256
@@ -31,7 +34,6 @@ func Read(file string, data []byte, v Vocabulary) (*Spec, error) {
 	r := &reader{file: file, vocabulary: v, places: map[string]spot{}}
 	sum := sha256.Sum256(data)
 	s := &Spec{File: file, SHA256: hex.EncodeToString(sum[:]),
-		Limits:    Limits{PressureAngle: defaultPressureAngle},
 		Tolerance: Tolerance{Combine: "fixed+rss"},
 		Control:   Control{BlockNumbers: true},
 	}
@@ -45,8 +47,14 @@ func Read(file string, data []byte, v Vocabulary) (*Spec, error) {
 	return s, nil
 }
 
-// defaults fills in what depends on the unit of length.
+// defaults fills in what depends on the unit of length or the kind of follower.
 func defaults(s *Spec) {
+	if s.Limits.PressureAngle == 0 {
+		s.Limits.PressureAngle = defaultPressureAngle
+		if s.Follower.Swings() {
+			s.Limits.PressureAngle = defaultSwingAngle
+		}
+	}
 	decimals, mismatch, safe := 3, 0.002, 5.0
 	if s.Units == Inch {
 		decimals, mismatch, safe = 4, 0.0002, 0.2

@@ -118,13 +118,28 @@ type Law struct {
 	Place                  Place
 }
 
-// Follower is the follower; this version knows Kind "translating-roller".
+// Follower is the follower; what a kind has not is 0.
 type Follower struct {
 	Kind           string
 	RollerDiameter float64 // length
+	FaceRadius     float64 // length, of a mushroom
+	HeadDiameter   float64 // length, of a mushroom
+	FaceWidth      float64 // length, of a translating flat face
 	Offset         float64 // length, positive towards +Y
+	ArmLength      float64 // length, pivot to roller center
+	PivotDistance  float64 // length, camshaft axis to pivot
+	Below          bool    // a swinging follower touches the cam below the center line
+	FaceOffset     float64 // length, pivot to the line of a swinging face, positive towards the cam
+	Face           Face    // of a swinging face
 	Place          Place
 }
+
+// Face is a stretch of a swinging face's line, length from the foot of the pivot towards
+// the cam.
+type Face struct{ From, To float64 }
+
+// Swings reports whether lifts are degrees of swing.
+func (f Follower) Swings() bool { return f.Kind == swingRoller || f.Kind == swingFlat }
 
 // Cam is the body of the cam; this version knows Kind "plate".
 type Cam struct {

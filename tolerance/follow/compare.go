@@ -43,24 +43,32 @@ const (
 	inside = 1e-9
 	// dot is the length, as a share of the radius, below which an element is passed over.
 	dot = 1e-10
-	// closing is how far, in degrees, a path may miss one turn about the camshaft.
+	// closing is how far, in degrees, a path may miss one turn about the camshaft, and its
+	// end its start, as a share of the radius.
 	closing = 1e-6
 )
 
-// Compare runs the follower over the closed path of its roller center (either
-// direction) and compares with the designed lift, whose cam angle goes from t0 to
-// t0+360. junctions are the cam angles, degrees, at which the design's acceleration
+// Follower is what can be run over a path: a Roller, or any kind given by its Linkage.
+type Follower interface {
+	stretch(e chain.Element) (stretch, bool)
+	at(s stretch, theta float64) (lift, v, a float64, ok bool)
+	closing() float64 // how far, in degrees, a path may miss one turn about the camshaft
+}
+
+// Compare runs the follower over a closed path of its base curve: of a roller the path
+// of its center, under a flat face the contour (either direction). It compares with the
+// designed lift, whose cam angle goes from t0 to t0+360. junctions are the cam angles, degrees, at which the design's acceleration
 // steps. The samples are in order of cam angle. Peaks are found among 17 samples an
 // element and refined by a parabola: not a bound, but within a thousandth on arcs.
 //
 // Errors: a path that is empty or open, that does not go once about the camshaft,
 // or on which the follower would have to turn back.
-func (r Roller) Compare(pitch chain.Path, lift Lift, t0 float64, junctions ...float64) (Error, []Sample, error) {
-	path, err := r.walk(pitch)
+func Compare(r Follower, pitch chain.Path, lift Lift, t0 float64, junctions ...float64) (Error, []Sample, error) {
+	path, err := walk(r, pitch)
 	if err != nil {
 		return Error{}, nil, err
 	}
-	c := comparison{roller: r, lift: lift, t0: t0}
+	c := comparison{follower: r, lift: lift, t0: t0}
 	for i, s := range path {
 		for _, part := range parts(s, junctions) {
 			c.over(s, part[0], part[1])
@@ -73,7 +81,7 @@ func (r Roller) Compare(pitch chain.Path, lift Lift, t0 float64, junctions ...fl
 
 // walk prepares the elements in order of growing cam angle, and checks that they go
 // round once.
-func (r Roller) walk(pitch chain.Path) ([]stretch, error) {
+func walk(r Follower, pitch chain.Path) ([]stretch, error) {
 	if len(pitch) == 0 {
 		return nil, fmt.Errorf("follower on a path: the path is empty")
 	}
@@ -96,7 +104,7 @@ func (r Roller) walk(pitch chain.Path) ([]stretch, error) {
 		}
 		out, sum = append(out, s), sum+s.extent
 	}
-	if math.Abs(sum-360) > closing {
+	if math.Abs(sum-360) > r.closing() {
 		return nil, fmt.Errorf("follower on a path: it goes %.6g degrees about the camshaft; it must go 360 once", sum)
 	}
 	return out, nil
@@ -131,11 +139,11 @@ func parts(s stretch, junctions []float64) [][2]float64 {
 
 // comparison gathers the samples and the peaks.
 type comparison struct {
-	roller  Roller
-	lift    Lift
-	t0      float64
-	samples []Sample
-	most    Error
+	follower Follower
+	lift     Lift
+	t0       float64
+	samples  []Sample
+	most     Error
 }
 
 // wrap brings a cam angle into t0 <= t < t0+360.
@@ -150,7 +158,7 @@ func (c *comparison) wrap(t float64) float64 {
 // sample returns the error at cam angle t on the stretch.
 func (c *comparison) sample(s stretch, t float64) Sample {
 	at := c.wrap(t)
-	lift, v, a, _ := c.roller.at(s, t)
+	lift, v, a, _ := c.follower.at(s, t)
 	ds, dv, da := c.lift(at)
 	return Sample{at, lift - ds, v - dv, a - da}
 }
@@ -194,8 +202,8 @@ func (c *comparison) take(x Sample) {
 
 // joint raises the largest velocity step by the one from a stretch to the next.
 func (c *comparison) joint(before, after stretch) {
-	_, v, _, _ := c.roller.at(before, after.from)
-	_, w, _, _ := c.roller.at(after, after.from)
+	_, v, _, _ := c.follower.at(before, after.from)
+	_, w, _, _ := c.follower.at(after, after.from)
 	raise(&c.most.VelocityStep, &c.most.VelocityStepAt, w-v, c.wrap(after.from))
 }
 

@@ -12,7 +12,7 @@ import (
 
 func compare(t *testing.T, r follow.Roller, p chain.Path, l follow.Lift, junctions ...float64) (follow.Error, []follow.Sample) {
 	t.Helper()
-	e, s, err := r.Compare(p, l, -50, junctions...)
+	e, s, err := follow.Compare(r, p, l, -50, junctions...)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -128,7 +128,7 @@ func TestCentersOfCutLines(t *testing.T) {
 	if len(p) != 3*n {
 		t.Errorf("%d elements, want %d lines and %d rounds", len(p), 2*n, n)
 	}
-	if _, _, err := (follow.Roller{Datum: 56, Clockwise: true}).Compare(p, dwell, 0); err != nil {
+	if _, _, err := follow.Compare(follow.Roller{Datum: 56, Clockwise: true}, p, dwell, 0); err != nil {
 		t.Error(err)
 	}
 }
@@ -308,7 +308,7 @@ func TestCompareErrors(t *testing.T) {
 		"degrees about":  append(append(chain.Path{}, whole...), whole...),
 		"would have to ": beside,
 	} {
-		if _, _, err := c.roller().Compare(p, dwell, 0); err == nil || !strings.Contains(err.Error(), want) {
+		if _, _, err := follow.Compare(c.roller(), p, dwell, 0); err == nil || !strings.Contains(err.Error(), want) {
 			t.Errorf("want an error with %q, got %v", want, err)
 		}
 	}

@@ -1,4 +1,4 @@
-// Package follow says what a translating roller does on a written path of lines
+// Package follow says what a follower does on a written path of lines
 // and arcs: its lift, velocity and acceleration, and how far they are from the
 // design.
 //
@@ -81,6 +81,8 @@ func (s stretch) holds(theta float64) bool {
 	past := plane.Wrap360(theta - s.from)
 	return past <= s.extent+angleSlack || past >= 360-angleSlack
 }
+
+func (r Roller) closing() float64 { return closing }
 
 // stretch prepares an element; false where a point of it never comes to the
 // follower's line, or where the path runs along that line.

@@ -128,9 +128,6 @@ func (c *Cam) faceUndercut() gate.Gate {
 	return g
 }
 
-// stays says what an undercut cam would do to the follower.
-func (c *Cam) stays() string { return "" }
-
 func (c *Cam) radiusGate() *gate.Gate {
 	if c.spec.Limits.RadiusOfCurvature == nil {
 		return nil

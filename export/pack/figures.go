@@ -96,7 +96,7 @@ func (j *job) drawingData(head svg.Head) svg.DrawingData {
 }
 
 // shape is a curve for drawing: what was proven, or for a cam that cannot be
-// written the curve at every half degree.
+// written the curve at every half degree, of an undercut contour what would be left of it.
 func (j *job) shape(c *synth.Curve) chain.Path {
 	if j.outline != nil {
 		for _, w := range j.outline.paths {
@@ -106,6 +106,14 @@ func (j *job) shape(c *synth.Curve) chain.Path {
 		}
 	}
 	var p chain.Path
+	if c.Left() == j.cam.Contour().Left() {
+		if left, ok := j.cam.Shortfall(); ok { // what would really be cut
+			for i, q := range left.Trimmed {
+				p = append(p, chain.Element{Kind: chain.Line, From: q, To: left.Trimmed[(i+1)%len(left.Trimmed)]})
+			}
+			return p
+		}
+	}
 	const step = 0.5
 	at := func(deg float64) plane.Point {
 		zone, t := j.cam.Cycle().Zone(deg)

@@ -3,8 +3,9 @@
 // The problem: the walls that a roller touches along its whole length. The obvious way,
 // the parallel of the developed pitch curve, is right at no depth: the roller's
 // cross-section is a circle in the plane tangent to the cylinder, not on the cylinder,
-// and the direction of travel changes with depth. At 27° of pressure angle on a
-// cylinder of 50 with a roller of 16 the parallel is 0.013 off.
+// and the direction of travel changes with depth. For a pressure angle of 27° on a
+// cylinder of radius 50 and a roller of radius 8 the parallel is 0.0014 off at the outer
+// radius; carried inwards along radial lines it is 0.42 off at radius 40.
 //
 // The method is the conjugate condition: at a distance z along its axis the roller is
 // touched where its normal is square to its velocity seen from the cam, which there is
@@ -12,10 +13,9 @@
 //
 //	across the axis t = ∓ r sin a, along it s ± r cos a
 //
-// the upper sign for the wall on the +Y side (H. A. Rothbart, ed., Cam Design Handbook,
-// McGraw-Hill 2004, has the flat pattern only; the conjugate condition is that of any text
-// on gearing, e.g. F. L. Litvin, Gear Geometry and Applied Theory, 1994, cited from
-// memory). That point is at the distance R = √(z² + t²) from the camshaft axis. What is
+// the upper sign for the wall on the +Y side (the condition of any text on gearing, e.g.
+// F. L. Litvin, Gear Geometry and Applied Theory, Prentice Hall 1994, cited from memory).
+// That point is at the distance R = √(z² + t²) from the camshaft axis. What is
 // drawn, cut and measured is the wall at a given R, so z is eliminated: with
 // u = z² + s'²
 //

@@ -43,8 +43,9 @@ func (f TranslatingFlat) SupportI(deg, lift taylor.I) (p, phi taylor.I) {
 	return flatSupport(f, deg, lift)
 }
 
-// F returns the contour: (Rb + s) along the normal, ds/dθ beside it (H. A. Rothbart, ed.,
-// Cam Design Handbook, McGraw-Hill 2004, chapter 7; any textbook). One order is lost.
+// F returns the contour: (Rb + s) along the normal, ds/dθ beside it (any textbook, e.g. H. H.
+// Mabie and C. F. Reinholtz, Mechanisms and Dynamics of Machinery, Wiley 1987, cited from
+// memory). One order is lost.
 func (f TranslatingFlat) F(deg, lift taylor.F) (x, y taylor.F) { return Contour(f.SupportF(deg, lift)) }
 
 // I encloses what F computes; its order is one less than that of lift.

@@ -6,8 +6,9 @@
 // But while the follower is on an arc, the arc's center is a point fixed in the cam:
 // cam and follower are a slider-crank, a four-bar, a Scotch yoke or an inverted
 // slider-crank, with closed forms; and for lift, velocity and acceleration at an
-// instant any curve is its osculating circle (any text on kinematics, e.g. J. S.
-// Beggs, Kinematics, 1983, under equivalent mechanisms; cited from memory).
+// instant any curve is its osculating circle (any text on kinematics under equivalent
+// linkages, e.g. J. E. Shigley and J. J. Uicker, Theory of Machines and Mechanisms, cited
+// from memory).
 //
 // The obvious center and radius fail where the curve is straight. An arc is therefore
 // given as a frame: a point A, a unit tangent T and the curvature k, and a point p is on

@@ -91,7 +91,7 @@ func (f SwingingFlat) Contact(lift, slope float64) float64 {
 // face's offset and l the contact along the face; 0 for a face through its pivot. It is
 // positive when the side force pushes towards the cam's turning direction: with f > 0,
 // above the center line of a cam that turns clockwise, below one that turns
-// counterclockwise. Lift in degrees, slope in degrees a radian.
+// counterclockwise. It is 0 where Contact is +Inf. Lift in degrees, slope in degrees a radian.
 func (f SwingingFlat) PressureAngle(lift, slope float64) plane.Angle {
 	return plane.Angle(math.Atan2(f.Sense()*side(f.Above)*f.FaceOffset, f.Contact(lift, slope)))
 }

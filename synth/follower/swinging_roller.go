@@ -41,9 +41,9 @@ func opposite(a, b, c float64) float64 {
 }
 
 // tip is the roller center in the cam frame: from the turned pivot, at distance C, one
-// arm's length back, ψ off the center line (formulas of chapter 7 of H. A. Rothbart,
-// ed., Cam Design Handbook, McGraw-Hill 2004, written as two vectors, which keeps
-// enclosures tight).
+// arm's length back, ψ off the center line (any textbook, e.g. F. Y. Chen, Mechanics and
+// Design of Cam Mechanisms, Pergamon 1982, cited from memory; written as the sum of two
+// vectors, which keeps enclosures tight).
 func tip[T taylor.Scalar[T]](f SwingingRoller, deg, lift T) (x, y T) {
 	turn := deg.Radians().Scale(f.Sense())
 	psi := lift.Radians().Add(lift.Of(f.Rest))

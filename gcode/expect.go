@@ -54,7 +54,15 @@ func Expected(part Part, op Operation, m Machine, eps float64) Expect {
 		}
 		return x
 	}
+	if op.Process == Slot {
+		for _, z := range slotDepths(part, op, g) {
+			x.Cuts = append(x.Cuts, Cut{Z: float64(z) / float64(counts(g, 1))})
+		}
+	}
 	for i, c := range op.centers() {
+		if op.Process == Slot {
+			break
+		}
 		for _, z := range depths(part, op, g, i) {
 			x.Cuts = append(x.Cuts, Cut{c, writtenOffset(op.Compensation, c, op.radius()), float64(z) / float64(counts(g, 1))})
 		}

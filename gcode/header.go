@@ -27,9 +27,12 @@ func header(part Part, op Operation, m Machine) []string {
 		arcText(m),
 	)
 	h = append(h, body(part, m)...)
-	if op.Process == Wire {
+	switch op.Process {
+	case Wire:
 		h = append(h, wireText(part, op, m)...)
-	} else {
+	case Slot:
+		h = append(h, slotText(part, op, m)...)
+	default:
 		h = append(h, millText(part, op, m)...)
 	}
 	for _, r := range registers(op) {
@@ -88,6 +91,18 @@ func millText(part Part, op Operation, m Machine) []string {
 		h = append(h, "NOT FINISHED. "+m.text(last)+" IS LEFT ON THE CONTOUR")
 	}
 	return h
+}
+
+func slotText(part Part, op Operation, m Machine) []string {
+	return []string{
+		fmt.Sprintf("TOOL T%d DIAMETER %s RIGHT-HAND, CUTS OVER CENTER", op.Tool, m.text(op.ToolDiameter)),
+		"THE GROOVE IS AS WIDE AS THE TOOL. MEASURE IT AND ITS RUNOUT",
+		"Z0 TOP OF BLANK. SAFE Z " + m.text(m.SafeZ),
+		fmt.Sprintf("GROOVE DEPTH %s IN %d TURNS, EACH RAMPED DOWN OVER %g DEGREES", m.text(part.GrooveDepth), len(slotDepths(part, op, m.grid())), rampDegrees),
+		"TURNS GO TO AND FRO. THE TOOL CUTS BOTH WALLS AT ONCE",
+		"COMPENSATION " + compText(op),
+		"F IS THE FEED OF THE TOOL CENTER",
+	}
 }
 
 func wireText(part Part, op Operation, m Machine) []string {

@@ -41,8 +41,11 @@ func Plan(part Part, op Operation, m Machine) (Program, error) {
 	if err := validate(part, op, m); err != nil {
 		return Program{}, err
 	}
-	if op.Process == Wire {
+	switch op.Process {
+	case Wire:
 		return planWire(part, op, m)
+	case Slot:
+		return planSlot(part, op, m)
 	}
 	return planMill(part, op, m)
 }

@@ -34,8 +34,14 @@ func validate(part Part, op Operation, m Machine) error {
 		return fmt.Errorf("%d decimals: 0 to 9 can be written", m.Decimals)
 	case op.Number < 1 || op.Number > 9999:
 		return fmt.Errorf("operation number %d: 1 to 9999 can be a program number", op.Number)
-	case op.Process != Mill && op.Process != Wire:
-		return fmt.Errorf("process %q: mill and wire have programs", op.Process)
+	case op.Process != Mill && op.Process != Wire && op.Process != Slot:
+		return fmt.Errorf("process %q: mill, slot and wire have programs", op.Process)
+	case op.Process == Slot && !(part.GrooveDepth > 0 && part.GrooveDepth < maxLength):
+		return fmt.Errorf("operation %d: groove depth %g", op.Number, part.GrooveDepth)
+	case op.Process == Slot && op.Compensation != CompPath:
+		return fmt.Errorf("operation %d: compensation %q: a groove is cut on its pitch curve, with path", op.Number, op.Compensation)
+	case op.Process == Slot && (len(op.Stock) != 1 || op.Stock[0] != 0):
+		return fmt.Errorf("operation %d: stock %v: a tool of the groove's width leaves none, write [0]", op.Number, op.Stock)
 	case op.Compensation != CompPath && op.Compensation != CompWear && op.Compensation != CompControl:
 		return fmt.Errorf("operation %d: compensation %q: path, wear and control are known", op.Number, op.Compensation)
 	case op.Process == Mill && op.Direction != Climb && op.Direction != Conventional:

@@ -20,6 +20,8 @@ import (
 //     least its offset less Eps from the finished contour, and every cut does so
 //     from all of the contour, not only from the stretch it follows;
 //   - plunges and rapids below SafeZ clear contour, clamp and blank;
+//   - in a slot every feed move, the ramps among them, is within Eps of the pitch curve, no
+//     deeper than expected, and nothing else goes below SafeZ but straight up and down;
 //   - units, tool, spindle, feeds, depths, compensation, stops and end are those expected.
 //
 // Compensation is applied as NISTIR 6556 appendix B describes it: a moved element
@@ -37,9 +39,12 @@ func Verify(p *read.Program, x Expect) (Result, error) {
 	v.count()
 	v.words()
 	v.mismatches()
-	if x.Process == Wire {
+	switch x.Process {
+	case Wire:
 		v.wire()
-	} else {
+	case Slot:
+		v.slot()
+	default:
 		v.mill()
 	}
 	v.worst()

@@ -51,7 +51,7 @@ func (v *verifier) allowed(m read.Misc) bool {
 	case 0:
 		return v.x.Process == Wire
 	case 3, 5, 6:
-		return v.x.Process == Mill
+		return v.x.Process != Wire
 	case 7, 8, 9:
 		return true
 	}

@@ -40,7 +40,7 @@ func Vocabulary() spec.Vocabulary {
 	return spec.Vocabulary{
 		Laws:      motion.Names(),
 		Followers: followers(),
-		Cams:      []string{"plate"},
+		Cams:      []string{"plate", "groove"},
 		Processes: []string{"mill", "wire"},
 		ShareLaws: []string{"modified-constant-velocity"},
 
@@ -102,15 +102,38 @@ func (c *Cam) outward() float64 { return -c.follower.Sense() }
 // has none.
 func (c *Cam) Pitch() *Curve { return c.curve(0) }
 
-// Contour returns the curve that is cut.
+// Contour returns the curve that is cut: of a groove its inner wall.
 func (c *Cam) Contour() *Curve { return c.Parallel(0) }
+
+// Grooved reports whether the cam is a groove with two walls.
+func (c *Cam) Grooved() bool { return c.spec.Cam.Kind == "groove" }
+
+// inset is how far the contour lies inside the base curve: the roller's radius, in a
+// groove and half the clearance.
+func (c *Cam) inset() float64 {
+	if c.Grooved() {
+		_, half := c.groove().Walls()
+		return half
+	}
+	return c.follower.Radius()
+}
+
+func (c *Cam) groove() follower.Groove {
+	return follower.Groove{Kind: c.follower, Clearance: c.spec.Cam.Clearance}
+}
+
+// GrooveWidth returns the width of the groove, length.
+func (c *Cam) GrooveWidth() float64 { return 2 * c.inset() }
+
+// OuterWall returns the outer wall of a groove.
+func (c *Cam) OuterWall() *Curve { return c.curve(c.outward() * c.inset()) }
 
 // Parallel returns the curve at a distance outside the contour, length.
 func (c *Cam) Parallel(outside float64) *Curve { return c.curve(c.LeftOfPitch(outside)) }
 
 // LeftOfPitch turns a distance outside the contour into one to the left of the pitch curve's travel.
 func (c *Cam) LeftOfPitch(outside float64) float64 {
-	return c.outward() * (outside - c.follower.Radius())
+	return c.outward() * (outside - c.inset())
 }
 
 // OutsideIsLeft reports whether the outside of the cam lies to the left of travel with growing cam angle.

@@ -21,6 +21,9 @@ func (c *Cam) Gates() []gate.Gate {
 		g = append(g, *r)
 	}
 	g = append(g, c.motionGates()...)
+	if c.Grooved() {
+		g = append(g, c.grooveGates()...)
+	}
 	g = append(g, c.wallGate(), c.datumGate())
 	if b := c.blankGate(); b != nil {
 		g = append(g, *b)
@@ -75,11 +78,14 @@ func (c *Cam) steepest(way int) place {
 }
 
 func (c *Cam) pressureGate() gate.Gate {
-	p, limit := c.steepest(1), c.spec.Limits.PressureAngle
+	p, limit, what := c.steepest(1), c.spec.Limits.PressureAngle, "rises"
+	if fall := c.steepest(-1); c.Grooved() && fall.value > p.value { // a groove drives both ways
+		p, what = fall, "falls"
+	}
 	return gate.Gate{
 		ID: "pressure-angle", Value: p.value, Limit: limit, Unit: "deg",
 		CamAngle: camAngle(p.t), Polar: c.polarAt(p.piece, p.t), Pass: p.value <= limit,
-		Text: "largest pressure angle of the rises; enlarge base_radius, lengthen the rise or choose a law with less peak velocity",
+		Text: "largest pressure angle of the " + what + "; enlarge base_radius, lengthen the event or choose a law with less peak velocity",
 	}
 }
 
@@ -103,7 +109,7 @@ func (c *Cam) undercutGate() gate.Gate {
 	if _, ok := c.face(); ok {
 		return c.faceUndercut()
 	}
-	d, r := c.Pitch().LeastDisc(false), c.follower.Radius()
+	d, r := c.Pitch().LeastDisc(false), c.inset()
 	why := "the pitch curve turns too sharply there"
 	if d.Neck {
 		why = fmt.Sprintf("the roller already overlaps the flank at cam angle %.2f°", camAngle(d.Other))
@@ -194,6 +200,9 @@ func (c *Cam) blankGate() *gate.Gate {
 	}
 	con := c.Contour()
 	far := con.largest(every, func(i int, t float64) float64 { return con.At(i, t).P.Radius() })
+	if r := c.spec.Cam.OutsideDiameter / 2; c.Grooved() {
+		far.value = r
+	}
 	limit := c.spec.Blank.Diameter / 2
 	return &gate.Gate{
 		ID: "blank", Value: far.value, Limit: limit, Unit: c.unit(), CamAngle: camAngle(far.t),
@@ -207,6 +216,9 @@ func (c *Cam) blankGate() *gate.Gate {
 func (c *Cam) reachGates() []gate.Gate {
 	if len(c.spec.Operations) == 0 {
 		return nil
+	}
+	if c.Grooved() {
+		return c.slotGates()
 	}
 	con := c.Contour()
 	d := con.LeastDisc(true)

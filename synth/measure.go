@@ -104,7 +104,7 @@ func (c *Cam) leastRound() (radius float64, at place) {
 	}
 	r := c.Pitch().Radii()
 	zone, t := c.cycle.Zone(r.ConvexAt)
-	return r.Convex - c.follower.Radius(), place{piece: zone, t: t}
+	return r.Convex - c.inset(), place{piece: zone, t: t}
 }
 
 // faceRound is the radius of curvature under a flat face at cam angle t, degrees.

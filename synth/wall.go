@@ -66,8 +66,11 @@ func (c *Cam) wallGate() gate.Gate {
 		}
 	}
 	con, fs := c.Contour(), c.features()
+	if c.Grooved() {
+		take(c.rim())
+	}
 	for i, f := range fs {
-		take(con.wallTo(f))
+		take(c.wallToContour(con, f))
 		for _, g := range fs[:i] {
 			d := f.circle.Center.Dist(g.circle.Center) - f.circle.Radius - g.circle.Radius
 			take(wall{d, g.name + " and " + f.name, math.NaN(), f.circle.Center.PolarAngle()})
@@ -92,6 +95,28 @@ func (c *Cam) wallGate() gate.Gate {
 		CamAngle: least.t, Polar: least.polar, Pass: least.thick > 0 && least.thick >= limit,
 		Text: "least material, between " + least.between,
 	}
+}
+
+// wallToContour returns the material between a feature and the contour; in a grooved body
+// a feature may lie outside the groove as well.
+func (c *Cam) wallToContour(con *Curve, f feature) wall {
+	w := con.wallTo(f)
+	if !c.Grooved() || w.thick > 0 {
+		return w
+	}
+	outer := c.OuterWall().wallTo(f)
+	outer.thick = -outer.thick - 2*f.circle.Radius // outside it is what lies inside a contour
+	if outer.thick > w.thick {
+		return outer
+	}
+	return w
+}
+
+// rim is the material between the groove's outer wall and the outside of the body.
+func (c *Cam) rim() wall {
+	out := c.OuterWall()
+	far := out.largest(every, func(i int, t float64) float64 { return out.At(i, t).P.Radius() })
+	return wall{c.spec.Cam.OutsideDiameter/2 - far.value, "the groove and the outside", camAngle(far.t), c.polarAt(far.piece, far.t)}
 }
 
 // wallTo returns the material between the contour and a feature inside it,

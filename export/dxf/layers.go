@@ -7,7 +7,7 @@ import (
 	"github.com/yofu/dxf/color"
 )
 
-// Layers of the outline. A program that cuts takes LayerContour alone.
+// Layers of the outline. A program that cuts takes LayerContour, or the two walls of a groove, alone.
 const (
 	LayerContour      = "CONTOUR"       // the finished profile of a plate cam
 	LayerContourInner = "CONTOUR_INNER" // inner wall of a groove

@@ -81,6 +81,10 @@ func (j *job) drawingData(head svg.Head) svg.DrawingData {
 	if j.cam.HasPitchCurve() {
 		d.PitchCurve, d.RollerDiameter, d.Roller = j.shape(j.cam.Pitch()), 2*j.cam.Follower().Radius(), j.cam.AtRest()
 	}
+	if j.cam.Grooved() {
+		d.Contours = append(d.Contours, j.shape(j.cam.OuterWall()))
+		d.Notes = append([]string{fmt.Sprintf("Groove %.6g wide, %g deep from the marked face.", j.cam.GrooveWidth(), s.Cam.GrooveDepth)}, d.Notes...)
+	}
 	zone, t := j.cam.Cycle().Zone(0)
 	d.Zero = j.cam.Contour().At(zone, t).P
 	if b := s.Cam.Bore; b != nil {

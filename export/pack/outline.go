@@ -107,7 +107,13 @@ func (j *job) tryOutline(eps float64) (*outline, error) {
 	if err != nil {
 		return nil, err
 	}
-	drawing, err := j.drawing(contour, pitch)
+	var outer chain.Path
+	if j.cam.Grooved() {
+		if outer, err = pitch.Offset(j.cam.OuterWall().Left()); err != nil {
+			return nil, err
+		}
+	}
+	drawing, err := j.drawing(contour, outer, pitch)
 	if err != nil {
 		return nil, err
 	}
@@ -134,6 +140,9 @@ func (j *job) proveOutline(drawing dxf.Drawing, data []byte) (*outline, error) {
 		exact        *synth.Curve
 	}
 	layers := []layer{{dxf.LayerContour, "contour", j.cam.Contour()}}
+	if j.cam.Grooved() {
+		layers = []layer{{dxf.LayerContourInner, "inner wall", j.cam.Contour()}, {dxf.LayerContourOuter, "outer wall", j.cam.OuterWall()}}
+	}
 	if j.cam.HasPitchCurve() {
 		layers = append(layers, layer{dxf.LayerPitchCurve, "pitch curve", j.cam.Pitch()})
 	}
@@ -185,8 +194,15 @@ func (j *job) floor(exact *synth.Curve) *int {
 	return &n
 }
 
+func (j *job) contourLayer() string {
+	if j.cam.Grooved() {
+		return dxf.LayerContourInner
+	}
+	return dxf.LayerContour
+}
+
 // drawing composes the DXF.
-func (j *job) drawing(contour, pitch chain.Path) (dxf.Drawing, error) {
+func (j *job) drawing(contour, outer, pitch chain.Path) (dxf.Drawing, error) {
 	s := j.spec
 	if !j.cam.HasPitchCurve() {
 		pitch = nil
@@ -195,7 +211,7 @@ func (j *job) drawing(contour, pitch chain.Path) (dxf.Drawing, error) {
 	for _, c := range []struct {
 		layer string
 		path  chain.Path
-	}{{dxf.LayerContour, contour}, {dxf.LayerPitchCurve, pitch}, {dxf.LayerBore, j.keywayOutline()}} {
+	}{{j.contourLayer(), contour}, {dxf.LayerContourOuter, outer}, {dxf.LayerPitchCurve, pitch}, {dxf.LayerBore, j.keywayOutline()}} {
 		if c.path == nil {
 			continue
 		}
@@ -211,6 +227,9 @@ func (j *job) drawing(contour, pitch chain.Path) (dxf.Drawing, error) {
 	d.Circles = append(d.Circles, dxf.Circle{Layer: dxf.LayerBaseCircle, Radius: s.Cam.BaseRadius})
 	if b := s.Cam.Bore; b != nil && b.Keyway == nil {
 		d.Circles = append(d.Circles, dxf.Circle{Layer: dxf.LayerBore, Radius: b.Diameter / 2})
+	}
+	if r := s.Cam.OutsideDiameter / 2; r > 0 && j.cam.Grooved() {
+		d.Circles = append(d.Circles, dxf.Circle{Layer: dxf.LayerBore, Radius: r})
 	}
 	for i := range s.Cam.Holes {
 		h := j.cam.HoleCircle(i)

@@ -8,6 +8,7 @@ import (
 	"lobewright/gcode"
 	"lobewright/gcode/read"
 	"lobewright/gcode/write"
+	"lobewright/synth"
 	"lobewright/synth/gate"
 	"lobewright/synth/plane"
 	"lobewright/synth/spec"
@@ -28,7 +29,15 @@ type program struct {
 }
 
 // short names the program within the part: "1-mill".
-func (p program) short() string { return fmt.Sprintf("%d-%s", p.index+1, p.expect.Process) }
+func (p program) short() string { return fmt.Sprintf("%d-%s", p.index+1, p.process()) }
+
+// process is the operation's own word for what it does.
+func (p program) process() gcode.Process {
+	if p.expect.Process == gcode.Slot {
+		return gcode.Mill
+	}
+	return p.expect.Process
+}
 
 // tried is what became of an operation: a program, or why there is none.
 type tried struct {
@@ -122,7 +131,7 @@ func (j *job) tryProgram(i int, eps float64) (program, error) {
 	if err != nil {
 		return program{}, err
 	}
-	name := fmt.Sprintf("%s.%d-%s.nc", j.spec.Part, i+1, op.Process)
+	name := fmt.Sprintf("%s.%d-%s.nc", j.spec.Part, i+1, j.spec.Operations[i].Process)
 	return j.proveProgram(program{index: i, name: name, plan: plan, expect: gcode.Expected(part, op, machine, j.chord)},
 		j.tampered(name, write.Program(plan)))
 }
@@ -145,7 +154,7 @@ func (j *job) proveProgram(p program, data []byte) (program, error) {
 	if j.spec.Operations[p.index].Moves == "lines" {
 		kind = chain.Line
 	}
-	exact := j.cam.Parallel(p.result.FinishOffset)
+	exact := j.toolPath(p.result.FinishOffset)
 	p.theory = fit.Theory(exact, j.chord, kind)
 	if loop, ok := oneTurn(p.result.Finish, math.Pow10(-j.spec.Control.Decimals)); ok {
 		p.finish = &written{file: p.name, curve: "last pass", exact: exact, path: loop, deviation: p.result.Deviation,
@@ -189,7 +198,10 @@ func (j *job) part(op gcode.Operation, i int) gcode.Part {
 	s := j.spec
 	p := gcode.Part{Name: s.Part, Title: s.Title, Revision: s.Revision, Inch: s.Units == spec.Inch, Thickness: s.Cam.Thickness,
 		CamClockwise: s.Camshaft.Clockwise, StartAt: j.startAt(s.Operations[i]),
-		Curve: func(offset float64) gcode.Curve { return j.cam.Parallel(offset) }}
+		Curve: func(offset float64) gcode.Curve { return j.toolPath(offset) }}
+	if j.cam.Grooved() {
+		p.GrooveDepth = s.Cam.GrooveDepth
+	}
 	if s.Blank != nil {
 		p.BlankDiameter, p.ClampRadius = s.Blank.Diameter, s.Blank.ClampRadius
 	}
@@ -207,6 +219,9 @@ func (j *job) operation(i int, eps float64) gcode.Operation {
 		Tool: o.Tool, ToolDiameter: o.ToolDiameter, SpindleSpeed: o.SpindleSpeed, PlungeFeed: o.PlungeFeed, StepDown: o.StepDown,
 		Stock: o.Stock, Direction: gcode.Direction(o.Direction), WireDiameter: o.WireDiameter, Offsets: o.Offsets,
 	}
+	if j.cam.Grooved() && op.Process == gcode.Mill {
+		op.Process = gcode.Slot
+	}
 	if o.Tab != nil {
 		op.Tab = gcode.Tab{Width: o.Tab.Width, At: o.Tab.At}
 	}
@@ -214,7 +229,7 @@ func (j *job) operation(i int, eps float64) gcode.Operation {
 		op.StartHole = gcode.StartHole{Radius: o.StartHole.Radius, At: o.StartHole.At}
 	}
 	if o.Moves == "lines" {
-		op.Path = func(offset float64) (chain.Path, error) { return fit.Lines(j.cam.Parallel(offset), eps) }
+		op.Path = func(offset float64) (chain.Path, error) { return fit.Lines(j.toolPath(offset), eps) }
 		return op
 	}
 	pitch, err := j.pitchFit(eps)
@@ -222,9 +237,18 @@ func (j *job) operation(i int, eps float64) gcode.Operation {
 		if err != nil {
 			return nil, err
 		}
-		return pitch.Offset(j.cam.LeftOfPitch(offset))
+		return pitch.Offset(j.toolPath(offset).Left())
 	}
 	return op
+}
+
+// toolPath is the path of a tool's center at a distance outside the contour; a groove is
+// cut on its pitch curve.
+func (j *job) toolPath(offset float64) *synth.Curve {
+	if j.cam.Grooved() {
+		return j.cam.Pitch()
+	}
+	return j.cam.Parallel(offset)
 }
 
 // startAt is where a milled pass begins: as the spec says, else in the middle of the

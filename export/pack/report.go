@@ -123,6 +123,9 @@ func (j *job) facts() []sheet.Fact {
 		add("Prime circle", "radius %g %s", j.cam.Prime(), u)
 	}
 	add("Thickness", "%g %s", s.Cam.Thickness, u)
+	if j.cam.Grooved() {
+		add("Groove", "width %.6g %s (roller and %g of clearance, half on each wall), depth %g %s, outside diameter %g %s", j.cam.GrooveWidth(), u, s.Cam.Clearance, s.Cam.GrooveDepth, u, s.Cam.OutsideDiameter, u)
+	}
 	if b := s.Cam.Bore; b != nil {
 		text := fmt.Sprintf("diameter %g %s %s", b.Diameter, u, b.Fit)
 		if k := b.Keyway; k != nil {

@@ -88,11 +88,23 @@ func (j *job) inspectionTable() ([]byte, error) {
 			NormalAngle:       plane.Wrap360(j.outward(k).Angle().Deg()),
 			PressureAngle:     j.cam.PressureAngleIn(s.zone, s.t).Deg(),
 			RadiusOfCurvature: j.convex(k) * 1 / math.Abs(k.K),
+			Outer:             j.outerWall(s.zone, s.t),
 		})
 	}
 	return table.Inspection(slices.CompactFunc(rows, func(a, b table.InspectionRow) bool {
 		return same(a.CamAngle, b.CamAngle, a.RadiusOfCurvature-b.RadiusOfCurvature)
 	}), tableDecimals)
+}
+
+// outerWall is the point of a groove's outer wall, whose material is outside: its normal
+// points towards the camshaft, and it is convex where the inner wall is hollow.
+func (j *job) outerWall(zone int, t float64) *table.WallPoint {
+	if !j.cam.Grooved() {
+		return nil
+	}
+	k := j.cam.OuterWall().At(zone, t)
+	return &table.WallPoint{X: k.P.X, Y: k.P.Y, Radius: k.P.Radius(), PolarAngle: k.P.PolarAngle(),
+		NormalAngle: plane.Wrap360(j.outward(k).Angle().Deg() + 180), RadiusOfCurvature: -j.convex(k) / math.Abs(k.K)}
 }
 
 // same reports whether the two rows of a junction would print alike: one is enough then.

@@ -19,6 +19,15 @@ type InspectionRow struct {
 	// the contour is convex, negative where it is hollow. A straight stretch, infinite or of
 	// magnitude StraightRadius and more, is written as inf without a sign.
 	RadiusOfCurvature float64
+
+	// Outer is the same of the outer wall of a groove; then the columns before are those of the
+	// inner wall. All rows have it, or none.
+	Outer *WallPoint
+}
+
+// WallPoint is a point of a wall, as InspectionRow has it.
+type WallPoint struct {
+	X, Y, Radius, PolarAngle, NormalAngle, RadiusOfCurvature float64
 }
 
 func (r InspectionRow) fields() []field {
@@ -26,7 +35,7 @@ func (r InspectionRow) fields() []field {
 	if r.NoCenter {
 		center = blank
 	}
-	return []field{
+	f := []field{
 		{"cam_angle", r.CamAngle, angle},
 		{"lift", r.Lift, plain},
 		{"center_x", r.CenterX, center},
@@ -39,6 +48,12 @@ func (r InspectionRow) fields() []field {
 		{"pressure_angle", r.PressureAngle, angle},
 		{"radius_of_curvature", r.RadiusOfCurvature, radius},
 	}
+	if o := r.Outer; o != nil {
+		f = append(f, field{"outer_x", o.X, plain}, field{"outer_y", o.Y, plain}, field{"outer_radius", o.Radius, plain},
+			field{"outer_polar_angle", o.PolarAngle, turn}, field{"outer_normal_angle", o.NormalAngle, turn},
+			field{"outer_radius_of_curvature", o.RadiusOfCurvature, radius})
+	}
+	return f
 }
 
 // Inspection prints the inspection table. lengthDecimals (0 to

@@ -25,6 +25,12 @@ func (r *reader) check(s *Spec) {
 
 func (r *reader) checkBody(s *Spec) {
 	c := s.Cam
+	if kind := s.Follower.Kind; c.Kind == grooveCam && kind != transRoller && kind != swingRoller && r.ok("follower.kind", "cam.kind") {
+		r.faultAt("cam.kind", Fault{Found: "groove with the follower " + kind, Allowed: "a groove with " + transRoller + " or " + swingRoller})
+	}
+	if c.Kind == grooveCam && c.GrooveDepth >= c.Thickness && r.ok("cam.groove_depth", "cam.thickness") {
+		r.faultAt("cam.groove_depth", Fault{Found: figure(c.GrooveDepth), Allowed: "a groove shallower than the thickness, which is " + figure(c.Thickness)})
+	}
 	if b := c.Bore; b != nil && r.ok("cam.bore.diameter", "cam.base_radius") && b.Diameter/2 >= c.BaseRadius {
 		r.faultAt("cam.bore.diameter", Fault{Found: figure(b.Diameter), Allowed: "a bore smaller than the base circle, whose diameter is " + figure(2*c.BaseRadius)})
 	}

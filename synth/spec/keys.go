@@ -107,18 +107,26 @@ func faceTable() table[Face] {
 	}}
 }
 
+// Kinds of cams.
+const (
+	plateCam  = "plate"
+	grooveCam = "groove"
+)
+
 func camTable(v Vocabulary) table[Cam] {
 	return table[Cam]{what: "a cam", place: func(c *Cam, p Place) { c.Place = p },
 		kinds: v.Cams, name: "kind", kind: byKey("kind", v.Cams, everyCam()),
-		absent: []absent{{name: "keyway", of: "bore"}, {name: "groove_depth", of: "groove and barrel"}, {name: "clearance", of: "groove and barrel"},
-			{name: "radius", of: "barrel"}, {name: "length", of: "barrel"}, {name: "track_position", of: "barrel"}},
+		absent: []absent{{name: "keyway", of: "bore"}, {name: "radius", of: "barrel"}, {name: "length", of: "barrel"}, {name: "track_position", of: "barrel"}},
 		fields: []field[Cam]{
 			kindKey("kind", "kind of cam", v.Cams, func(c *Cam, w string) { c.Kind = w }),
 			number("base_radius", "radius of the base circle, which the follower rests on at lift 0, length", length(), func(c *Cam) *float64 { return &c.BaseRadius }).required(),
 			number("thickness", "thickness of the cam, length", length(), func(c *Cam) *float64 { return &c.Thickness }).required(),
 			maybe("bore", "the hole about the camshaft axis", boreTable(), func(c *Cam) **Bore { return &c.Bore }),
 			list("holes", "round through holes", holeTable(), func(_ *reader, c *Cam, all []Hole) { c.Holes = all }),
-			number("outside_diameter", "outside diameter of the body, length", length(), func(c *Cam) *float64 { return &c.OutsideDiameter }),
+			number("outside_diameter", "outside diameter of the body, length", length(), func(c *Cam) *float64 { return &c.OutsideDiameter }).of(plateCam),
+			number("outside_diameter", "outside diameter of the body, length", length(), func(c *Cam) *float64 { return &c.OutsideDiameter }).of(grooveCam).required(),
+			number("groove_depth", "depth of the groove from the marked face, length", length(), func(c *Cam) *float64 { return &c.GrooveDepth }).of(grooveCam).required(),
+			number("clearance", "groove width less roller diameter, length, shared by both walls", orNoLength(), func(c *Cam) *float64 { return &c.Clearance }).of(grooveCam).required(),
 			choice("datum", "none: the cam has no angular datum (no keyway, no hole off the axis), on purpose", []string{"none"}, nil,
 				func(c *Cam, _ string) { c.NoDatum = true }),
 		}}

@@ -205,7 +205,7 @@ func (t table[T]) field(name, kind string) (found field[T], ok bool) {
 func (t table[T]) names(kind string) []string {
 	var names []string
 	for _, f := range t.fields {
-		if kind == "" || f.has(kind) {
+		if (kind == "" || f.has(kind)) && !slices.Contains(names, f.name) {
 			names = append(names, f.name)
 		}
 	}

@@ -141,7 +141,7 @@ type Face struct{ From, To float64 }
 // Swings reports whether lifts are degrees of swing.
 func (f Follower) Swings() bool { return f.Kind == swingRoller || f.Kind == swingFlat }
 
-// Cam is the body of the cam; this version knows Kind "plate".
+// Cam is the body of the cam.
 type Cam struct {
 	Kind            string
 	BaseRadius      float64 // length
@@ -149,6 +149,8 @@ type Cam struct {
 	Bore            *Bore   // nil when there is none
 	Holes           []Hole
 	OutsideDiameter float64 // length, 0 when not given
+	GrooveDepth     float64 // length, of a groove
+	Clearance       float64 // length, groove width less roller diameter
 	NoDatum         bool    // `datum: none` was said outright
 	Place           Place
 }

@@ -1,0 +1,48 @@
+package synth
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/synth/gate"
+)
+
+// grooveGates are the gates that only a groove has: the outer wall must not be undercut,
+// and material must be left under the groove.
+func (c *Cam) grooveGates() []gate.Gate {
+	d, half := c.Pitch().LeastDisc(true), c.inset()
+	g := gate.Gate{ID: "undercut-outer", Value: d.Radius, Limit: half, Unit: c.unit(), AtLeast: true,
+		CamAngle: camAngle(d.At), Polar: d.Point.PolarAngle(), Pass: d.Radius > half,
+		Text: "largest disc that fits outside the pitch curve everywhere, against half the groove's width; where it is smaller the outer wall would be cut away: use a smaller roller, lengthen the event or enlarge base_radius"}
+	if math.IsInf(d.Radius, 1) {
+		g.CamAngle, g.Polar = math.NaN(), math.NaN()
+	}
+	floor := c.spec.Cam.Thickness - c.spec.Cam.GrooveDepth
+	limit := 0.0
+	if l := c.spec.Limits.Wall; l != nil {
+		limit = *l
+	}
+	return []gate.Gate{g, {ID: "groove-floor", Value: floor, Limit: limit, Unit: c.unit(), AtLeast: true, CamAngle: math.NaN(), Polar: math.NaN(),
+		Pass: floor > 0 && floor >= limit, Text: "material under the groove: take a thicker body or a shallower groove"}}
+}
+
+// slotGates: a groove is cut on its pitch curve by a tool as wide as the groove.
+func (c *Cam) slotGates() []gate.Gate {
+	var g []gate.Gate
+	for i, op := range c.spec.Operations {
+		width := c.GrooveWidth()
+		off := math.Abs(op.ToolDiameter - width)
+		x := gate.Gate{ID: "reach", Of: fmt.Sprintf("%d-%s", i+1, op.Process), Value: off, Limit: widthSlack * width, Unit: c.unit(), CamAngle: math.NaN(), Polar: math.NaN(),
+			Pass: op.Process == "mill" && off <= widthSlack*width,
+			Text: fmt.Sprintf("operation %d: a groove is milled on its pitch curve by a tool of the groove's width, %.6g %s (roller and clearance)", i+1, width, c.unit())}
+		if op.Process != "mill" {
+			x.Text = fmt.Sprintf("operation %d: a groove cannot be cut by %s: mill it", i+1, op.Process)
+		}
+		g = append(g, x)
+	}
+	return g
+}
+
+// widthSlack is the share of the groove's width by which a tool may differ: what is lost in
+// writing it down.
+const widthSlack = 1e-6

@@ -251,7 +251,7 @@ func TestPlanRefuses(t *testing.T) {
 		"no stock":         {plainMill(), func(j *job) { j.op.Stock = nil }, "no passes"},
 		"negative stock":   {plainMill(), func(j *job) { j.op.Stock = []float64{-0.1} }, "stock of pass 1"},
 		"no feed":          {plainMill(), func(j *job) { j.op.Feed = 0 }, "feed"},
-		"unknown process":  {plainMill(), func(j *job) { j.op.Process = "saw" }, "mill and wire"},
+		"unknown process":  {plainMill(), func(j *job) { j.op.Process = "saw" }, "mill, slot and wire"},
 		"unknown sense":    {plainMill(), func(j *job) { j.op.Direction = "up" }, "climb and conventional"},
 		"tab too narrow":   {plainWire(), func(j *job) { j.op.Tab.Width = 1 }, "too narrow"},
 		"tab too wide":     {plainWire(), func(j *job) { j.op.Tab.Width = 140 }, "half the cam"},

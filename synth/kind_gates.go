@@ -22,7 +22,11 @@ func (c *Cam) kindGates() []gate.Gate {
 		g = append(g, c.contactGate(f.From, f.To, "face", "a longer face"))
 	}
 	if f, ok := c.follower.(follower.Swinging); ok {
-		g = append(g, c.swingGate(f), c.pivotGate())
+		g = append(g, c.swingGate(f))
+		if c.Grooved() { // the arm runs over the face of the body
+			return g
+		}
+		g = append(g, c.pivotGate())
 		if roller, ok := f.(follower.SwingingRoller); ok {
 			g = append(g, c.armGate(roller))
 		}

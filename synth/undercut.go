@@ -107,7 +107,7 @@ func (t *trimmer) there(deg float64) bool {
 	if t.normals != nil {
 		return true
 	}
-	r := t.c.follower.Radius()
+	r := t.c.inset()
 	// Between samples the pitch curve comes nearer by the sagitta of half a step.
 	slack += r * math.Pow(math.Pi/baseSteps, 2)
 	for _, q := range t.points {
@@ -174,7 +174,7 @@ func (t *trimmer) look(s *Shortfall, deg float64) {
 // rests returns the lift of the follower on the trimmed contour.
 func (t *trimmer) rests(deg float64, trimmed []plane.Point) (lift float64, ok bool) {
 	f := t.c.follower
-	near, r, sense := t.at(deg), f.Radius(), f.Sense()
+	near, r, sense := t.at(deg), t.c.inset(), f.Sense()
 	reach := t.c.Prime() * reachTurn * math.Pi / 180
 	lift = math.Inf(-1)
 	for _, q := range trimmed {

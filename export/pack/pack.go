@@ -160,7 +160,7 @@ func (j *job) otherShares() []tolerance.Share {
 // the envelope of the roller.
 func (j *job) cuttable() bool {
 	for _, g := range j.gates {
-		if g.ID == "undercut" && !g.Pass {
+		if (g.ID == "undercut" || g.ID == "undercut-outer") && !g.Pass {
 			return false
 		}
 	}

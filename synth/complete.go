@@ -8,7 +8,6 @@ import (
 	"strings"
 
 	"lobewright/synth/gate"
-	"lobewright/synth/measured"
 	"lobewright/synth/motion"
 	"lobewright/synth/partial"
 	"lobewright/synth/spec"
@@ -18,9 +17,8 @@ import (
 // is to be said of the making.
 type completed struct {
 	cycle      *motion.Cycle
-	completion *Completion      // of facts
-	rows       []measured.Row   // of a table
-	smoothed   *measured.Report // of a table
+	completion *Completion // of facts
+	smoothed   *smoothed   // of a table
 }
 
 func complete(s *spec.Spec) (completed, error) {

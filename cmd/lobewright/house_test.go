@@ -14,7 +14,7 @@ func rooms() map[string][]string {
 	leaves := []string{"synth/taylor", "synth/plane"}
 	with := func(base []string, more ...string) []string { return append(slices.Clone(base), more...) }
 	motion := with(leaves, "synth/motion")
-	cam := with(motion, "synth/gate", "synth/spec", "synth/follower", "synth/qp", "synth/partial", "synth/measured", "synth")
+	cam := with(motion, "synth/gate", "synth/spec", "synth/follower", "synth/qp", "synth/partial", "synth/smooth", "synth")
 	chain := []string{"synth/plane", "tolerance/chain"}
 	proof := with(leaves, "tolerance/chain", "tolerance/certify")
 	return map[string][]string{
@@ -25,7 +25,7 @@ func rooms() map[string][]string {
 		"synth/motion":      leaves,
 		"synth/qp":          {},
 		"synth/partial":     with(motion, "synth/qp"),
-		"synth/measured":    with(motion, "synth/qp"),
+		"synth/smooth":      {},
 		"synth/follower":    motion,
 		"synth":             cam,
 		"synth/evidence":    cam,

@@ -39,6 +39,8 @@ func (j *job) stretches() []svg.Event {
 func (j *job) stretch(z motion.Zone) string {
 	u := j.cam.LiftUnit()
 	switch {
+	case z.Dwell && j.spec.Motion.Table != nil:
+		return fmt.Sprintf("dwell at %.6g %s, from the table", z.Poly[0], u)
 	case j.spec.Motion.Table != nil:
 		return "smoothed from the table"
 	case z.Dwell:
@@ -69,10 +71,10 @@ func (j *job) knowns() (lift, velocity, acceleration []svg.Mark) {
 		add(&lift, svg.MarkAbove, f.Above, 1)
 		add(&lift, svg.MarkBelow, f.Below, 1)
 	}
-	rows, _ := j.cam.Table()
-	for _, r := range rows {
-		at := plane.Wrap360(r.Angle)
-		lift = append(lift, svg.Mark{Kind: svg.MarkSample, From: at, To: at, Value: r.Lift})
+	angles, lifts := j.cam.Table()
+	for i, a := range angles {
+		at := plane.Wrap360(a)
+		lift = append(lift, svg.Mark{Kind: svg.MarkSample, From: at, To: at, Value: lifts[i]})
 	}
 	slices.SortStableFunc(lift, func(a, b svg.Mark) int { return cmp.Compare(a.From, b.From) })
 	return lift, velocity, acceleration

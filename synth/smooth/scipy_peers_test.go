@@ -1,16 +1,17 @@
 //go:build peers
 
-package measured_test
+package smooth_test
 
 import (
 	"encoding/json"
+	"fmt"
 	"math"
 	"os/exec"
 	"strings"
 	"testing"
 
-	"lobewright/synth/measured"
 	"lobewright/synth/motion"
+	"lobewright/synth/smooth"
 )
 
 // scipyProgram smooths a table with SciPy's own periodic quintic spline, FITPACK's
@@ -27,16 +28,62 @@ tck = splrep(x, y, k=5, per=True, s=d["squares"])
 at = np.array(d["at"])
 c = np.array(d["poly"]).T[::-1]  # powers of degrees past the break, highest first
 ours = PPoly(c, np.array(d["breaks"]))
+inside = (at - d["breaks"][0]) % 360 + d["breaks"][0]
 json.dump({"lift": splev(at, tck).tolist(), "acceleration": splev(at, tck, der=2).tolist(), "knots": len(tck[0]) - 11,
-           "ours": ours(at).tolist(), "ours_acceleration": ours.derivative(2)(at).tolist()}, sys.stdout)
+           "ours": ours(inside).tolist(), "ours_acceleration": ours.derivative(2)(inside).tolist()}, sys.stdout)
 `
+
+// known is a dwell, a rise, a dwell, a fall and a dwell.
+func known(t *testing.T, rise, fall string, h float64) *motion.Cycle {
+	t.Helper()
+	law := func(name string) motion.Law {
+		l, err := motion.Named(name, 0.5)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return l
+	}
+	c, err := motion.Join(0, 0, []motion.Event{{Kind: motion.Dwell, Over: 60}, {Kind: motion.Rise, Lift: h, Over: 90, Law: law(rise)},
+		{Kind: motion.Dwell, Over: 40}, {Kind: motion.Fall, Lift: h, Over: 120, Law: law(fall)}, {Kind: motion.Dwell, Over: 50}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	return c
+}
+
+// about returns a piece's six coefficients in powers of degrees past its start, by Taylor's
+// shift of its own.
+func about(p smooth.Piece) []float64 {
+	c := make([]float64, 6)
+	copy(c, p.Poly)
+	a := (p.From - p.Origin) / p.Span
+	for i := range c {
+		for k := len(c) - 2; k >= i; k-- {
+			c[k] += a * c[k+1]
+		}
+	}
+	scale := 1.0
+	for k := range c {
+		c[k] *= scale
+		scale /= p.Span
+	}
+	return c
+}
 
 func TestPeerSciPy(t *testing.T) {
 	for _, laws := range [][2]string{{"modified-sine", "polynomial-3-4-5"}, {"cycloidal", "polynomial-4-5-6-7"}} {
-		c := cycle(t, laws[0], laws[1], 14)
-		csv := tabulated(c, 360, 0.001)
-		m := smooth(t, csv, 0.001)
-		got, err := motion.Of(m.Zones)
+		c := known(t, laws[0], laws[1], 14)
+		var csv strings.Builder
+		csv.WriteString("cam_angle,lift\n")
+		for deg := range 360 {
+			s, _, _, _ := c.At(float64(deg))
+			fmt.Fprintf(&csv, "%d,%.3f\n", deg, s)
+		}
+		table, faults := smooth.Read([]byte(csv.String()), 0.001)
+		if faults != nil {
+			t.Fatal(faults)
+		}
+		got, report, err := smooth.Fit(table, 0.001)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -48,26 +95,18 @@ func TestPeerSciPy(t *testing.T) {
 			Breaks  []float64   `json:"breaks"`
 			Poly    [][]float64 `json:"poly"`
 		}
-		rows, faults := measured.Parse([]byte(csv), 0.001)
-		if faults != nil {
-			t.Fatal(faults)
-		}
-		for i, r := range rows {
-			in.Angle, in.Lift = append(in.Angle, r.Angle), append(in.Lift, r.Lift)
-			in.Squares += m.Report.Residuals[i] * m.Report.Residuals[i]
+		for i := range table.Angle {
+			in.Angle, in.Lift = append(in.Angle, table.Angle[i]), append(in.Lift, table.Lift[i])
+			in.Squares += report.Residual[i] * report.Residual[i]
 		}
 		for i := range 720 {
-			in.At = append(in.At, m.Zones[0].From+float64(i)/2)
+			in.At = append(in.At, float64(i)/2)
 		}
-		for _, z := range m.Zones {
+		for _, z := range got.Pieces {
 			in.Breaks = append(in.Breaks, z.From)
-			p := make([]float64, len(z.Poly))
-			for k, v := range z.Poly {
-				p[k] = v / math.Pow(z.Span, float64(k))
-			}
-			in.Poly = append(in.Poly, p)
+			in.Poly = append(in.Poly, about(z))
 		}
-		in.Breaks = append(in.Breaks, m.Zones[0].From+360)
+		in.Breaks = append(in.Breaks, got.Pieces[0].From+360)
 		data, err := json.Marshal(in)
 		if err != nil {
 			t.Fatal(err)
@@ -104,9 +143,9 @@ func TestPeerSciPy(t *testing.T) {
 			theirs += math.Pow(out.Acceleration[i]*w-exact, 2) / 720
 		}
 		t.Logf("%v: %d pieces, FITPACK %d; lifts within %.5f; acceleration root mean square apart %.4f of the peak, off the law by %.4f, FITPACK by %.4f",
-			laws, m.Report.Knots, out.Knots, lift, math.Sqrt(rms)/peak, math.Sqrt(ours)/peak, math.Sqrt(theirs)/peak)
-		if lift > 0.002 || math.Sqrt(rms) > 0.03*peak || m.Report.Knots > 2*out.Knots {
-			t.Errorf("%v: lifts %g apart, accelerations %g of %g, %d pieces against %d", laws, lift, math.Sqrt(rms), peak, m.Report.Knots, out.Knots)
+			laws, report.Pieces, out.Knots, lift, math.Sqrt(rms)/peak, math.Sqrt(ours)/peak, math.Sqrt(theirs)/peak)
+		if lift > 0.002 || math.Sqrt(rms) > 0.03*peak || report.Pieces > 2*out.Knots {
+			t.Errorf("%v: lifts %g apart, accelerations %g of %g, %d pieces against %d", laws, lift, math.Sqrt(rms), peak, report.Pieces, out.Knots)
 		}
 	}
 }

@@ -124,18 +124,20 @@ func TestSamplesRefused(t *testing.T) {
 	}
 }
 
-// The starter that lobewright new prints releases as it stands.
+// The starters that lobewright new prints release as they stand.
 func TestStarterReleases(t *testing.T) {
-	text, err := spec.Starter("")
-	if err != nil {
-		t.Fatal(err)
-	}
-	s, err := spec.Read("starter.yaml", []byte(text), synth.Vocabulary())
-	if err != nil {
-		t.Fatal(err)
-	}
-	p, err := Make(s, options())
-	if err != nil || !p.Passed {
-		t.Fatal(err, p.Report.Gates)
+	for _, kind := range []string{"plate", "groove"} {
+		text, err := spec.Starter(kind)
+		if err != nil {
+			t.Fatal(err)
+		}
+		s, err := spec.Read("starter.yaml", []byte(text), synth.Vocabulary())
+		if err != nil {
+			t.Fatal(err)
+		}
+		p, err := Make(s, options())
+		if err != nil || !p.Passed {
+			t.Fatal(kind, err, p.Report.Gates)
+		}
 	}
 }

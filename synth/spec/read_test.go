@@ -129,8 +129,8 @@ func TestStarterOptionalKeys(t *testing.T) {
 
 func TestStarterUnknown(t *testing.T) {
 	for kind, want := range map[string]string{
-		"groove": "found groove, which is not available in this version; allowed: plate",
-		"plat":   `found the kind "plat"; allowed: plate; did you mean plate?`,
+		"barrel": "found barrel, which is not available in this version; allowed: plate, groove",
+		"plat":   `found the kind "plat"; allowed: plate, groove; did you mean plate?`,
 	} {
 		if text, err := Starter(kind); err == nil || err.Error() != want || text != "" {
 			t.Errorf("%s: %q, %v", kind, text, err)

@@ -1,0 +1,63 @@
+package evidence
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/synth"
+	"lobewright/synth/spec"
+)
+
+// kindOf builds a plate cam that turns clockwise for a follower: rise, dwell of 60°, fall, rest.
+func kindOf(f spec.Follower, base, lift, rise float64, law string) (*synth.Cam, error) {
+	s := &spec.Spec{Units: spec.MM, Camshaft: spec.Camshaft{Speed: 60, Clockwise: true}}
+	s.Motion.Events = []spec.Event{event(spec.Rise, lift, rise, law), {Kind: spec.Dwell, Over: 60}, event(spec.Fall, lift, 120, law), {Kind: spec.Dwell, Over: 180 - rise}}
+	s.Follower = f
+	s.Cam = spec.Cam{Kind: "plate", BaseRadius: base}
+	s.Limits.PressureAngle = 30
+	return synth.Build(s)
+}
+
+// kinds: figures of flat and swinging followers at shares of the rise, from textbook
+// formulas other than the program's, with 30 digits.
+func kinds(Laws) ([]Row, error) {
+	const source = "Reference vectors of other followers, textbook formulas (flat faces: contact at ds/dθ, Mabie and Reinholtz; swinging: Rothbart 2004, chapter 7)"
+	roller := func(below bool) spec.Follower {
+		return spec.Follower{Kind: "swinging-roller", RollerDiameter: 20, ArmLength: 60, PivotDistance: 80, Below: below}
+	}
+	face := func(offset float64) spec.Follower {
+		return spec.Follower{Kind: "swinging-flat", PivotDistance: 80, FaceOffset: offset, Face: spec.Face{From: 0, To: 200}}
+	}
+	var rows []Row
+	for _, c := range []struct {
+		what                string
+		follower            spec.Follower
+		base, lift, rise, u float64
+		law, x, y, radius   string
+	}{
+		{"translating flat face", spec.Follower{Kind: "translating-flat", FaceWidth: 100}, 60, 20, 90, 0.25, "polynomial-3-4-5", "52.20655092874", "36.15977976471", "107.6648451391"},
+		{"translating flat face", spec.Follower{Kind: "translating-flat", FaceWidth: 100}, 60, 20, 90, 0.75, "polynomial-3-4-5", "17.4159007664", "77.13658362284", "32.33515486095"},
+		{"swinging roller above", roller(false), 40, 20, 90, 0.25, "polynomial-3-4-5", "11.3255412185", "41.05483485102", "252.9749469312"},
+		{"swinging roller above", roller(false), 40, 20, 90, 0.5, "polynomial-3-4-5", "-6.76598474245", "50.97757818187", "48.7344472187"},
+		{"swinging roller below", roller(true), 40, 20, 90, 0.25, "polynomial-3-4-5", "39.33126645598", "-16.34872632494", "233.0223131946"},
+		{"swinging flat face through its pivot", face(0), 30, 10, 120, 0.25, "cycloidal", "-10.48224576825", "30.11114986066", "54.82763391143"},
+		{"swinging flat face, offset 5", face(5), 30, 10, 120, 0.5, "cycloidal", "-29.54563159235", "24.92426975496", "34.49111517838"},
+	} {
+		k, err := kindOf(c.follower, c.base, c.lift, c.rise, c.law)
+		if err != nil {
+			return nil, err
+		}
+		zone, t := k.Cycle().Zone(c.rise * c.u)
+		f := k.Contour().At(zone, t)
+		at := fmt.Sprintf("%s, %g %% of the rise: ", c.what, 100*c.u)
+		rows = append(rows, Row{source, Derived, at + "contour x", c.x, f.P.X}, Row{source, Derived, at + "contour y", c.y, f.P.Y},
+			Row{source, Derived, at + "radius of curvature of the contour", c.radius, 1 / math.Abs(f.K)})
+	}
+	k, err := kindOf(spec.Follower{Kind: "translating-flat", FaceWidth: 100}, 60, 20, 90, "polynomial-3-4-5")
+	if err != nil {
+		return nil, err
+	}
+	const cauchy = "Integral checks of a whole cam under a flat face (A. L. Cauchy: the length is the integral of the height)"
+	return append(rows, Row{cauchy, Derived, "3-4-5, 20 over 90° and 120°, base 60: length", "434.586983746588", k.Contour().Length()},
+		Row{cauchy, Derived, "the same: area", "14943.8010910284", k.Contour().Area()}), nil
+}

@@ -10,6 +10,9 @@ type Cut struct {
 	Offset float64 // distance of the tool's center from the finished contour, length
 	Stock  float64 // distance of the written path from it: Offset, or Offset less Radius under CompControl
 	Z      float64 // mill: height of the cut, exactly as written
+
+	// Slot: a cut along a wall, and its direction. Offset and Stock are from the pitch curve.
+	Wall, Clockwise bool
 }
 
 // Expect is what a program of an operation must do, from the operation and the
@@ -39,6 +42,7 @@ type Expect struct {
 	SafeZ         float64
 	BlankDiameter float64 // 0 when not known: then no rapid below SafeZ may move sideways
 	ClampRadius   float64 // 0 when there is no clamp
+	HalfWidth     float64 // slot: half the groove's width
 }
 
 // Expected returns what the operation's program must do, each cut within eps (a
@@ -55,16 +59,23 @@ func Expected(part Part, op Operation, m Machine, eps float64) Expect {
 		return x
 	}
 	if op.Process == Slot {
+		height := func(z int64) float64 { return float64(z) / float64(counts(g, 1)) }
 		for _, z := range slotDepths(part, op, g) {
-			x.Cuts = append(x.Cuts, Cut{Z: float64(z) / float64(counts(g, 1))})
+			x.Cuts = append(x.Cuts, Cut{Z: height(z)})
 		}
+		for _, w := range wallPasses(part, op) {
+			for _, z := range wallDepths(part, op, g, w) {
+				x.Cuts = append(x.Cuts, Cut{Offset: w.offset, Stock: w.offset, Z: height(z), Wall: true, Clockwise: w.clockwise})
+			}
+		}
+		x.HalfWidth = part.GrooveWidth / 2
 	}
 	for i, c := range op.centers() {
 		if op.Process == Slot {
 			break
 		}
 		for _, z := range depths(part, op, g, i) {
-			x.Cuts = append(x.Cuts, Cut{c, writtenOffset(op.Compensation, c, op.radius()), float64(z) / float64(counts(g, 1))})
+			x.Cuts = append(x.Cuts, Cut{Offset: c, Stock: writtenOffset(op.Compensation, c, op.radius()), Z: float64(z) / float64(counts(g, 1))})
 		}
 	}
 	x.Clockwise, x.Radius, x.Tool, x.Speed = op.clockwise(), op.radius(), op.Tool, op.speed()

@@ -94,15 +94,23 @@ func millText(part Part, op Operation, m Machine) []string {
 }
 
 func slotText(part Part, op Operation, m Machine) []string {
-	return []string{
+	h := []string{
 		fmt.Sprintf("TOOL T%d DIAMETER %s RIGHT-HAND, CUTS OVER CENTER", op.Tool, m.text(op.ToolDiameter)),
-		"THE GROOVE IS AS WIDE AS THE TOOL. MEASURE IT AND ITS RUNOUT",
+		fmt.Sprintf("GROOVE WIDTH %s DEPTH %s", m.text(part.GrooveWidth), m.text(part.GrooveDepth)),
 		"Z0 TOP OF BLANK. SAFE Z " + m.text(m.SafeZ),
-		fmt.Sprintf("GROOVE DEPTH %s IN %d TURNS, EACH RAMPED DOWN OVER %g DEGREES", m.text(part.GrooveDepth), len(slotDepths(part, op, m.grid())), rampDegrees),
-		"TURNS GO TO AND FRO. THE TOOL CUTS BOTH WALLS AT ONCE",
-		"COMPENSATION " + compText(op),
-		"F IS THE FEED OF THE TOOL CENTER",
+		fmt.Sprintf("ON THE PITCH CURVE %d TURNS TO AND FRO, EACH RAMPED DOWN OVER %g DEGREES", len(slotDepths(part, op, m.grid())), rampDegrees),
 	}
+	if part.fills(op) {
+		h = append(h, "THE GROOVE IS AS WIDE AS THE TOOL. MEASURE IT AND ITS RUNOUT")
+	} else {
+		h = append(h, "THEN ALONG BOTH WALLS. STOCK LEFT BY EACH PASS "+m.list(op.Stock),
+			fmt.Sprintf("%s CUTTING, THE OUTER WALL AGAINST THE INNER ONE. EACH RUNS %g DEGREES PAST ITS START", op.Direction, slotOverlap))
+	}
+	h = append(h, "COMPENSATION "+compText(op), "F IS THE FEED OF THE TOOL CENTER")
+	if last := op.Stock[len(op.Stock)-1]; last > 0 {
+		h = append(h, "NOT FINISHED. "+m.text(last)+" IS LEFT ON THE WALLS")
+	}
+	return h
 }
 
 func wireText(part Part, op Operation, m Machine) []string {

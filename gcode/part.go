@@ -20,6 +20,7 @@ type Part struct {
 	Inch                  bool    // lengths are inches, else mm
 	Thickness             float64 // length, above 0
 	GrooveDepth           float64 // length, of a slot
+	GrooveWidth           float64 // length, of a slot
 	CamClockwise          bool    // the camshaft's turning direction, seen on the marked face
 	BlankDiameter         float64 // length; 0 when not known
 	ClampRadius           float64 // length about the camshaft axis; 0 when there is no clamp
@@ -28,8 +29,8 @@ type Part struct {
 
 	// Curve returns the curve parallel to the contour at offset (a length, 0 or
 	// more) to the outside, over the same cam angles. With CamClockwise the
-	// contour runs counterclockwise with growing angle, else clockwise. Of a slot it is
-	// called with 0 alone, and returns the pitch curve.
+	// contour runs counterclockwise with growing angle, else clockwise. Of a slot the
+	// offset is from the pitch curve, and may be below 0.
 	Curve func(offset float64) Curve
 }
 
@@ -48,7 +49,7 @@ type Process string
 const (
 	Mill Process = "mill"
 	Wire Process = "wire"
-	Slot Process = "slot" // a groove milled on its pitch curve by a tool of its width
+	Slot Process = "slot" // a groove milled on its pitch curve, and along its walls by a tool narrower than it
 )
 
 // Compensation says who moves the path by the tool's radius.

@@ -8,18 +8,113 @@ import (
 	"lobewright/tolerance/chain"
 )
 
-// A groove is cut on its pitch curve by a tool as wide as it is. The tool cannot plunge
-// into full material: it goes down on a ramp along the curve, where the curve is a dwell
-// when there is one, and turns once at each depth. Every second depth is ramped and cut
-// backwards, so that all ramps lie on the same stretch. No compensation: the tool's size
-// is the groove's width.
+// A groove is first cut on its pitch curve. The tool cannot plunge into full material: it
+// goes down on a ramp along the curve, where the curve is a dwell when there is one, and
+// turns once at each depth. Every second depth is ramped and cut backwards, so that all
+// ramps lie on the same stretch. A tool as wide as the groove is done then.
 //
-// Part.Curve(0) and Operation.Path(0) are the pitch curve.
+// A narrower one goes on along both walls, inner wall first, once for each stock: down
+// into the slot it has cut, an arc to the wall's path, a turn and a little more, an arc
+// back. Each wall is climb-cut unless the spec says otherwise: the inner one clockwise, the
+// outer one counterclockwise. No compensation.
+//
+// Part.Curve and Operation.Path count their offset from the pitch curve.
 
 const (
 	rampDegrees = 20.0 // cam angle of a ramp; common practice, no source
 	slotOverlap = 2.0  // how far a turn runs past its end, cam angle
+	wholeWidth  = 1e-6 // share of the groove's width by which a tool that fills it may differ
 )
+
+// fills reports whether the tool is as wide as the groove.
+func (p Part) fills(op Operation) bool {
+	return math.Abs(p.GrooveWidth-op.ToolDiameter) <= wholeWidth*p.GrooveWidth
+}
+
+// wallPass is one pass along one wall.
+type wallPass struct {
+	offset    float64 // of the tool's center from the pitch curve, outside positive, length
+	stock     float64
+	clockwise bool
+	last      bool
+}
+
+// wallPasses returns the passes along the walls in their order.
+func wallPasses(part Part, op Operation) []wallPass {
+	if part.fills(op) {
+		return nil
+	}
+	room := part.GrooveWidth/2 - op.radius()
+	var all []wallPass
+	for i, s := range op.Stock {
+		climb := op.Direction != Conventional
+		last := i == len(op.Stock)-1
+		all = append(all, wallPass{s - room, s, climb, last}, wallPass{room - s, s, !climb, last})
+	}
+	return all
+}
+
+// wallDepths returns the Z of the cuts of a pass along a wall: in steps, the last at once.
+func wallDepths(part Part, op Operation, g chain.Grid, w wallPass) []int64 {
+	all := slotDepths(part, op, g)
+	if w.last && len(op.Stock) > 1 {
+		return all[len(all)-1:]
+	}
+	return all
+}
+
+// wall adds the cuts of one pass along a wall.
+func (e *emitter) wall(part Part, op Operation, m Machine, w wallPass) error {
+	l, err := op.loopAt(part, m, w.offset)
+	if err != nil {
+		return err
+	}
+	path, err := l.around(part.StartAt, slotOverlap, w.clockwise == part.CamClockwise)
+	if err != nil {
+		return err
+	}
+	first, last := path[0], path[len(path)-1]
+	// Towards the pitch curve: inwards from the outer wall's path.
+	in, out := part.towards(w, first.From, first.StartTangent()), part.towards(w, last.To, last.EndTangent())
+	r := math.Abs(w.offset)
+	lead := func(p plane.Point, t, n plane.Vector, back float64) chain.Element {
+		c := p.Add(n.Scale(r))
+		far := c.Add(t.Scale(back * r))
+		a := chain.Element{Kind: chain.Arc, From: far, To: p, Center: c, CCW: t.Cross(n) > 0}
+		if back > 0 {
+			a.From, a.To = p, far
+		}
+		return a
+	}
+	whole := append(chain.Path{lead(first.From, first.StartTangent(), in, -1)}, path...)
+	whole = append(whole, lead(last.To, last.EndTangent(), out, 1))
+	c, err := snap(whole, m.grid())
+	if err != nil {
+		return err
+	}
+	name := "INNER"
+	if w.offset > 0 {
+		name = "OUTER"
+	}
+	for _, z := range wallDepths(part, op, e.grid, w) {
+		e.note(fmt.Sprintf("%s WALL STOCK %s DOWN TO %s", name, e.grid.Format(counts(e.grid, w.stock)), e.grid.Format(z)))
+		e.line(Rapid, c.Segments[0].From, Block{})
+		e.add(Block{Motion: Straight, Z: count(z), F: e.feed(op.PlungeFeed)})
+		e.chain(c, Block{F: e.feed(op.Feed)}, false)
+		e.z(Rapid, m.SafeZ, Block{})
+	}
+	return nil
+}
+
+// towards is the unit normal at a point of a wall's path, of direction t, that points to
+// the pitch curve.
+func (p Part) towards(w wallPass, at plane.Point, t plane.Vector) plane.Vector {
+	n := t.Left()
+	if (n.Dot(plane.Vector(at)) > 0) == (w.offset > 0) { // n points outwards
+		n = n.Neg()
+	}
+	return n
+}
 
 // slotDepths returns the Z of every turn, in counts, top first.
 func slotDepths(part Part, op Operation, g chain.Grid) []int64 {
@@ -83,6 +178,11 @@ func planSlot(part Part, op Operation, m Machine) (Program, error) {
 		top = z
 	}
 	e.z(Rapid, m.SafeZ, Block{})
+	for _, w := range wallPasses(part, op) {
+		if err := e.wall(part, op, m, w); err != nil {
+			return Program{}, fmt.Errorf("wall at %g from the pitch curve: %w", w.offset, err)
+		}
+	}
 	e.add(Block{M: []int{5}})
 	e.add(Block{G: e.safety()})
 	e.add(Block{M: []int{30}})

@@ -40,7 +40,9 @@ func validate(part Part, op Operation, m Machine) error {
 		return fmt.Errorf("operation %d: groove depth %g", op.Number, part.GrooveDepth)
 	case op.Process == Slot && op.Compensation != CompPath:
 		return fmt.Errorf("operation %d: compensation %q: a groove is cut on its pitch curve, with path", op.Number, op.Compensation)
-	case op.Process == Slot && (len(op.Stock) != 1 || op.Stock[0] != 0):
+	case op.Process == Slot && !(part.GrooveWidth >= op.ToolDiameter*(1-wholeWidth)):
+		return fmt.Errorf("operation %d: a tool of diameter %g in a groove %g wide", op.Number, op.ToolDiameter, part.GrooveWidth)
+	case op.Process == Slot && part.fills(op) && (len(op.Stock) != 1 || op.Stock[0] != 0):
 		return fmt.Errorf("operation %d: stock %v: a tool of the groove's width leaves none, write [0]", op.Number, op.Stock)
 	case op.Compensation != CompPath && op.Compensation != CompWear && op.Compensation != CompControl:
 		return fmt.Errorf("operation %d: compensation %q: path, wear and control are known", op.Number, op.Compensation)

@@ -21,7 +21,8 @@ import (
 //     from all of the contour, not only from the stretch it follows;
 //   - plunges and rapids below SafeZ clear contour, clamp and blank;
 //   - in a slot every feed move, the ramps among them, is within Eps of the pitch curve, no
-//     deeper than expected, and nothing else goes below SafeZ but straight up and down;
+//     deeper than expected, and nothing else goes below SafeZ but straight up and down; along
+//     its walls no move comes nearer to either than the tool's radius less Eps;
 //   - units, tool, spindle, feeds, depths, compensation, stops and end are those expected.
 //
 // Compensation is applied as NISTIR 6556 appendix B describes it: a moved element
@@ -60,6 +61,7 @@ type verifier struct {
 	body    *certify.Body
 	outline outline
 	cleared map[question]answer
+	both    []*certify.Body // the walls of a groove
 	res     Result
 }
 

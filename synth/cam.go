@@ -125,6 +125,9 @@ func (c *Cam) groove() follower.Groove {
 // GrooveWidth returns the width of the groove, length.
 func (c *Cam) GrooveWidth() float64 { return 2 * c.inset() }
 
+// FromPitch returns the curve at a distance outside the pitch curve, length.
+func (c *Cam) FromPitch(outside float64) *Curve { return c.curve(c.outward() * outside) }
+
 // OuterWall returns the outer wall of a groove.
 func (c *Cam) OuterWall() *Curve { return c.curve(c.outward() * c.inset()) }
 

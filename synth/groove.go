@@ -26,15 +26,19 @@ func (c *Cam) grooveGates() []gate.Gate {
 		Pass: floor > 0 && floor >= limit, Text: "material under the groove: take a thicker body or a shallower groove"}}
 }
 
-// slotGates: a groove is cut on its pitch curve by a tool as wide as the groove.
+// slotGates: a groove is milled on its pitch curve, by a tool of its width or a narrower
+// one that then goes along both walls. A narrower tool must fit the inner wall's hollows and
+// the outer wall's.
 func (c *Cam) slotGates() []gate.Gate {
+	width, half := c.GrooveWidth(), c.inset()
+	hollow := c.Pitch().LeastDisc(true).Radius + half    // of the inner wall, seen from the groove
+	rounded := c.Pitch().LeastDisc(false).Radius + half  // of the outer wall
+	most := math.Min(width, 2*math.Min(hollow, rounded)) // largest tool
 	var g []gate.Gate
 	for i, op := range c.spec.Operations {
-		width := c.GrooveWidth()
-		off := math.Abs(op.ToolDiameter - width)
-		x := gate.Gate{ID: "reach", Of: fmt.Sprintf("%d-%s", i+1, op.Process), Value: off, Limit: widthSlack * width, Unit: c.unit(), CamAngle: math.NaN(), Polar: math.NaN(),
-			Pass: op.Process == "mill" && off <= widthSlack*width,
-			Text: fmt.Sprintf("operation %d: a groove is milled on its pitch curve by a tool of the groove's width, %.6g %s (roller and clearance)", i+1, width, c.unit())}
+		x := gate.Gate{ID: "reach", Of: fmt.Sprintf("%d-%s", i+1, op.Process), Value: op.ToolDiameter, Limit: most, Unit: c.unit(), CamAngle: math.NaN(), Polar: math.NaN(),
+			Pass: op.Process == "mill" && op.ToolDiameter <= most*(1+widthSlack),
+			Text: fmt.Sprintf("operation %d: diameter of the tool against the width of the groove, %.6g %s (roller and clearance)", i+1, width, c.unit())}
 		if op.Process != "mill" {
 			x.Text = fmt.Sprintf("operation %d: a groove cannot be cut by %s: mill it", i+1, op.Process)
 		}
@@ -43,6 +47,6 @@ func (c *Cam) slotGates() []gate.Gate {
 	return g
 }
 
-// widthSlack is the share of the groove's width by which a tool may differ: what is lost in
-// writing it down.
+// widthSlack is the share of the groove's width by which a tool that fills it may differ:
+// what is lost in writing it down.
 const widthSlack = 1e-6

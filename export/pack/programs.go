@@ -200,7 +200,7 @@ func (j *job) part(op gcode.Operation, i int) gcode.Part {
 		CamClockwise: s.Camshaft.Clockwise, StartAt: j.startAt(s.Operations[i]),
 		Curve: func(offset float64) gcode.Curve { return j.toolPath(offset) }}
 	if j.cam.Grooved() {
-		p.GrooveDepth = s.Cam.GrooveDepth
+		p.GrooveDepth, p.GrooveWidth = s.Cam.GrooveDepth, j.cam.GrooveWidth()
 	}
 	if s.Blank != nil {
 		p.BlankDiameter, p.ClampRadius = s.Blank.Diameter, s.Blank.ClampRadius
@@ -242,11 +242,11 @@ func (j *job) operation(i int, eps float64) gcode.Operation {
 	return op
 }
 
-// toolPath is the path of a tool's center at a distance outside the contour; a groove is
-// cut on its pitch curve.
+// toolPath is the path of a tool's center at a distance outside the contour; in a groove
+// outside its pitch curve.
 func (j *job) toolPath(offset float64) *synth.Curve {
 	if j.cam.Grooved() {
-		return j.cam.Pitch()
+		return j.cam.FromPitch(offset)
 	}
 	return j.cam.Parallel(offset)
 }

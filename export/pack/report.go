@@ -248,8 +248,14 @@ func (j *job) operationFacts(p program) sheet.Operation {
 
 func (j *job) passFacts(p program, i int, c gcode.CutResult) sheet.Pass {
 	f := sheet.Pass{Number: i + 1, Offset: c.Offset, Word: compensationWord(p.expect, c.Clockwise), Lines: c.Lines, Arcs: c.Arcs}
-	if p.expect.Process == gcode.Mill {
+	switch p.expect.Process {
+	case gcode.Mill:
 		f.Stock = c.Offset - p.expect.Radius
+	case gcode.Slot: // the offset is from the pitch curve
+		f.Stock = p.expect.HalfWidth - p.expect.Radius - math.Abs(c.Offset)
+		if math.Abs(f.Stock) < 1e-9 {
+			f.Stock = 0
+		}
 	}
 	if !math.IsInf(c.Deviation.Bound, 0) {
 		d := j.deviationFacts(c.Deviation)

@@ -7,10 +7,10 @@ import (
 	"lobewright/export/sheet"
 	"lobewright/export/svg"
 	"lobewright/synth"
+	"lobewright/synth/follower"
 	"lobewright/synth/plane"
 	"lobewright/synth/spec"
 	"lobewright/tolerance/chain"
-	"lobewright/tolerance/follow"
 )
 
 // figures draws the three SVG files. released says what is stamped on them.
@@ -41,12 +41,25 @@ func (j *job) turn() *sheet.Turn {
 	if j.outline == nil {
 		return nil
 	}
-	f, ok := j.linkage().(follow.Roller)
-	if !ok {
-		return nil // a face or an arm: the figure knows centers on a line
+	w, rest := j.cam.Omega(), j.cam.AtRest()
+	t := &sheet.Turn{Clockwise: j.spec.Camshaft.Clockwise, Contour: j.shape(j.cam.Contour()), Center: j.cam.HasCenter(), Roller: j.cam.Follower().Radius(),
+		Datum: rest.X, Offset: rest.Y, Step: turnStep}
+	pivot := plane.Point{X: j.spec.Follower.PivotDistance}
+	switch f := j.cam.Follower().(type) {
+	case follower.TranslatingFlat:
+		half := plane.Vector{Y: f.FaceWidth / 2}
+		t.Bars = []sheet.Bar{{From: rest.Add(half), To: rest.Add(half.Neg())}}
+	case follower.SwingingRoller:
+		t.Bars = []sheet.Bar{{From: pivot, To: rest}}
+	case follower.SwingingFlat:
+		normal := plane.Vector(rest).Unit() // at lift 0 the face is tangent to the base circle
+		foot := pivot.Add(normal.Scale(-f.FaceOffset))
+		along := rest.Sub(foot).Unit()
+		t.Bars = []sheet.Bar{{From: pivot, To: foot}, {From: foot.Add(along.Scale(f.From)), To: foot.Add(along.Scale(f.To))}}
 	}
-	w := j.cam.Omega()
-	t := &sheet.Turn{Clockwise: f.Clockwise, Contour: j.shape(j.cam.Contour()), Roller: j.cam.Follower().Radius(), Datum: f.Datum, Offset: f.Offset, Step: turnStep}
+	if j.cam.Swings() {
+		t.Pivot, t.Below = pivot.X, j.spec.Follower.Below
+	}
 	if b := j.spec.Cam.Bore; b != nil {
 		t.Bore = b.Diameter
 	}

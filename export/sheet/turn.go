@@ -7,6 +7,7 @@ import (
 	"strconv"
 	"strings"
 
+	"lobewright/synth/plane"
 	"lobewright/tolerance/chain"
 )
 
@@ -16,15 +17,25 @@ type Turn struct {
 	Clockwise bool
 	Contour   chain.Path // closed, cam frame
 	Bore      float64    // diameter, 0 when there is none
+	Center    bool       // the follower has a center: a roller's, or an edge
 	Roller    float64    // radius
-	Datum     float64    // X of the roller center at lift 0
-	Offset    float64    // Y of the roller center
+	Datum     float64    // X of the center at lift 0, or of the face
+	Offset    float64    // Y of the center
+	Bars      []Bar      // arm and face at lift 0
+	Pivot     float64    // X of the pivot of a swinging follower, whose lifts are degrees; 0 for one that slides
+	Below     bool       // a swinging follower below the center line
 
 	// Lift, Velocity and Acceleration at cam angles 0, Step, 2 Step, ... 360 degrees;
 	// velocity and acceleration per second and second squared.
 	Step                         float64
 	Lift, Velocity, Acceleration []float64
 }
+
+// Bar is a line of the follower, cam frame at lift 0, Y up.
+type Bar struct{ From, To plane.Point }
+
+// barView is a Bar with Y down.
+type barView struct{ X1, Y1, X2, Y2 float64 }
 
 // turnView is what the template shows of a Turn.
 type turnView struct {
@@ -35,6 +46,8 @@ type turnView struct {
 	LineFrom, Line float64 // X of the ends of the follower's line
 	Mark           float64 // radius up to which the zero mark runs
 	Stroke, Dash   float64
+	Dot            float64 // radius of the pivot's mark
+	Bars           []barView
 }
 
 // look prepares the figure; nil stays nil. The error names what is not finite or does not fit.
@@ -58,8 +71,15 @@ func (t *Turn) look() (*turnView, error) {
 	}
 	room := 0.08 * far
 	right := t.Datum + lift + t.Roller + room
+	if t.Pivot > 0 {
+		right = t.Pivot + room
+	}
 	v := &turnView{Turn: *t, CenterY: 0 - t.Offset, LineFrom: t.Datum - t.Roller, Line: right, Mark: 0.25 * far, Stroke: far / 160, Dash: far / 40}
 	v.View = fmt.Sprintf("%.5g %.5g %.5g %.5g", -far-room, -far-room, far+room+right, 2*(far+room))
+	v.Dot = 2 * v.Stroke
+	for _, b := range t.Bars {
+		v.Bars = append(v.Bars, barView{b.From.X, 0 - b.From.Y, b.To.X, 0 - b.To.Y})
+	}
 	d, err := pathData(t.Contour)
 	if err != nil {
 		return nil, err

@@ -14,7 +14,7 @@ import (
 // (H. A. Rothbart, ed., Cam Design Handbook, 2004, p. 461).
 func eccentricTurn() *Turn {
 	a, b := plane.Point{X: 28}, plane.Point{X: -52}
-	t := &Turn{Clockwise: true, Roller: 10, Datum: 38, Step: 5, Bore: 16, Contour: chain.Path{
+	t := &Turn{Clockwise: true, Center: true, Roller: 10, Datum: 38, Step: 5, Bore: 16, Contour: chain.Path{
 		{Kind: chain.Arc, From: a, To: b, Center: plane.Point{X: -12}, CCW: true},
 		{Kind: chain.Arc, From: b, To: a, Center: plane.Point{X: -12}, CCW: true},
 	}}

@@ -38,7 +38,7 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 	i := operation - 1
 	op := j.operation(i, j.chord)
 	diameter := op.WireDiameter
-	if op.Process == gcode.Mill {
+	if op.Process != gcode.Wire {
 		if toolDiameter > 0 {
 			op.ToolDiameter = toolDiameter
 		}
@@ -53,7 +53,7 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 	}
 	p := program{index: i, name: file, expect: expect, result: result}
 	return j.proveOutFacts(p, sheet.ProveOut{Tool: tool, Part: s.Part, Units: string(s.Units), File: file, Operation: operation,
-		Process: string(op.Process), ToolDiameter: diameter, Chord: j.chord}), nil
+		Process: s.Operations[i].Process, ToolDiameter: diameter, Chord: j.chord}), nil
 }
 
 func (j *job) proveOutFacts(p program, out sheet.ProveOut) sheet.ProveOut {
@@ -62,7 +62,7 @@ func (j *job) proveOutFacts(p program, out sheet.ProveOut) sheet.ProveOut {
 	for i, c := range r.Cuts {
 		out.Passes = append(out.Passes, j.passFacts(p, i, c))
 	}
-	exact := j.cam.Parallel(r.FinishOffset)
+	exact := j.toolPath(r.FinishOffset)
 	if loop, ok := oneTurn(r.Finish, math.Pow10(-j.spec.Control.Decimals)); ok {
 		if run, err := j.follower(written{file: p.name, curve: "last pass", path: loop, toPitch: -exact.Left()}); err == nil {
 			out.Follower = j.reported(run)

@@ -96,7 +96,7 @@ type Deviation struct {
 	// Left and Right are the largest deviations of the path to the left and right of the
 	// curve, seen along growing parameter, that are certainly reached; >= 0.
 	Left, Right float64
-	At          float64 // where the larger of Left and Right is reached, within the curve's own turn
+	At          float64 // where the larger of Left and Right is reached, within the curve's own turn; where the Bound is much larger, on its element
 	Segment     int     // index of the element there
 	From, To    float64 // stretch that was walked; To exceeds From+360 where the path overlaps itself
 }

@@ -196,13 +196,34 @@ func (p *proof) result() (Deviation, error) {
 	if p.right.size > p.left.size {
 		d.At, d.Segment = p.right.at, p.right.figure
 	}
+	worst := 0
 	for i := range p.figures {
 		b := p.figures[i].total(p.spent[i], p.slip[i])
 		if !finite(b) {
 			return d, fmt.Errorf("element %d (%s): its distance from the curve cannot be bounded", i, p.figures[i].name())
 		}
-		d.Bound = math.Max(d.Bound, b)
+		if b > d.Bound {
+			d.Bound, worst = b, i
+		}
 	}
 	d.Bound = (d.Bound + 3*p.step) * outward
+	if d.Bound > elsewhere*math.Max(d.Left, d.Right) {
+		p.locate(&d, worst)
+	}
 	return d, nil
+}
+
+// elsewhere is by how much the bound may exceed what is certainly reached before the place
+// named is that of the bound: an arc whose radii differ may be resolved in ways that no
+// single point shows.
+const elsewhere = 1.2
+
+// locate names the element and a cam angle on it.
+func (p *proof) locate(d *Deviation, element int) {
+	for _, l := range p.leaves {
+		if l.figure == element {
+			d.At, d.Segment = l.lo+(l.hi-l.lo)/2, element
+			return
+		}
+	}
 }

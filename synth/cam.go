@@ -13,7 +13,7 @@ import (
 	"lobewright/synth/taylor"
 )
 
-// Cam is a plate cam with its follower, complete and not changed after Build.
+// Cam is a cam with its follower, complete and not changed after Build.
 type Cam struct {
 	completed
 	spec     *spec.Spec
@@ -40,7 +40,7 @@ func Vocabulary() spec.Vocabulary {
 	return spec.Vocabulary{
 		Laws:      motion.Names(),
 		Followers: followers(),
-		Cams:      []string{"plate", "groove"},
+		Cams:      []string{"plate", "groove", "barrel"},
 		Processes: []string{"mill", "wire"},
 		ShareLaws: []string{"modified-constant-velocity"},
 
@@ -77,6 +77,9 @@ func Build(s *spec.Spec) (*Cam, error) {
 	if err != nil {
 		return nil, err
 	}
+	if _, ok := f.(follower.Barrel); ok {
+		m.cycle = m.cycle.Opened()
+	}
 	zones := m.cycle.Zones()
 	return &Cam{spec: s, completed: m, zones: zones, lift: zoneLift(zones), follower: f}, nil
 }
@@ -95,18 +98,25 @@ func (c *Cam) Prime() float64 { return c.spec.Cam.BaseRadius + c.follower.Radius
 func (c *Cam) Omega() float64 { return c.spec.Camshaft.Speed * math.Pi / 30 }
 
 // outward returns +1 when the outside of the cam lies to the left of travel: a
-// cam that turns clockwise has its curves run counterclockwise, outside to the right.
-func (c *Cam) outward() float64 { return -c.follower.Sense() }
+// cam that turns clockwise has its curves run counterclockwise, outside to the right. Of
+// a barrel, whose development runs to +X when the cam turns clockwise, the outside is +Y.
+func (c *Cam) outward() float64 {
+	if _, ok := c.drum(); ok {
+		return c.follower.Sense()
+	}
+	return -c.follower.Sense()
+}
 
 // Pitch returns the base curve: the path of the follower's center, or the contour where it
 // has none.
 func (c *Cam) Pitch() *Curve { return c.curve(0) }
 
-// Contour returns the curve that is cut: of a groove its inner wall.
+// Contour returns the curve that is cut: of a groove its inner wall, of a barrel the wall on
+// the side of the datum end, at the outer radius.
 func (c *Cam) Contour() *Curve { return c.Parallel(0) }
 
 // Grooved reports whether the cam is a groove with two walls.
-func (c *Cam) Grooved() bool { return c.spec.Cam.Kind == "groove" }
+func (c *Cam) Grooved() bool { return c.spec.Cam.Kind != "plate" }
 
 // inset is how far the contour lies inside the base curve: the roller's radius, in a
 // groove and half the clearance.
@@ -128,7 +138,8 @@ func (c *Cam) GrooveWidth() float64 { return 2 * c.inset() }
 // FromPitch returns the curve at a distance outside the pitch curve, length.
 func (c *Cam) FromPitch(outside float64) *Curve { return c.curve(c.outward() * outside) }
 
-// OuterWall returns the outer wall of a groove.
+// OuterWall returns the outer wall of a groove, of a barrel the one away from the datum end, at
+// the outer radius.
 func (c *Cam) OuterWall() *Curve { return c.curve(c.outward() * c.inset()) }
 
 // Parallel returns the curve at a distance outside the contour, length.

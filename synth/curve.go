@@ -17,14 +17,19 @@ import (
 type Curve struct {
 	cam    *Cam
 	left   float64 // distance from the pitch curve, to the left of travel, length
+	tool   float64 // of a barrel: radius of a tool that cuts the wall on that side, whose path this is; 0 for the wall itself
 	pieces []plane.Piece
 }
 
 // Pieces returns the analytic pieces, which cover one turn of the camshaft.
 func (c *Curve) Pieces() []plane.Piece { return c.pieces }
 
-// Closed reports that the curve ends where it starts.
-func (c *Curve) Closed() bool { return true }
+// Closed reports whether the curve ends where it starts. A barrel's, being developed, ends
+// one turn beside it.
+func (c *Curve) Closed() bool {
+	_, drum := c.cam.drum()
+	return !drum
+}
 
 // Left returns the distance from the pitch curve to the left of travel.
 func (c *Curve) Left() float64 { return c.left }
@@ -42,6 +47,9 @@ func (c *Curve) At(piece int, t float64) plane.Frame {
 		frame, _ := follower.FaceFrame(p, phi, c.outside())
 		return frame
 	}
+	if x, y, ok := c.drumF(piece, t); ok {
+		return frame(x, y)
+	}
 	x, y := c.cam.pitchF(piece, t)
 	return offsetFrame(frame(x, y), c.left)
 }
@@ -53,6 +61,9 @@ func (c *Curve) Over(piece int, t taylor.Interval, order int) (x, y taylor.I) {
 		deg := taylor.IVar(t, order+1)
 		p, phi := f.SupportI(deg, c.cam.lift.I(piece, deg))
 		return follower.Contour(p.Add(p.Of(c.outside())), phi)
+	}
+	if x, y, ok := c.drumI(piece, t, order); ok {
+		return x, y
 	}
 	if c.left == 0 {
 		return c.cam.pitchI(piece, t, order)
@@ -100,13 +111,18 @@ func (c *Cam) curve(left float64) *Curve {
 	p := &Curve{cam: c, left: left, pieces: make([]plane.Piece, len(zones))}
 	for i, z := range zones {
 		p.pieces[i] = plane.Piece{From: z.From, To: z.To}
-		if z.Dwell {
+		if _, drum := c.drum(); drum {
+			p.pieces[i].Straight = z.Dwell
+		} else if z.Dwell {
 			p.pieces[i].Circle = &plane.Circle{Radius: p.At(i, z.From).P.Radius()}
 		}
 	}
 	for i, z := range zones {
 		prev := (i + len(zones) - 1) % len(zones)
-		p.pieces[i].Jump = jump(p.At(prev, zones[prev].To), p.At(i, z.From), c.Prime())
+		if i == 0 && !p.Closed() {
+			continue
+		}
+		p.pieces[i].Jump = jump(p.At(prev, zones[prev].To), p.At(i, z.From), c.size())
 	}
 	return p
 }

@@ -11,6 +11,9 @@ import (
 // Gates judges the cam itself: motion, contour, body and the reach of every
 // tool. What is written to files is judged where it is written.
 func (c *Cam) Gates() []gate.Gate {
+	if _, ok := c.drum(); ok {
+		return c.drumGates()
+	}
 	g := []gate.Gate{c.pressureGate()}
 	if r := c.returnGate(); r != nil {
 		g = append(g, *r)
@@ -33,6 +36,9 @@ func (c *Cam) Gates() []gate.Gate {
 
 // polarAt returns the polar angle of the contour at a cam angle of a piece.
 func (c *Cam) polarAt(piece int, t float64) float64 {
+	if _, ok := c.drum(); ok {
+		return camAngle(c.follower.Sense() * t)
+	}
 	return c.Contour().At(piece, t).P.PolarAngle()
 }
 

@@ -17,6 +17,10 @@ func newFollower(s *spec.Spec) (follower.Kind, error) {
 	f, base, cw := s.Follower, s.Cam.BaseRadius, s.Camshaft.Clockwise
 	var kind follower.Kind
 	var err error
+	if s.Cam.Kind == "barrel" {
+		kind, err = newBarrel(s)
+		return kind, err
+	}
 	switch f.Kind {
 	case "translating-knife":
 		kind, err = follower.NewTranslatingKnife(base, f.Offset, cw)

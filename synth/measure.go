@@ -39,6 +39,9 @@ func (c *Curve) speed(piece int, t float64) (float64, plane.Frame) {
 		frame, rho := follower.FaceFrame(p, phi, c.outside())
 		return rho * math.Abs(phi.C[1]), frame
 	}
+	if x, y, ok := c.drumF(piece, t); ok {
+		return math.Hypot(x.C[1], y.C[1]), frame(x, y)
+	}
 	x, y := c.cam.pitchF(piece, t)
 	f := frame(x, y)
 	return math.Hypot(x.C[1], y.C[1]) * (1 - c.left*f.K), offsetFrame(f, c.left)
@@ -53,8 +56,11 @@ func (c *Curve) Length() float64 {
 }
 
 // Area returns the enclosed area, positive for either direction of travel, by
-// Green's theorem: half the integral of x dy - y dx.
+// Green's theorem: half the integral of x dy - y dx; 0 of an open curve.
 func (c *Curve) Area() float64 {
+	if !c.Closed() {
+		return 0
+	}
 	return math.Abs(c.integral(func(i int, t float64) float64 {
 		v, f := c.speed(i, t)
 		return v / 2 * (f.P.X*f.T.Y - f.P.Y*f.T.X)
@@ -85,7 +91,7 @@ func (c *Curve) Radii() Radii {
 	concave := c.largest(every, func(i int, t float64) float64 { return -sign * c.At(i, t).K })
 	r := Radii{Convex: math.Inf(1), Concave: math.Inf(1), ConvexAt: convex.t, ConcaveAt: concave.t}
 	// Curvatures below this share of the prime circle's are straight to rounding.
-	floor := 1e-9 / c.cam.Prime()
+	floor := 1e-9 / c.cam.size()
 	if convex.value > floor {
 		r.Convex = 1 / convex.value
 	}
@@ -101,6 +107,9 @@ func (c *Cam) leastRound() (radius float64, at place) {
 	if f, ok := c.face(); ok {
 		p := largest(c.Contour().pieces, every, func(i int, t float64) float64 { return -faceRound(f, c.liftF(i, t), t) })
 		return -p.value, p
+	}
+	if _, ok := c.drum(); ok {
+		return c.drumRound()
 	}
 	r := c.Pitch().Radii()
 	zone, t := c.cycle.Zone(r.ConvexAt)

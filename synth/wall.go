@@ -69,23 +69,16 @@ func (c *Cam) wallGate() gate.Gate {
 	if c.Grooved() {
 		take(c.rim())
 	}
-	for i, f := range fs {
+	for _, f := range fs {
 		take(c.wallToContour(con, f))
-		for _, g := range fs[:i] {
-			d := f.circle.Center.Dist(g.circle.Center) - f.circle.Radius - g.circle.Radius
-			take(wall{d, g.name + " and " + f.name, math.NaN(), f.circle.Center.PolarAngle()})
-		}
 	}
 	if b := c.spec.Cam.Bore; b != nil && b.Keyway != nil {
 		_, bottom := c.KeywayCorners()
 		for _, p := range bottom {
 			take(con.wallTo(feature{"keyway", plane.Circle{Center: p}}))
 		}
-		for i := range c.spec.Cam.Holes {
-			h := c.HoleCircle(i)
-			take(wall{c.keywayDistance(h.Center) - h.Radius, fmt.Sprintf("keyway and hole %d", i+1), math.NaN(), h.Center.PolarAngle()})
-		}
 	}
+	least = c.bodyWalls(least)
 	limit := 0.0
 	if c.spec.Limits.Wall != nil {
 		limit = *c.spec.Limits.Wall
@@ -95,6 +88,30 @@ func (c *Cam) wallGate() gate.Gate {
 		CamAngle: least.t, Polar: least.polar, Pass: least.thick > 0 && least.thick >= limit,
 		Text: "least material, between " + least.between,
 	}
+}
+
+// bodyWalls returns the least material between any two of bore, keyway and holes, or what is
+// given where that is less.
+func (c *Cam) bodyWalls(least wall) wall {
+	take := func(w wall) {
+		if w.thick < least.thick {
+			least = w
+		}
+	}
+	for i, fs := 0, c.features(); i < len(fs); i++ {
+		f := fs[i]
+		for _, g := range fs[:i] {
+			d := f.circle.Center.Dist(g.circle.Center) - f.circle.Radius - g.circle.Radius
+			take(wall{d, g.name + " and " + f.name, math.NaN(), f.circle.Center.PolarAngle()})
+		}
+	}
+	if b := c.spec.Cam.Bore; b != nil && b.Keyway != nil {
+		for i := range c.spec.Cam.Holes {
+			h := c.HoleCircle(i)
+			take(wall{c.keywayDistance(h.Center) - h.Radius, fmt.Sprintf("keyway and hole %d", i+1), math.NaN(), h.Center.PolarAngle()})
+		}
+	}
+	return least
 }
 
 // wallToContour returns the material between a feature and the contour; in a grooved body

@@ -12,6 +12,9 @@ const (
 	LayerContour      = "CONTOUR"       // the finished profile of a plate cam
 	LayerContourInner = "CONTOUR_INNER" // inner wall of a groove
 	LayerContourOuter = "CONTOUR_OUTER" // outer wall of a groove
+	LayerContourLower = "CONTOUR_LOWER" // developed wall of a barrel on the side of the datum end
+	LayerContourUpper = "CONTOUR_UPPER" // developed wall of a barrel away from the datum end
+	LayerBarrel       = "BARREL"        // developed outside of a barrel
 	LayerPitchCurve   = "PITCH_CURVE"   // path of the roller's center in the cam frame
 	LayerBaseCircle   = "BASE_CIRCLE"   // the circle of lift 0
 	LayerBore         = "BORE"          // bore with its keyway, and the holes
@@ -42,9 +45,9 @@ type look struct {
 // only thought, thin and broken. A layer not named above is thin, solid and white.
 func lookOf(layer string) look {
 	switch layer {
-	case LayerContour, LayerContourInner, LayerContourOuter:
+	case LayerContour, LayerContourInner, LayerContourOuter, LayerContourLower, LayerContourUpper:
 		return look{color.White, solid, 50}
-	case LayerBore:
+	case LayerBore, LayerBarrel:
 		return look{color.Green, solid, 50}
 	case LayerPitchCurve:
 		return look{color.Cyan, center, 18}
@@ -63,8 +66,8 @@ func lookOf(layer string) look {
 // known lists the layers in the order of the layer table.
 func known() []string {
 	return []string{
-		LayerContour, LayerContourInner, LayerContourOuter, LayerPitchCurve, LayerBaseCircle,
-		LayerBore, LayerCenterlines, LayerZeroMark, LayerCheckLine, LayerNotes,
+		LayerContour, LayerContourInner, LayerContourOuter, LayerContourLower, LayerContourUpper, LayerPitchCurve, LayerBaseCircle,
+		LayerBarrel, LayerBore, LayerCenterlines, LayerZeroMark, LayerCheckLine, LayerNotes,
 	}
 }
 

@@ -38,7 +38,7 @@ const turnStep = 0.5
 
 // turn is the moving figure of the sheet; a contour that cannot be written does not move.
 func (j *job) turn() *sheet.Turn {
-	if j.outline == nil {
+	if j.outline == nil || j.drum() {
 		return nil
 	}
 	w, rest := j.cam.Omega(), j.cam.AtRest()
@@ -96,7 +96,12 @@ func (j *job) drawingData(head svg.Head) svg.DrawingData {
 	}
 	if j.cam.Grooved() {
 		d.Contours = append(d.Contours, j.shape(j.cam.OuterWall()))
+	}
+	if j.cam.Grooved() && !j.drum() {
 		d.Notes = append([]string{fmt.Sprintf("Groove %.6g wide, %g deep from the marked face.", j.cam.GrooveWidth(), s.Cam.GrooveDepth)}, d.Notes...)
+	}
+	if d.Barrel = j.barrelData(); d.Barrel != nil {
+		d.Roller = plane.Point{X: j.xOf(0), Y: s.Cam.TrackPosition}
 	}
 	zone, t := j.cam.Cycle().Zone(0)
 	d.Zero = j.cam.Contour().At(zone, t).P
@@ -121,6 +126,9 @@ func (j *job) shape(c *synth.Curve) chain.Path {
 				return w.path
 			}
 		}
+	}
+	if j.drum() {
+		return j.drumDraft(c)
 	}
 	var p chain.Path
 	if c.Left() == j.cam.Contour().Left() {

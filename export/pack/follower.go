@@ -20,6 +20,9 @@ type run struct {
 
 // linkage is the follower as something to be run over a path.
 func (j *job) linkage() follow.Follower {
+	if j.drum() {
+		return j.drumLinkage()
+	}
 	switch f := j.cam.Follower().(type) {
 	case follower.TranslatingRoller:
 		return follow.Roller{Offset: f.Offset, Datum: f.Datum, Clockwise: f.Clockwise}
@@ -146,6 +149,9 @@ func (j *job) runFollower() follow.Error {
 	}
 	var worst follow.Error
 	for _, w := range all {
+		if j.drum() && w.toPitch != 0 {
+			continue // a wall of a barrel is no parallel of what the roller's center runs on
+		}
 		r, err := j.follower(w)
 		if err != nil {
 			// The path is proven; only what the follower does on it is not known.

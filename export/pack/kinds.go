@@ -23,6 +23,9 @@ func (j *job) followerText() string {
 // placeText says where the follower stands.
 func (j *job) placeText() string {
 	f, u := j.spec.Follower, j.spec.Units.Short()
+	if j.drum() {
+		return "its axis radial, moving along the camshaft away from the datum end"
+	}
 	if f.Swings() {
 		side := "above (+Y)"
 		if f.Below {

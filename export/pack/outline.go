@@ -99,6 +99,9 @@ func (o *outline) worst() certify.Deviation {
 }
 
 func (j *job) tryOutline(eps float64) (*outline, error) {
+	if j.drum() {
+		return j.tryDrumOutline(eps)
+	}
 	pitch, err := j.pitchFit(eps)
 	if err != nil {
 		return nil, err
@@ -143,6 +146,9 @@ func (j *job) proveOutline(drawing dxf.Drawing, data []byte) (*outline, error) {
 	if j.cam.Grooved() {
 		layers = []layer{{dxf.LayerContourInner, "inner wall", j.cam.Contour()}, {dxf.LayerContourOuter, "outer wall", j.cam.OuterWall()}}
 	}
+	if j.drum() {
+		layers = []layer{{dxf.LayerContourLower, "lower wall", j.cam.Contour()}, {dxf.LayerContourUpper, "upper wall", j.cam.OuterWall()}}
+	}
 	if j.cam.HasPitchCurve() {
 		layers = append(layers, layer{dxf.LayerPitchCurve, "pitch curve", j.cam.Pitch()})
 	}
@@ -163,13 +169,13 @@ func (j *job) tampered(name string, data []byte) []byte {
 	return j.opt.tamper(name, data)
 }
 
-// proveLayer certifies the one closed polyline of a layer against its exact curve.
+// proveLayer certifies the one polyline of a layer against its exact curve, closed as that is.
 func (j *job) proveLayer(name string, file *read.File, layer, curve string, exact *synth.Curve) (written, error) {
 	var path chain.Path
 	for _, p := range file.Polylines {
 		if p.Layer == layer {
-			if path != nil || !p.Closed {
-				return written{}, fmt.Errorf("%s: layer %s must hold one closed polyline", name, layer)
+			if path != nil || p.Closed != exact.Closed() {
+				return written{}, fmt.Errorf("%s: layer %s must hold one polyline, closed: %v", name, layer, exact.Closed())
 			}
 			path = chain.FromBulges(p.Points, p.Bulges, p.Closed)
 		}
@@ -177,7 +183,11 @@ func (j *job) proveLayer(name string, file *read.File, layer, curve string, exac
 	if path == nil {
 		return written{}, fmt.Errorf("%s: layer %s holds no polyline", name, layer)
 	}
-	d, err := certify.Closed(exact, path)
+	prove := certify.Closed
+	if !exact.Closed() {
+		prove = certify.Open
+	}
+	d, err := prove(exact, path)
 	if err != nil {
 		return written{}, fmt.Errorf("%s: layer %s: %w", name, layer, err)
 	}

@@ -181,6 +181,9 @@ func (j *job) fitTo(share float64, decimals int) float64 {
 }
 
 func (j *job) polar(t float64) float64 {
+	if b, ok := j.cam.Barrel(); ok {
+		return plane.Wrap360(b.Sense() * t)
+	}
 	zone, at := j.cam.Cycle().Zone(t)
 	return j.cam.Contour().At(zone, at).P.PolarAngle()
 }

@@ -118,12 +118,19 @@ func (j *job) facts() []sheet.Fact {
 	if stroke := j.cam.Stroke(); stroke > 0 {
 		add("Stroke", "%.6g %s of the roller center along its arc, for %.6g deg of swing", stroke, u, j.cam.Cycle().MaxLift())
 	}
-	add("Base circle", "radius %g %s", s.Cam.BaseRadius, u)
-	if j.cam.HasPitchCurve() {
+	if j.drum() {
+		add("Barrel", "outer radius %g %s, length %g %s; the track at lift 0 is %g %s from the datum end", s.Cam.Radius, u, s.Cam.Length, u, s.Cam.TrackPosition, u)
+		add("Groove", "width %.6g %s (roller and %g of clearance, half on each wall), depth %g %s", j.cam.GrooveWidth(), u, s.Cam.Clearance, s.Cam.GrooveDepth, u)
+	} else {
+		add("Base circle", "radius %g %s", s.Cam.BaseRadius, u)
+	}
+	if j.cam.HasPitchCurve() && !j.drum() {
 		add("Prime circle", "radius %g %s", j.cam.Prime(), u)
 	}
-	add("Thickness", "%g %s", s.Cam.Thickness, u)
-	if j.cam.Grooved() {
+	if !j.drum() {
+		add("Thickness", "%g %s", s.Cam.Thickness, u)
+	}
+	if j.cam.Grooved() && !j.drum() {
 		add("Groove", "width %.6g %s (roller and %g of clearance, half on each wall), depth %g %s, outside diameter %g %s", j.cam.GrooveWidth(), u, s.Cam.Clearance, s.Cam.GrooveDepth, u, s.Cam.OutsideDiameter, u)
 	}
 	if b := s.Cam.Bore; b != nil {

@@ -84,7 +84,7 @@ func (j *job) inspectionTable() ([]byte, error) {
 		rows = append(rows, table.InspectionRow{
 			CamAngle: s.angle, Lift: j.cam.LiftIn(s.zone, s.t).S,
 			CenterX: p.P.X, CenterY: p.P.Y, NoCenter: !j.cam.HasCenter(), ContourX: k.P.X, ContourY: k.P.Y,
-			Radius: k.P.Radius(), PolarAngle: k.P.PolarAngle(),
+			Radius: j.radiusOf(k.P), PolarAngle: j.polarOfPoint(k.P),
 			NormalAngle:       plane.Wrap360(j.outward(k).Angle().Deg()),
 			PressureAngle:     j.cam.PressureAngleIn(s.zone, s.t).Deg(),
 			RadiusOfCurvature: j.convex(k) * 1 / math.Abs(k.K),
@@ -103,8 +103,24 @@ func (j *job) outerWall(zone int, t float64) *table.WallPoint {
 		return nil
 	}
 	k := j.cam.OuterWall().At(zone, t)
-	return &table.WallPoint{X: k.P.X, Y: k.P.Y, Radius: k.P.Radius(), PolarAngle: k.P.PolarAngle(),
+	return &table.WallPoint{X: k.P.X, Y: k.P.Y, Radius: j.radiusOf(k.P), PolarAngle: j.polarOfPoint(k.P),
 		NormalAngle: plane.Wrap360(j.outward(k).Angle().Deg() + 180), RadiusOfCurvature: -j.convex(k) / math.Abs(k.K)}
+}
+
+// radiusOf and polarOfPoint say where a point of a curve is on the cam: those of a barrel are
+// developed.
+func (j *job) radiusOf(p plane.Point) float64 {
+	if b, ok := j.cam.Barrel(); ok {
+		return b.OuterRadius
+	}
+	return p.Radius()
+}
+
+func (j *job) polarOfPoint(p plane.Point) float64 {
+	if b, ok := j.cam.Barrel(); ok {
+		return plane.Wrap360(p.X / b.OuterRadius * 180 / math.Pi)
+	}
+	return p.PolarAngle()
 }
 
 // same reports whether the two rows of a junction would print alike: one is enough then.

@@ -15,6 +15,9 @@ const tracePoints = 7
 // trace samples the deviation of a closed path around its exact curve, positive
 // outside, for a chart. It proves nothing: the certificate does.
 func (j *job) trace(exact *synth.Curve, path chain.Path) [][]svg.DeviationSample {
+	if j.drum() {
+		return j.drumTrace(exact, path)
+	}
 	foot := j.nearest(exact, path[0].From)
 	var run []svg.DeviationSample
 	runs := [][]svg.DeviationSample{}

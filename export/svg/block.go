@@ -61,8 +61,12 @@ func (g *drawing) standing() []string {
 	if g.d.Follower != "" {
 		ns = append(ns, "Follower: "+g.d.Follower+".")
 	}
-	ns = append(ns, "Angles at ticks are cam angles, counted against the turning direction from the zero mark. "+
-		"Other angles are polar angles, counterclockwise from +X (right).")
+	if g.d.Barrel != nil {
+		ns = append(ns, "Angles at the lines are cam angles. Polar angles are counterclockwise seen on the marked face, 0° at X = 0; X and the lengths along it hold at the outer radius.")
+	} else {
+		ns = append(ns, "Angles at ticks are cam angles, counted against the turning direction from the zero mark. "+
+			"Other angles are polar angles, counterclockwise from +X (right).")
+	}
 	return append(ns, g.d.Notes...)
 }
 
@@ -171,7 +175,10 @@ func (g *drawing) titleRows() [][]cell {
 	if d.Clockwise {
 		turns = "clockwise"
 	}
-	state := "RELEASED"
+	state, seen := "RELEASED", "TURNS, SEEN HERE"
+	if d.Barrel != nil {
+		seen = "TURNS, ON MARKED FACE"
+	}
 	if !d.Released {
 		state = "NOT RELEASED"
 	}
@@ -189,7 +196,7 @@ func (g *drawing) titleRows() [][]cell {
 		half("FINISH", d.Finish, "DATE", d.Date),
 		half("DRAWN", d.Drawn, "CHECKED", d.Checked),
 		{{"SCALE (" + g.p.name + ")", g.s.String(), 0.28, 2.8, false}, {"UNITS", d.Units, 0.2, 2.8, false},
-			{"TURNS, SEEN HERE", turns + ", " + num(d.Speed, 3) + " rpm", 0.52, 2.8, false}},
+			{seen, turns + ", " + num(d.Speed, 3) + " rpm", 0.52, 2.8, false}},
 		{{"SPEC SHA-256", sha, 0.5, 2.8, false}, {"STATE", state, 0.5, 2.8, true}},
 	}
 	var rows [][]cell

@@ -42,6 +42,7 @@ type DrawingData struct {
 	Swings          bool         // the follower swings about a pivot: it has no line
 	Follower        string       // a note that says what the follower is and where it stands; may be empty
 	Profile         float64      // length, total width of the profile zone
+	Barrel          *Barrel      // set when the view is a barrel's development; Contours are then its two walls
 	Bore            *Bore        // nil when there is none
 	Holes           []Hole
 	NoDatum         bool        // the spec says there is no angular datum
@@ -49,6 +50,14 @@ type DrawingData struct {
 	Events          []Event     // in order of cam angle
 	Notes           []string
 	Cautions        []string
+}
+
+// Barrel is a barrel cam, developed at its outer radius and seen from outside: X is the
+// radius times the polar angle, Y from the datum end. All are lengths.
+type Barrel struct {
+	Radius, Length, Depth, Width float64
+	Track                        float64 // Y of the track at lift 0
+	Left, Right                  float64 // range of X
 }
 
 // Bore is the hole about the camshaft axis: datum A.

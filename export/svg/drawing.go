@@ -28,6 +28,9 @@ func Drawing(data DrawingData) ([]byte, error) {
 	if err := data.check(); err != nil {
 		return nil, err
 	}
+	if data.Barrel != nil {
+		return development(data)
+	}
 	g := &drawing{d: data, contour: outline(data), pitch: points(data.PitchCurve)}
 	ext := g.extent()
 	var err error
@@ -88,6 +91,10 @@ func (d DrawingData) numbers() []number {
 			ns = append(ns, number{"keyway width", k.Width, true}, number{"keyway depth", k.Depth, true},
 				number{"keyway place", k.At, false})
 		}
+	}
+	if b := d.Barrel; b != nil {
+		ns = append(ns, number{"barrel's radius", b.Radius, true}, number{"barrel's length", b.Length, true}, number{"groove's depth", b.Depth, true},
+			number{"groove's width", b.Width, true}, number{"track", b.Track, false}, number{"left end", b.Left, false}, number{"right end", b.Right, false})
 	}
 	for i, h := range d.Holes {
 		hole := fmt.Sprintf("hole %d ", i+1)
@@ -173,19 +180,25 @@ func (g *drawing) border() {
 }
 
 // caption says which side is seen, and stamps a drawing that is not released.
-func (g *drawing) caption() {
+func (g *drawing) caption() { g.head("B", "SEEN ON THE MARKED FACE (Z0)") }
+
+// head writes over the view, after a datum's letter where it has one.
+func (g *drawing) head(datum, text string) {
 	g.c.doing("caption")
 	f := g.p.field()
 	x, y := f.x0+4, f.y0+6.5
-	text := "SEEN ON THE MARKED FACE (Z0)"
-	g.cells(pt{x, y - 3.8}, 5, 3, "B")
-	g.c.text(pt{x + 7, y}, text, font{size: 3.5, bold: true})
-	g.l.block(box{x, y - 4.5, x + 7 + widthOf(text, 3.5, true), y + 2})
+	if datum != "" {
+		g.cells(pt{x, y - 3.8}, 5, 3, datum)
+		x += 7
+	}
+	g.c.text(pt{x, y}, text, font{size: 3.5, bold: true})
+	g.l.block(box{f.x0 + 4, y - 4.5, x + widthOf(text, 3.5, true), y + 2})
 	if g.d.Released {
 		return
 	}
 	const size = 11.0
 	stamp := "NOT RELEASED"
+	x = f.x0 + 4
 	b := box{x, y + 4, x + widthOf(stamp, size, true) + 4, y + 4 + size*1.25}
 	g.c.rect(b, pen{width: 1, color: red})
 	g.c.text(pt{b.center().x, b.y0 + size}, stamp, font{size: size, bold: true, color: red, anchor: "middle"})

@@ -9,7 +9,8 @@ import (
 
 // Barrel is a groove on a cylinder, with a roller whose axis is radial and which moves
 // along +Z. Its curves are in the developed plane, seen from outside: X is the cam's
-// outer radius times the polar angle, Y the axial position from the datum end.
+// outer radius times the polar angle, Y the axial position from the datum end. As a Kind
+// its base curve is the path of the roller's center there.
 type Barrel struct {
 	OuterRadius  float64 // length
 	Depth        float64 // of the groove, from the outer radius, length
@@ -52,10 +53,21 @@ func (b Barrel) F(deg, lift taylor.F) (x, y taylor.F) { return developed(b, deg,
 // I encloses what F computes, over an interval of cam angle.
 func (b Barrel) I(deg, lift taylor.I) (x, y taylor.I) { return developed(b, deg, lift) }
 
-// PressureAngle returns the angle between the contact normal and the follower's
+// Radius returns the roller's radius, length.
+func (b Barrel) Radius() float64 { return b.RollerRadius }
+
+// Contact returns 0, as of every roller.
+func (b Barrel) Contact(lift, slope float64) float64 { return 0 }
+
+// PressureAngle returns the pressure angle at the middle of the roller's depth.
+func (b Barrel) PressureAngle(lift, slope float64) plane.Angle {
+	return b.Slant(slope, b.MiddleRadius())
+}
+
+// Slant returns the angle between the contact normal and the follower's
 // line at a distance from the camshaft axis, positive when the side force pushes towards
 // the cam's turning direction: tan a = (ds/dθ)/radius. Slope in length a radian.
-func (b Barrel) PressureAngle(slope, radius float64) plane.Angle {
+func (b Barrel) Slant(slope, radius float64) plane.Angle {
 	return plane.Angle(math.Atan2(slope, radius))
 }
 

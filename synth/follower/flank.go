@@ -83,6 +83,31 @@ func flankAt[T taylor.Scalar[T]](b Barrel, deg, lift T, w Wall, along float64) (
 	return x, y, lift.Add(lift.Of(b.Track)).Add(long.Of(w.sign() * w.Half * along).Div(long))
 }
 
+// shifted is the axis of a tool narrower than the groove that cuts one wall, in the developed
+// plane: moved square to the track, by what the wall lies further out than the tool reaches.
+// It touches the wall where it should at the distance from the camshaft axis that is given,
+// for which the track's slope is taken.
+func shifted[T taylor.Scalar[T]](b Barrel, deg, lift T, w Wall, tool, radius float64) (x, y T) {
+	d := w.Half - tool
+	v := slope(deg, lift)
+	long := v.Mul(v).Add(v.Of(radius * radius)).Sqrt()
+	x, y = developed(b, deg, lift)
+	t := v.Div(long).Scale(-w.sign() * b.Sense() * d * b.OuterRadius / radius)
+	return x.Add(t), y.Add(long.Of(w.sign() * d * radius).Div(long))
+}
+
+// ShiftedF returns the path of the axis of a tool of the given radius (length, at most
+// w.Half) that cuts the wall w, touching it exactly at a distance from the camshaft axis
+// (length, above 0), as series in the cam angle in degrees. One order is lost.
+func (b Barrel) ShiftedF(deg, lift taylor.F, w Wall, tool, radius float64) (x, y taylor.F) {
+	return shifted(b, deg, lift, w, tool, radius)
+}
+
+// ShiftedI encloses what ShiftedF computes; its order is one less than that of lift.
+func (b Barrel) ShiftedI(deg, lift taylor.I, w Wall, tool, radius float64) (x, y taylor.I) {
+	return shifted(b, deg, lift, w, tool, radius)
+}
+
 // FlankF returns the point of the wall that touches the roller at a distance from the
 // camshaft axis measured along the roller's axis (length, above 0), in the cam frame: x
 // and y across the camshaft, axial from the datum end. One order is lost.

@@ -22,7 +22,8 @@ import (
 	"lobewright/synth/taylor"
 )
 
-// Kind is a follower of a plate or groove cam, complete with its geometry.
+// Kind is a follower, complete with its geometry. Of a barrel all curves are in the
+// developed plane.
 type Kind interface {
 	// Sense returns by which sign machine points turn in the cam frame as the cam angle
 	// grows: +1 when the cam turns clockwise, -1 otherwise.

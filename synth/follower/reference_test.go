@@ -172,7 +172,7 @@ func TestBarrelVectors(t *testing.T) {
 		x, y := b.F(taylor.FVar(r.deg), s)
 		near(t, "lift", y.C[0], r.s, printed)
 		near(t, "slope", s.C[1]*toDeg, r.v, printed)
-		near(t, "pressure angle", b.PressureAngle(s.C[1]*toDeg, 50).Deg(), r.alpha, printed)
+		near(t, "pressure angle", b.Slant(s.C[1]*toDeg, 50).Deg(), r.alpha, printed)
 		near(t, "curvature", curvature(x, y), 1/r.rho, printed)
 	}
 	up, low := follower.Wall{Half: 8, Upper: true}, follower.Wall{Half: 8}

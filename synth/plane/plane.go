@@ -94,5 +94,6 @@ type Frame struct {
 type Piece struct {
 	From, To float64
 	Circle   *Circle    // set when the piece is an arc of this circle exactly
+	Straight bool       // the piece is a straight line exactly
 	Jump     [3]float64 // steps at From: of the tangent's angle (rad), of K, of DK
 }

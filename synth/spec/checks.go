@@ -31,16 +31,39 @@ func (r *reader) checkBody(s *Spec) {
 	if c.Kind == grooveCam && c.GrooveDepth >= c.Thickness && r.ok("cam.groove_depth", "cam.thickness") {
 		r.faultAt("cam.groove_depth", Fault{Found: figure(c.GrooveDepth), Allowed: "a groove shallower than the thickness, which is " + figure(c.Thickness)})
 	}
-	if b := c.Bore; b != nil && r.ok("cam.bore.diameter", "cam.base_radius") && b.Diameter/2 >= c.BaseRadius {
+	if c.Kind == barrelCam {
+		r.checkBarrel(s)
+	}
+	if b := c.Bore; b != nil && c.Kind != barrelCam && r.ok("cam.bore.diameter", "cam.base_radius") && b.Diameter/2 >= c.BaseRadius {
 		r.faultAt("cam.bore.diameter", Fault{Found: figure(b.Diameter), Allowed: "a bore smaller than the base circle, whose diameter is " + figure(2*c.BaseRadius)})
 	}
 	if b := c.Bore; b != nil && b.Keyway != nil && r.ok("cam.bore.diameter", "cam.bore.keyway.width") && b.Keyway.Width >= b.Diameter {
 		r.faultAt("cam.bore.keyway.width", Fault{Found: figure(b.Keyway.Width), Allowed: "a keyway narrower than the bore, whose diameter is " + figure(b.Diameter)})
 	}
 	prime := c.BaseRadius + s.Follower.RollerDiameter/2 + s.Follower.FaceRadius
-	if r.ok("follower", "cam.base_radius") && math.Abs(s.Follower.Offset) >= prime {
+	if c.Kind != barrelCam && r.ok("follower", "cam.base_radius") && math.Abs(s.Follower.Offset) >= prime {
 		r.faultAt("follower.offset", Fault{Found: figure(s.Follower.Offset),
 			Allowed: "an offset smaller than the prime radius (base radius and roller or face radius), which is " + figure(prime)})
+	}
+}
+
+// checkBarrel: the follower is a roller on a radial axis, and the groove leaves a core.
+func (r *reader) checkBarrel(s *Spec) {
+	c, f := s.Cam, s.Follower
+	if r.ok("follower.kind", "cam.kind") && f.Kind != transRoller {
+		r.faultAt("cam.kind", Fault{Found: "barrel with the follower " + f.Kind, Allowed: "a barrel with " + transRoller})
+		return
+	}
+	if r.ok("follower.offset") && f.Offset != 0 {
+		r.faultAt("follower.offset", Fault{Found: figure(f.Offset), Allowed: "0: the roller's axis of a barrel cam is radial", Advice: "take the key out"})
+	}
+	if r.ok("cam.groove_depth", "cam.radius") && c.GrooveDepth >= c.Radius {
+		r.faultAt("cam.groove_depth", Fault{Found: figure(c.GrooveDepth), Allowed: "a groove shallower than the barrel's radius, which is " + figure(c.Radius)})
+	} else if r.ok("cam.groove_depth", "cam.radius", "follower.roller_diameter") && f.RollerDiameter+c.Clearance >= 2*(c.Radius-c.GrooveDepth) {
+		r.faultAt("cam.groove_depth", Fault{Found: figure(c.GrooveDepth), Allowed: "a groove that leaves a core thicker than the roller with its clearance, which is " + figure(f.RollerDiameter+c.Clearance)})
+	}
+	if b := c.Bore; b != nil && r.ok("cam.bore.diameter", "cam.groove_depth", "cam.radius") && b.Diameter/2 >= c.Radius-c.GrooveDepth {
+		r.faultAt("cam.bore.diameter", Fault{Found: figure(b.Diameter), Allowed: "a bore smaller than the core under the groove, whose diameter is " + figure(2*(c.Radius-c.GrooveDepth))})
 	}
 }
 
@@ -53,7 +76,7 @@ func (r *reader) checkBlank(s *Spec) {
 		}
 		return
 	}
-	if r.ok("blank.diameter", "cam.base_radius") && b.Diameter/2 <= s.Cam.BaseRadius {
+	if s.Cam.Kind != barrelCam && r.ok("blank.diameter", "cam.base_radius") && b.Diameter/2 <= s.Cam.BaseRadius {
 		r.faultAt("blank.diameter", Fault{Found: figure(b.Diameter), Allowed: "a blank larger than the base circle, whose diameter is " + figure(2*s.Cam.BaseRadius)})
 	}
 	if r.ok("blank.diameter", "blank.clamp_radius") && b.ClampRadius >= b.Diameter/2 {

@@ -111,22 +111,26 @@ func faceTable() table[Face] {
 const (
 	plateCam  = "plate"
 	grooveCam = "groove"
+	barrelCam = "barrel"
 )
 
 func camTable(v Vocabulary) table[Cam] {
 	return table[Cam]{what: "a cam", place: func(c *Cam, p Place) { c.Place = p },
 		kinds: v.Cams, name: "kind", kind: byKey("kind", v.Cams, everyCam()),
-		absent: []absent{{name: "keyway", of: "bore"}, {name: "radius", of: "barrel"}, {name: "length", of: "barrel"}, {name: "track_position", of: "barrel"}},
+		absent: []absent{{name: "keyway", of: "bore"}},
 		fields: []field[Cam]{
 			kindKey("kind", "kind of cam", v.Cams, func(c *Cam, w string) { c.Kind = w }),
-			number("base_radius", "radius of the base circle, which the follower rests on at lift 0, length", length(), func(c *Cam) *float64 { return &c.BaseRadius }).required(),
-			number("thickness", "thickness of the cam, length", length(), func(c *Cam) *float64 { return &c.Thickness }).required(),
+			number("base_radius", "radius of the base circle, which the follower rests on at lift 0, length", length(), func(c *Cam) *float64 { return &c.BaseRadius }).of(plateCam, grooveCam).required(),
+			number("radius", "outer radius of the barrel, length", length(), func(c *Cam) *float64 { return &c.Radius }).of(barrelCam).required(),
+			number("length", "length of the barrel along the camshaft axis, from the datum end to the marked face", length(), func(c *Cam) *float64 { return &c.Length }).of(barrelCam).required(),
+			number("track_position", "from the datum end to the middle of the track at lift 0, length", length(), func(c *Cam) *float64 { return &c.TrackPosition }).of(barrelCam).required(),
+			number("thickness", "thickness of the cam, length", length(), func(c *Cam) *float64 { return &c.Thickness }).of(plateCam, grooveCam).required(),
 			maybe("bore", "the hole about the camshaft axis", boreTable(), func(c *Cam) **Bore { return &c.Bore }),
 			list("holes", "round through holes", holeTable(), func(_ *reader, c *Cam, all []Hole) { c.Holes = all }),
 			number("outside_diameter", "outside diameter of the body, length", length(), func(c *Cam) *float64 { return &c.OutsideDiameter }).of(plateCam),
 			number("outside_diameter", "outside diameter of the body, length", length(), func(c *Cam) *float64 { return &c.OutsideDiameter }).of(grooveCam).required(),
-			number("groove_depth", "depth of the groove from the marked face, length", length(), func(c *Cam) *float64 { return &c.GrooveDepth }).of(grooveCam).required(),
-			number("clearance", "groove width less roller diameter, length, shared by both walls", orNoLength(), func(c *Cam) *float64 { return &c.Clearance }).of(grooveCam).required(),
+			number("groove_depth", "depth of the groove from the marked face, of a barrel from its outer radius, length", length(), func(c *Cam) *float64 { return &c.GrooveDepth }).of(grooveCam, barrelCam).required(),
+			number("clearance", "groove width less roller diameter, length, shared by both walls", orNoLength(), func(c *Cam) *float64 { return &c.Clearance }).of(grooveCam, barrelCam).required(),
 			choice("datum", "none: the cam has no angular datum (no keyway, no hole off the axis), on purpose", []string{"none"}, nil,
 				func(c *Cam, _ string) { c.NoDatum = true }),
 		}}

@@ -149,9 +149,12 @@ type Cam struct {
 	Bore            *Bore   // nil when there is none
 	Holes           []Hole
 	OutsideDiameter float64 // length, 0 when not given
-	GrooveDepth     float64 // length, of a groove
+	GrooveDepth     float64 // length, of a groove or a barrel
 	Clearance       float64 // length, groove width less roller diameter
 	NoDatum         bool    // `datum: none` was said outright
+	Radius          float64 // length, of a barrel: outer radius
+	Length          float64 // length, of a barrel: along the camshaft
+	TrackPosition   float64 // length, of a barrel: from the datum end to the track at lift 0
 	Place           Place
 }
 

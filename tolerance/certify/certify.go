@@ -75,9 +75,10 @@ import (
 	"lobewright/tolerance/chain"
 )
 
-// Curve is an exact closed curve. Its parameter is the cam angle in degrees.
+// Curve is an exact curve. Its parameter is the cam angle in degrees.
 type Curve interface {
-	// Pieces follow each other from t0 to t0+360; the curve is closed and continuous.
+	// Pieces follow each other from t0 to t0+360; the curve is continuous, and closed but
+	// for Open.
 	Pieces() []plane.Piece
 	// At evaluates one piece in plain floats. It guides the search and proves nothing.
 	At(piece int, t float64) plane.Frame
@@ -106,32 +107,51 @@ type Deviation struct {
 // when the path is not connected and closed, runs backwards, turns once too often or
 // too seldom, or has an arc that is none; in all other cases the Bound holds.
 func Closed(curve Curve, path chain.Path) (Deviation, error) {
-	return certify(curve, path, true)
+	return certify(curve, path, turn)
 }
 
 // Stretch certifies an open path that starts and ends near the curve against the
 // stretch between the feet of its first and last points, which the result
 // names. Errors are those of Closed.
 func Stretch(curve Curve, path chain.Path) (Deviation, error) {
-	return certify(curve, path, false)
+	return certify(curve, path, stretch)
 }
 
-func certify(curve Curve, path chain.Path, closed bool) (Deviation, error) {
-	s, err := newSurvey(curve)
+// Open certifies an open path against the whole of a curve that is not closed: a development.
+// It begins beside the curve's first point and ends beside its last. Errors are those of
+// Closed.
+func Open(curve Curve, path chain.Path) (Deviation, error) {
+	return certify(curve, path, whole)
+}
+
+// reach says how much of the curve a path stands for.
+type reach uint8
+
+const (
+	turn    reach = iota // a closed curve, once around
+	stretch              // of a closed curve, what the path runs along
+	whole                // all of an open curve
+)
+
+func certify(curve Curve, path chain.Path, r reach) (Deviation, error) {
+	s, err := newSurvey(curve, r != whole)
 	if err != nil {
 		return Deviation{}, err
 	}
-	figures, err := connected(path, closed)
+	figures, err := connected(path, r == turn)
 	if err != nil {
 		return Deviation{}, err
 	}
 	p := proof{survey: s, figures: figures, spent: make([]float64, len(figures)), slip: make([]float64, len(figures))}
 	w := newWalker(s)
-	first := w.start(figures[0].e.From)
+	first := mark{0, s.t0}
+	if r != whole {
+		first = w.start(figures[0].e.From)
+	}
 	here := first
 	for i := range figures {
 		there, err := w.step(here, &figures[i])
-		if closed && i == len(figures)-1 {
+		if r != stretch && i == len(figures)-1 {
 			there = mark{first.turn + 1, first.t}
 		}
 		if err == nil {

@@ -47,7 +47,7 @@ const (
 // and continuous is reported by every Clear.
 func Prepare(curve Curve) *Body {
 	b := &Body{}
-	if b.survey, b.err = newSurvey(curve); b.err != nil {
+	if b.survey, b.err = newSurvey(curve, true); b.err != nil {
 		return b
 	}
 	s := b.survey

@@ -57,7 +57,7 @@ type survey struct {
 // that passes for rounding.
 const stepShare = 1e-9
 
-func newSurvey(curve Curve) (*survey, error) {
+func newSurvey(curve Curve, closed bool) (*survey, error) {
 	s := &survey{curve: curve, pieces: curve.Pieces()}
 	n := len(s.pieces)
 	if n == 0 {
@@ -75,10 +75,12 @@ func newSurvey(curve Curve) (*survey, error) {
 		s.size = math.Max(s.size, math.Max(end.x.Mag(), end.y.Mag()))
 		middle := s.spot(i, p.From+(p.To-p.From)/2)
 		s.size = math.Max(s.size, math.Max(middle.x.Mag(), middle.y.Mag()))
-		s.step = math.Max(s.step, end.sub(start).norm().Hi)
+		if next > 0 || closed {
+			s.step = math.Max(s.step, end.sub(start).norm().Hi)
+		}
 	}
 	if !finite(s.size) || s.size == 0 || !(s.step <= stepShare*s.size) {
-		return nil, fmt.Errorf("the curve is not closed and continuous: its pieces are up to %.3g apart", s.step)
+		return nil, fmt.Errorf("the curve is not closed and continuous, as it must be: its pieces are up to %.3g apart", s.step)
 	}
 	return s, nil
 }

@@ -32,7 +32,8 @@ func newWalker(s *survey) *walker {
 			w.u, w.p = append(w.u, t), append(w.p, s.curve.At(i, t).P)
 		}
 	}
-	w.u, w.p = append(w.u, s.t1), append(w.p, w.p[0])
+	last := len(s.pieces) - 1
+	w.u, w.p = append(w.u, s.t1), append(w.p, s.curve.At(last, s.pieces[last].To).P)
 	w.s = make([]float64, len(w.p))
 	for k := 1; k < len(w.p); k++ {
 		w.s[k] = w.s[k-1] + w.p[k].Dist(w.p[k-1])

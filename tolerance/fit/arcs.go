@@ -53,15 +53,15 @@ import (
 // Options says how Arcs works. There is nothing to choose yet: the zero value is right.
 type Options struct{}
 
-// Arcs returns a closed path of arcs (and lines where the curve is straight) with
+// Arcs returns a path of arcs (and lines where the curve is straight), closed when the curve is, with
 // continuous tangent, within eps (a length) of the curve everywhere by the estimate of
 // dense samples; the certificate is for others to make. Every piece that is a circle
-// becomes exactly one arc of that circle, which may end a little before or behind the piece. The
+// becomes exactly one arc of that circle, every straight piece one line; either may end a little before or behind the piece. The
 // path breaks its tangent only where the curve does. No arc's curvature is further from
 // the curve's than that changes along an arc. The path runs with growing parameter; Source
 // holds the stretch each element stands for, the first from the joint nearest to the start of the first
 // piece (at it, where a joint lies there), the last to 360 on from that. Errors: eps not a
-// length, a curve that is not one closed turn or has no finite curvature.
+// length, a curve that is not one turn or has no finite curvature.
 func Arcs(c Curve, eps float64, _ Options) (chain.Path, error) {
 	pieces, err := validate(c, eps)
 	if err != nil {
@@ -88,7 +88,10 @@ func assemble(c Curve, pieces []plane.Piece, fit func(stretch) (chain.Path, erro
 	for _, p := range paths {
 		path = append(path, p...)
 	}
-	return started(tie(path), pieces[0].From), nil
+	if isOpen(c) {
+		return tie(path, false), nil
+	}
+	return started(tie(path, true), pieces[0].From), nil
 }
 
 // mostBent returns the curve's largest curvature, from a few samples: the scale of its jumps.
@@ -110,14 +113,14 @@ func settle(items []item, paths []chain.Path) {
 			continue
 		}
 		e := &paths[i][0]
-		if before := (i + n - 1) % n; !items[before].circle {
+		if before := (i + n - 1) % n; !items[before].circle && it.joined.left {
 			last := paths[before][len(paths[before])-1]
 			e.From, e.Source.From = last.To, last.Source.To
 			if before > i {
 				e.Source.From -= turnDegrees
 			}
 		}
-		if after := (i + 1) % n; !items[after].circle {
+		if after := (i + 1) % n; !items[after].circle && it.joined.right {
 			next := paths[after][0]
 			e.To, e.Source.To = next.From, next.Source.From
 			if after < i {
@@ -155,10 +158,13 @@ func started(p chain.Path, t float64) chain.Path {
 	return q
 }
 
-// tie makes joints equal that are equal but for rounding, and closes the path.
-func tie(p chain.Path) chain.Path {
+// tie makes joints equal that are equal but for rounding, and may close the path.
+func tie(p chain.Path, closed bool) chain.Path {
 	for i := range p {
 		next := (i + 1) % len(p)
+		if next == 0 && !closed {
+			break
+		}
 		p[i].To = p[next].From
 		if next > 0 {
 			p[next].Source.From = p[i].Source.To

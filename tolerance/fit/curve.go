@@ -13,10 +13,18 @@ import (
 )
 
 // Curve is a closed curve given by pieces on which it is analytic; the pieces follow
-// each other over one turn of the parameter (cam angle, degrees).
+// each other over one turn of the parameter (cam angle, degrees). A curve with a method
+// Closed that returns false ends elsewhere than it starts, as the development of a
+// barrel's track does; its path begins and ends exactly where it does.
 type Curve interface {
 	Pieces() []plane.Piece
 	At(piece int, t float64) plane.Frame
+}
+
+// isOpen reports whether the curve says of itself that it is not closed.
+func isOpen(c Curve) bool {
+	o, ok := c.(interface{ Closed() bool })
+	return ok && !o.Closed()
 }
 
 // sample is the curve at one parameter. s is the arc length from the start of the run.
@@ -71,6 +79,9 @@ func validate(c Curve, eps float64) ([]plane.Piece, error) {
 	}
 	size := 0.0
 	end := c.At(last, pieces[last].To).P
+	if isOpen(c) {
+		end = c.At(0, pieces[0].From).P
+	}
 	for i, p := range pieces {
 		if !(p.To > p.From) || i > 0 && !(math.Abs(p.From-pieces[i-1].To) <= parameterGap) {
 			return nil, fmt.Errorf("piece %d goes from %g to %g degrees and does not follow the one before it", i, p.From, p.To)

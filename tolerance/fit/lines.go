@@ -45,7 +45,7 @@ func vertexAt(f plane.Frame, t, s, off float64) vertex {
 	return vertex{f.P.Add(f.T.Left().Scale(off)), t, s}
 }
 
-// Lines returns a closed path of lines within eps (a length) of the curve by the estimate
+// Lines returns a path of lines, closed when the curve is, within eps (a length) of the curve by the estimate
 // of dense samples, vertices up to eps off the curve. It runs with growing parameter;
 // Source as in Arcs. A corner of the curve gets a vertex of its own. Errors as for Arcs.
 func Lines(c Curve, eps float64) (chain.Path, error) {
@@ -63,14 +63,14 @@ func Lines(c Curve, eps float64) (chain.Path, error) {
 	for _, corner := range append(r.corners(), len(r.samples)) {
 		end := start
 		end.t, end.s = r.samples[corner-1].t, r.samples[corner-1].s
-		if corner < len(r.samples) {
-			end.p = r.samples[corner].P
+		if corner < len(r.samples) || isOpen(c) {
+			end.p = r.samples[corner-1].P
 		}
 		if vs, err = r.chords(vs, end, eps); err != nil {
 			return nil, err
 		}
 	}
-	return polyline(vs), nil
+	return polyline(vs, !isOpen(c)), nil
 }
 
 // firstVertex places the start where a chord from either side can end.
@@ -78,7 +78,7 @@ func (r *run) firstVertex(eps float64) vertex {
 	first, last := r.samples[0], r.samples[len(r.samples)-1]
 	off := 0.0
 	a, b := offsets(first.Frame, eps), offsets(last.Frame, eps)
-	if len(a) == 1 && len(b) == 1 && a[0] == b[0] && math.Abs(first.T.Cross(last.T)) < kinkAngle {
+	if !isOpen(r.curve) && len(a) == 1 && len(b) == 1 && a[0] == b[0] && math.Abs(first.T.Cross(last.T)) < kinkAngle {
 		off = a[0] * eps
 	}
 	return vertexAt(first.Frame, first.t, 0, off)
@@ -175,11 +175,11 @@ func (r *run) straight(a, b vertex, eps float64) bool {
 	return true
 }
 
-// polyline joins the vertices by lines and closes them.
-func polyline(vs []vertex) chain.Path {
+// polyline joins the vertices by lines and may close them.
+func polyline(vs []vertex, closed bool) chain.Path {
 	var p chain.Path
 	for i := 1; i < len(vs); i++ {
 		p = append(p, chain.Element{Kind: chain.Line, From: vs[i-1].p, To: vs[i].p, Source: chain.Span{From: vs[i-1].t, To: vs[i].t}})
 	}
-	return tie(p)
+	return tie(p, closed)
 }

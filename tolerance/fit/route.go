@@ -5,14 +5,14 @@ import (
 	"lobewright/tolerance/chain"
 )
 
-// border is what a stretch meets at one of its ends: the circle of a dwell, onto which the
+// border is what a stretch meets at one of its ends: the circle (or straight line) of a dwell, onto which the
 // last joint may slide, or a corner of the curve, where the joint stays.
 type border struct {
 	dwell  bool
-	frame  plane.Frame // of the circle at the border
-	center plane.Point // of the circle
-	room   float64     // length of the circle that the stretch may take
-	rate   float64     // degrees of parameter to a length on the circle
+	frame  plane.Frame   // of the circle at the border
+	circle *plane.Circle // nil: a straight line
+	room   float64       // length of the circle that the stretch may take
+	rate   float64       // degrees of parameter to a length on the circle
 }
 
 // stretch is a part of the curve that is fitted in one go: from dwell to dwell or corner, or
@@ -26,9 +26,13 @@ type stretch struct {
 
 // item is a dwell or a stretch of the curve, in the order of the parameter.
 type item struct {
-	circle bool
+	circle bool                       // one element, exactly: an arc or a straight line
+	joined struct{ left, right bool } // to the item before and behind it; an open curve is not at its ends
 	stretch
 }
+
+// exact reports whether the piece is one element exactly.
+func (p part) exact() bool { return p.Circle != nil || p.Straight }
 
 // roomShare is the share of a dwell that the stretch on either side may take.
 const roomShare = 0.4
@@ -40,7 +44,7 @@ func route(c Curve, pieces []plane.Piece) []item {
 	n := len(parts)
 	cut := func(i int) bool { // at the start of part i
 		before := parts[(i+n-1)%n]
-		return parts[i].Circle != nil || before.Circle != nil ||
+		return i == 0 && isOpen(c) || parts[i].exact() || before.exact() ||
 			breaks(before.frame(c, before.To), parts[i].frame(c, parts[i].From))
 	}
 	start := 0
@@ -57,15 +61,22 @@ func route(c Curve, pieces []plane.Piece) []item {
 	var items []item
 	for i, p := range inOrder {
 		if i == 0 || cut((start+i)%n) {
-			items = append(items, item{circle: p.Circle != nil, stretch: stretch{curve: c}})
+			items = append(items, item{circle: p.exact(), stretch: stretch{curve: c}})
 		}
 		last := &items[len(items)-1]
 		last.parts = append(last.parts, p)
 	}
 	for i := range items {
-		if !items[i].circle {
-			items[i].left = edge(items[i].stretch, items[(i+len(items)-1)%len(items)], true)
-			items[i].right = edge(items[i].stretch, items[(i+1)%len(items)], false)
+		it := &items[i]
+		it.joined.left, it.joined.right = i > 0 || !isOpen(c), i < len(items)-1 || !isOpen(c)
+		if it.circle {
+			continue
+		}
+		if it.joined.left {
+			it.left = edge(it.stretch, items[(i+len(items)-1)%len(items)], true)
+		}
+		if it.joined.right {
+			it.right = edge(it.stretch, items[(i+1)%len(items)], false)
 		}
 	}
 	return items
@@ -85,7 +96,7 @@ func edge(s stretch, neighbor item, left bool) border {
 		return border{}
 	}
 	length := circleElement(s.curve, p).Length()
-	return border{dwell: true, frame: there, center: p.Circle.Center, room: roomShare * length, rate: (p.To - p.From) / length}
+	return border{dwell: true, frame: there, circle: p.Circle, room: roomShare * length, rate: (p.To - p.From) / length}
 }
 
 func (s stretch) begin() plane.Frame { return s.parts[0].frame(s.curve, s.parts[0].From) }
@@ -95,9 +106,12 @@ func (s stretch) end() plane.Frame {
 	return p.frame(s.curve, p.To)
 }
 
-// circleElement returns the arc of a part that is a circle.
+// circleElement returns the arc of a part that is a circle, or the line of one that is straight.
 func circleElement(c Curve, p part) chain.Element {
 	from, to := p.frame(c, p.From), p.frame(c, p.To)
+	if p.Straight {
+		return chain.Element{Kind: chain.Line, From: from.P, To: to.P, Source: chain.Span{From: p.From, To: p.To}}
+	}
 	if p.To-p.From >= turnDegrees-parameterGap {
 		to = from // a full circle must not become an empty arc by rounding
 	}
@@ -108,6 +122,9 @@ func circleElement(c Curve, p part) chain.Element {
 // on returns the point and direction of the circle a length beyond the border, negative for
 // before it.
 func (b border) on(x float64) node {
+	if b.circle == nil {
+		return node{p: b.frame.P.Add(b.frame.T.Scale(x)), d: b.frame.T}
+	}
 	turn := plane.Angle(x * b.frame.K)
-	return node{p: b.center.Add(b.frame.P.Sub(b.center).Turn(turn)), d: b.frame.T.Turn(turn)}
+	return node{p: b.circle.Center.Add(b.frame.P.Sub(b.circle.Center).Turn(turn)), d: b.frame.T.Turn(turn)}
 }

@@ -68,9 +68,10 @@ import (
 	"lobewright/synth/taylor"
 )
 
-// Curve is an exact closed curve. Its parameter is the cam angle in degrees.
+// Curve is an exact curve. Its parameter is the cam angle in degrees.
 type Curve interface {
-	// Pieces follow each other from t0 to t0+360; the curve is closed and continuous.
+	// Pieces follow each other from t0 to t0+360; the curve is continuous, and closed unless it has a
+	// method Closed that says it is not.
 	Pieces() []plane.Piece
 	// At evaluates one piece in plain floats. It guides the search and proves nothing.
 	At(piece int, t float64) plane.Frame
@@ -85,7 +86,7 @@ const (
 )
 
 // Arcs returns a proven lower bound, at least 1, of the number of arcs and line segments
-// of any chain, connected or not, that follows the closed curve within eps (a length in the curve's
+// of any chain, connected or not, that follows the curve within eps (a length in the curve's
 // unit) in the sense above. A curve of n arcs never gets more than n. The bound holds whatever At
 // returns; it is weak where At is wrong. Errors: eps not a length or below 1e-11 of the curve's size, where
 // floats cannot tell it from rounding; pieces that are not one closed turn; a curve that is not finite.
@@ -100,6 +101,9 @@ func Arcs(c Curve, eps float64) (int, error) {
 	s, err := newSurvey(c, pieces, eps)
 	if err != nil {
 		return 0, err
+	}
+	if o, ok := c.(interface{ Closed() bool }); ok && !o.Closed() {
+		return s.countOpen(), nil
 	}
 	return s.count(), nil
 }
@@ -117,6 +121,21 @@ func oneTurn(pieces []plane.Piece) error {
 		}
 	}
 	return nil
+}
+
+// countOpen counts along a curve that ends elsewhere than it starts: there a chain begins at the
+// curve's start, so its n-th joint is before reach applied n times. What reach finds across
+// the curve's end is no proof, and ends the count.
+func (s *survey) countOpen() int {
+	p := s.nodeAt(s.table[0].mark)
+	at := p
+	for g := 1; ; g++ {
+		next, ok := s.reach(at)
+		if !ok || !next.before(p.turned(1)) {
+			return g
+		}
+		at = next
+	}
 }
 
 // maxRuns bounds the greedy walks of one count: where they get no further in

@@ -48,14 +48,16 @@ const (
 	closing = 1e-6
 )
 
-// Follower is what can be run over a path: a Roller, or any kind given by its Linkage.
+// Follower is what can be run over a path: a Roller, any kind given by its Linkage, or one
+// Developed.
 type Follower interface {
 	stretch(e chain.Element) (stretch, bool)
 	at(s stretch, theta float64) (lift, v, a float64, ok bool)
-	closing() float64 // how far, in degrees, a path may miss one turn about the camshaft
+	closing() float64                    // how far, in degrees, a path may miss one turn about the camshaft
+	closes(first, last plane.Point) bool // whether a path from first to last goes all around
 }
 
-// Compare runs the follower over a closed path of its base curve: of a roller the path
+// Compare runs the follower over a closed path (Developed: over one turn) of its base curve: of a roller the path
 // of its center, under a flat face the contour (either direction). It compares with the
 // designed lift, whose cam angle goes from t0 to t0+360. junctions are the cam angles, degrees, at which the design's acceleration
 // steps. The samples are in order of cam angle. Peaks are found among 17 samples an
@@ -79,13 +81,16 @@ func Compare(r Follower, pitch chain.Path, lift Lift, t0 float64, junctions ...f
 	return c.most, c.samples, nil
 }
 
+// closed reports whether two points are the same but for rounding.
+func closed(first, last plane.Point) bool { return last.Dist(first) <= closing*last.Radius() }
+
 // walk prepares the elements in order of growing cam angle, and checks that they go
 // round once.
 func walk(r Follower, pitch chain.Path) ([]stretch, error) {
 	if len(pitch) == 0 {
 		return nil, fmt.Errorf("follower on a path: the path is empty")
 	}
-	if last := pitch[len(pitch)-1].To; last.Dist(pitch[0].From) > closing*last.Radius() {
+	if last := pitch[len(pitch)-1].To; !r.closes(pitch[0].From, last) {
 		return nil, fmt.Errorf("follower on a path: it begins at %.6g,%.6g and ends at %.6g,%.6g; it must close",
 			pitch[0].From.X, pitch[0].From.Y, last.X, last.Y)
 	}
@@ -202,7 +207,7 @@ func (c *comparison) take(x Sample) {
 
 // joint raises the largest velocity step by the one from a stretch to the next.
 func (c *comparison) joint(before, after stretch) {
-	_, v, _, _ := c.follower.at(before, after.from)
+	_, v, _, _ := c.follower.at(before, before.from+before.extent)
 	_, w, _, _ := c.follower.at(after, after.from)
 	raise(&c.most.VelocityStep, &c.most.VelocityStepAt, w-v, c.wrap(after.from))
 }

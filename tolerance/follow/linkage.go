@@ -29,6 +29,8 @@ type Kind struct {
 
 func (k Kind) closing() float64 { return closing + k.Kinks }
 
+func (k Kind) closes(first, last plane.Point) bool { return closed(first, last) }
+
 func (k Kind) stretch(e chain.Element) (stretch, bool) {
 	s := stretch{start: e.From, tangent: startTangent(e), k: e.Curvature()}
 	if plane.Vector(e.From).Cross(s.tangent)*k.Sense < 0 {

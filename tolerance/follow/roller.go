@@ -84,6 +84,8 @@ func (s stretch) holds(theta float64) bool {
 
 func (r Roller) closing() float64 { return closing }
 
+func (r Roller) closes(first, last plane.Point) bool { return closed(first, last) }
+
 // stretch prepares an element; false where a point of it never comes to the
 // follower's line, or where the path runs along that line.
 func (r Roller) stretch(e chain.Element) (stretch, bool) {

@@ -1,0 +1,198 @@
+// What a tool leaves of a barrel's walls.
+//
+// The problem: a tool narrower than the groove goes along each wall, shifted from the pitch
+// curve. The exact wall touches the roller along a line that twists with depth, because the
+// track is steeper the nearer the camshaft axis; a shifted tool cannot follow the twist. The
+// obvious estimate, in the developed plane, takes one slope for all depths and sees nothing.
+//
+// Used here: points of the exact wall, at a distance z along the roller's axis, held in three
+// dimensions against the tool: a cylinder about a radial axis, that moves. A point is
+// distant from the axis, at polar angle p and height h,
+//
+//	√((Qx sin p - Qy cos p)² + (Qz - h)²)
+//
+// and what is left at it is the least of that over the whole pass, less the tool's radius:
+// positive is material left, negative is cut away. The same with a tool as wide as the groove
+// on the pitch curve, over all positions and not only the near ones, says whether another
+// part of the track cuts into the wall.
+//
+// Price: the points are samples (half a degree apart and at five depths), each refined to
+// rounding along the pass, not a proof; the walls are smooth over a degree.
+
+package synth
+
+import (
+	"math"
+
+	"lobewright/synth/follower"
+	"lobewright/synth/taylor"
+)
+
+const (
+	wallStep   = 0.5  // degrees of cam angle between points of a wall
+	wallDepths = 5    // depths at which they lie
+	nearby     = 8.0  // degrees either way within which a pass touches a point
+	leastSlope = 10.0 // degrees: a track flatter than this is not cut by moving the rotary axis alone
+)
+
+// Miss is the largest error of a wall, length: positive where material is left, negative
+// where the tool cuts into it.
+type Miss struct {
+	Error  float64
+	At     float64 // cam angle, degrees
+	Radius float64 // distance from the camshaft axis along the roller's, length
+	Upper  bool    // the wall away from the datum end
+}
+
+// larger keeps the larger of two.
+func (m *Miss) larger(n Miss) {
+	if math.Abs(n.Error) > math.Abs(m.Error) {
+		*m = n
+	}
+}
+
+// axis is where a tool's axis is: polar angle (radians) and height (length).
+type axis func(deg float64) (polar, height float64)
+
+// flank is the point of the exact wall at a cam angle and a distance along the roller's axis.
+func (c *Cam) flank(b follower.Barrel, w follower.Wall, deg, along float64) (x, y, z float64) {
+	zone, t := c.cycle.Zone(deg)
+	fx, fy, fz := b.FlankF(taylor.FVar(t), c.liftF(zone, t), w, along)
+	return fx.C[0], fy.C[0], fz.C[0]
+}
+
+// away is the distance of a point from a tool's axis.
+func away(x, y, z float64, at axis, deg float64) float64 {
+	p, h := at(deg)
+	s, k := math.Sincos(p)
+	return math.Hypot(x*s-y*k, z-h)
+}
+
+// nearest is the least distance of a point from the axis within a range of cam angle.
+func nearest(x, y, z float64, at axis, lo, hi float64) float64 {
+	p := largestOn(lo, hi, 16, func(deg float64) float64 { return -away(x, y, z, at, deg) })
+	return -p.value
+}
+
+// passAxis is the axis of a tool of a radius that cuts a wall: moved square to the track, or by
+// the rotary axis alone.
+func (c *Cam) passAxis(b follower.Barrel, w follower.Wall, tool float64, rotary bool) axis {
+	z, sign := b.MiddleRadius(), -1.0
+	if w.Upper {
+		sign = 1
+	}
+	return func(deg float64) (polar, height float64) {
+		zone, t := c.cycle.Zone(deg)
+		l := c.LiftIn(zone, t)
+		a := float64(b.Slant(l.V, z))
+		d := w.Half - tool
+		polar, height = b.Sense()*deg*math.Pi/180, b.Track+l.S
+		if rotary {
+			if math.Abs(a) < leastSlope*math.Pi/180 {
+				return polar, height
+			}
+			return polar - sign*b.Sense()*d/math.Sin(a)/z, height
+		}
+		return polar - sign*b.Sense()*d*math.Sin(a)/z, height + sign*d*math.Cos(a)
+	}
+}
+
+// Misses is what a tool narrower than the groove would leave, by both ways of shifting it.
+type Misses struct {
+	Parallel Miss // moved square to the track by both axes: exact at the middle of the depth
+	Slopes   Miss // moved by the rotary axis alone, where the track is steeper than 10 degrees
+	Flat     Miss // the same, where it is not: there it cannot cut at all
+}
+
+// Misses computes the errors of both walls for a tool of a radius (length, at most half the
+// groove's width) of a barrel cam.
+func (c *Cam) Misses(tool float64) Misses {
+	b, _ := c.drum()
+	var m Misses
+	c.overWalls(func(w follower.Wall, deg, along, x, y, z float64) {
+		n := Miss{At: camAngle(deg), Radius: along, Upper: w.Upper}
+		n.Error = nearest(x, y, z, c.passAxis(b, w, tool, false), deg-nearby, deg+nearby) - tool
+		m.Parallel.larger(n)
+		zone, t := c.cycle.Zone(deg)
+		rotary := c.passAxis(b, w, tool, true)
+		if math.Abs(c.SlantAt(zone, t, b.MiddleRadius()).Deg()) < leastSlope {
+			n.Error = away(x, y, z, rotary, deg) - tool
+			m.Flat.larger(n)
+			return
+		}
+		// The axis is one smooth path only where the track stays steep.
+		n.Error = nearest(x, y, z, rotary, deg-c.steepFor(b, deg, -1), deg+c.steepFor(b, deg, 1)) - tool
+		m.Slopes.larger(n)
+	})
+	return m
+}
+
+// steepFor is how far, in degrees up to nearby, the track stays steep one way.
+func (c *Cam) steepFor(b follower.Barrel, deg, way float64) float64 {
+	const step = 0.5
+	for d := step; d <= nearby; d += step {
+		zone, t := c.cycle.Zone(deg + way*d)
+		if math.Abs(c.SlantAt(zone, t, b.MiddleRadius()).Deg()) < leastSlope {
+			return d - step
+		}
+	}
+	return nearby
+}
+
+// overWalls calls do for points of both exact walls, half the groove's width from the roller's
+// axis.
+func (c *Cam) overWalls(do func(w follower.Wall, deg, along, x, y, z float64)) {
+	b, _ := c.drum()
+	from := c.zones[0].From
+	for _, upper := range []bool{false, true} {
+		w := follower.Wall{Half: c.inset(), Upper: upper}
+		for k := range int(360 / wallStep) {
+			deg := from + float64(k)*wallStep
+			for i := range wallDepths {
+				along := b.BottomRadius() + b.Depth*float64(i)/(wallDepths-1)
+				x, y, z := c.flank(b, w, deg, along)
+				do(w, deg, along, x, y, z)
+			}
+		}
+	}
+}
+
+// overlap is the deepest that one part of the track cuts into a wall of another: 0 or below.
+func (c *Cam) overlap() Miss {
+	b, _ := c.drum()
+	half := c.inset()
+	center := func(deg float64) (polar, height float64) {
+		zone, t := c.cycle.Zone(deg)
+		return b.Sense() * deg * math.Pi / 180, b.Track + c.LiftIn(zone, t).S
+	}
+	// The axis as a list: most positions are far from a point, and cheap to pass over.
+	const step = 0.25
+	const n = int(360 / step)
+	var sin, cos, height [n]float64
+	for k := range n {
+		p, h := center(c.zones[0].From + float64(k)*step)
+		sin[k], cos[k] = math.Sincos(p)
+		height[k] = h
+	}
+	window := int(math.Ceil(math.Asin(math.Min(1, half/b.BottomRadius()))*180/math.Pi/step)) + 2
+	worst := Miss{}
+	c.overWalls(func(w follower.Wall, deg, along, x, y, z float64) {
+		k0 := int(math.Round((deg - c.zones[0].From) / step))
+		best, at := math.Inf(1), 0
+		for k := k0 - 2*window; k <= k0+2*window; k++ {
+			i := ((k % n) + n) % n
+			if d := math.Hypot(x*sin[i]-y*cos[i], z-height[i]); d < best {
+				best, at = d, k
+			}
+		}
+		if best > half {
+			return
+		}
+		t := c.zones[0].From + float64(at)*step
+		d := nearest(x, y, z, center, t-step, t+step) - half
+		if d < worst.Error {
+			worst = Miss{Error: d, At: camAngle(deg), Radius: along, Upper: w.Upper}
+		}
+	})
+	return worst
+}

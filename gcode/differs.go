@@ -16,6 +16,9 @@ func Differs(p Program, back *read.Program) error {
 	for _, b := range p.Blocks {
 		s.block(b)
 	}
+	if back.Rotary != p.Rotary {
+		return fmt.Errorf("read back: the rotary axis is %q, written %q", back.Rotary, p.Rotary)
+	}
 	if back.Inch != p.Inch || back.Number != p.Number {
 		return fmt.Errorf("read back: program O%d in %s, written O%d in %s", back.Number, unitWord(back.Inch), p.Number, unitWord(p.Inch))
 	}
@@ -49,6 +52,8 @@ type said struct {
 	state   read.State
 	pending int
 	x, y, z int64
+	r       int64
+	knownR  bool
 	knownXY bool
 	knownZ  bool
 	moves   []read.Move
@@ -69,6 +74,10 @@ func (s *said) codes(b Block) {
 			s.state.H = -1
 		case WorkFirst:
 			s.state.Work = 54
+		case FeedInverse, FeedPerMinute:
+			if s.state.Inverse != (c == FeedInverse) {
+				s.state.Inverse, s.state.Feed = c == FeedInverse, 0
+			}
 		}
 	}
 }
@@ -103,14 +112,16 @@ func (s *said) block(b Block) {
 
 func (s *said) value(v int64) float64 { return float64(v) / float64(counts(s.p.Grid, 1)) }
 
+func (s *said) degrees(v int64) float64 { return float64(v) / float64(counts(s.p.RotaryGrid, 1)) }
+
 func (s *said) point(x, y int64) plane.Point { return plane.Point{X: s.value(x), Y: s.value(y)} }
 
 func (s *said) move(b Block) {
-	if !b.X.On && !b.Y.On && !b.Z.On {
+	if !b.X.On && !b.Y.On && !b.Z.On && !b.R.On {
 		return
 	}
 	m := read.Move{State: s.state, HasXY: b.X.On || b.Y.On, HasZ: b.Z.On, KnownXY: s.knownXY, KnownZ: s.knownZ,
-		From: s.point(s.x, s.y), FromZ: s.value(s.z)}
+		From: s.point(s.x, s.y), FromZ: s.value(s.z), HasR: b.R.On, KnownR: s.knownR, FromR: s.degrees(s.r)}
 	if m.Tool < 0 {
 		m.Tool = s.pending
 	}
@@ -126,12 +137,13 @@ func (s *said) move(b Block) {
 	for _, a := range []struct {
 		word Count
 		at   *int64
-	}{{b.X, &s.x}, {b.Y, &s.y}, {b.Z, &s.z}} {
+	}{{b.X, &s.x}, {b.Y, &s.y}, {b.Z, &s.z}, {b.R, &s.r}} {
 		if a.word.On {
 			*a.at = a.word.V
 		}
 	}
 	s.knownXY, s.knownZ = s.knownXY || m.HasXY, s.knownZ || m.HasZ
-	m.To, m.ToZ = s.point(s.x, s.y), s.value(s.z)
+	m.To, m.ToZ, m.ToR = s.point(s.x, s.y), s.value(s.z), s.degrees(s.r)
+	s.knownR = s.knownR || b.R.On
 	s.moves = append(s.moves, m)
 }

@@ -24,6 +24,7 @@ type Expect struct {
 	Eps          float64 // length: largest deviation of a cut, either way
 	CamClockwise bool
 	Curve        func(offset float64) Curve
+	Rotary       byte // letter of the rotary axis; 0 when there is none
 	Compensation Compensation
 	Registers    []Register // what the D registers hold
 	Feed         float64    // length/min as written; 0 for none

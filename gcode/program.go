@@ -20,6 +20,7 @@ const (
 	Absolute        Code = 900
 	CenterAbsolute  Code = 901
 	CenterFromStart Code = 911
+	FeedInverse     Code = 930
 	FeedPerMinute   Code = 940
 )
 
@@ -56,6 +57,7 @@ type Block struct {
 	G          []Code
 	Motion     Motion
 	X, Y, Z    Count
+	R          Count // the rotary axis, in counts of the program's rotary grid
 	I, J       Count
 	F          Count
 	S, T, D, H Number
@@ -75,6 +77,8 @@ type Program struct {
 	Number       int // O word
 	Inch         bool
 	Grid         chain.Grid
+	Rotary       byte       // letter of the rotary axis; 0 when there is none
+	RotaryGrid   chain.Grid // of its degrees
 	AbsoluteArcs bool
 	BlockNumbers bool
 	Header       []string // comments before the first block

@@ -13,6 +13,9 @@ func (v *verifier) words() {
 	if p.Number != x.Number {
 		v.fail("words", float64(p.Number), float64(x.Number), nan(), 0, "program number %d, expected %d", p.Number, x.Number)
 	}
+	if p.Rotary != 0 && x.Rotary == 0 {
+		v.wrong("words", 0, "words of the rotary axis %c in a program without one", p.Rotary)
+	}
 	if n := len(p.Misc); n == 0 || p.Misc[n-1].Code != 30 {
 		v.wrong("words", 0, "the program does not end with M30")
 	}
@@ -66,6 +69,9 @@ func sameWords(a, b read.State) bool {
 
 // state holds the modal words of a move.
 func (v *verifier) state(m read.Move) {
+	if m.Inverse && v.x.Rotary == 0 {
+		v.wrong("words", m.LineNo, "inverse time G93 where the feed is per minute")
+	}
 	if m.Work != 54 {
 		v.fail("words", float64(m.Work), 54, nan(), m.LineNo, "the move is not under G54")
 	}

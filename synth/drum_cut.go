@@ -6,15 +6,22 @@
 // obvious estimate, in the developed plane, takes one slope for all depths and sees nothing.
 //
 // Used here: points of the exact wall, at a distance z along the roller's axis, held in three
-// dimensions against the tool: a cylinder about a radial axis, that moves. A point is
-// distant from the axis, at polar angle p and height h,
+// dimensions against the tool: a cylinder that moves, its axis square to the camshaft's, in
+// the radial direction of polar angle p or beside it by o. A point is distant from that axis, at
+// height h,
 //
-//	√((Qx sin p - Qy cos p)² + (Qz - h)²)
+//	√((Qy cos p - Qx sin p - o)² + (Qz - h)²)
 //
 // and what is left at it is the least of that over the whole pass, less the tool's radius:
 // positive is material left, negative is cut away. The same with a tool as wide as the groove
 // on the pitch curve, over all positions and not only the near ones, says whether another
 // part of the track cuts into the wall.
+//
+// A tool may be shifted in two ways, both exact at the middle of the roller's depth. Parallel: by
+// the axial axis and a third linear axis, off center; the shift is then the same at all
+// depths, and what is left is second order, d (1 - cos) of the difference of slopes. Rotary: by the
+// axial and the rotary axis; the shift along the turning then grows with the distance from the
+// camshaft, and what is left is first order.
 //
 // Price: the points are samples (half a degree apart and at five depths), each refined to
 // rounding along the pass, not a proof; the walls are smooth over a degree.
@@ -29,10 +36,9 @@ import (
 )
 
 const (
-	wallStep   = 0.5  // degrees of cam angle between points of a wall
-	wallDepths = 5    // depths at which they lie
-	nearby     = 8.0  // degrees either way within which a pass touches a point
-	leastSlope = 10.0 // degrees: a track flatter than this is not cut by moving the rotary axis alone
+	wallStep   = 0.5 // degrees of cam angle between points of a wall
+	wallDepths = 5   // depths at which they lie
+	nearby     = 8.0 // degrees either way within which a pass touches a point
 )
 
 // Miss is the largest error of a wall, length: positive where material is left, negative
@@ -51,8 +57,12 @@ func (m *Miss) larger(n Miss) {
 	}
 }
 
-// axis is where a tool's axis is: polar angle (radians) and height (length).
-type axis func(deg float64) (polar, height float64)
+// pose is where a tool's axis is: its polar angle (radians), how far it is beside the radial line of
+// that angle, towards growing polar angle, and its height (lengths).
+type pose struct{ polar, beside, height float64 }
+
+// axis is a tool's pose at a cam angle, degrees.
+type axis func(deg float64) pose
 
 // flank is the point of the exact wall at a cam angle and a distance along the roller's axis.
 func (c *Cam) flank(b follower.Barrel, w follower.Wall, deg, along float64) (x, y, z float64) {
@@ -62,81 +72,48 @@ func (c *Cam) flank(b follower.Barrel, w follower.Wall, deg, along float64) (x, 
 }
 
 // away is the distance of a point from a tool's axis.
-func away(x, y, z float64, at axis, deg float64) float64 {
-	p, h := at(deg)
-	s, k := math.Sincos(p)
-	return math.Hypot(x*s-y*k, z-h)
+func away(x, y, z float64, p pose) float64 {
+	s, k := math.Sincos(p.polar)
+	return math.Hypot(y*k-x*s-p.beside, z-p.height)
 }
 
 // nearest is the least distance of a point from the axis within a range of cam angle.
 func nearest(x, y, z float64, at axis, lo, hi float64) float64 {
-	p := largestOn(lo, hi, 16, func(deg float64) float64 { return -away(x, y, z, at, deg) })
+	p := largestOn(lo, hi, 16, func(deg float64) float64 { return -away(x, y, z, at(deg)) })
 	return -p.value
 }
 
-// passAxis is the axis of a tool of a radius that cuts a wall: moved square to the track, or by
-// the rotary axis alone.
+// passAxis is the axis of a tool of a radius that cuts a wall.
 func (c *Cam) passAxis(b follower.Barrel, w follower.Wall, tool float64, rotary bool) axis {
 	z, sign := b.MiddleRadius(), -1.0
 	if w.Upper {
 		sign = 1
 	}
-	return func(deg float64) (polar, height float64) {
+	d := w.Half - tool
+	return func(deg float64) pose {
 		zone, t := c.cycle.Zone(deg)
 		l := c.LiftIn(zone, t)
 		a := float64(b.Slant(l.V, z))
-		d := w.Half - tool
-		polar, height = b.Sense()*deg*math.Pi/180, b.Track+l.S
+		p := pose{b.Sense() * deg * math.Pi / 180, -sign * b.Sense() * d * math.Sin(a), b.Track + l.S + sign*d*math.Cos(a)}
 		if rotary {
-			if math.Abs(a) < leastSlope*math.Pi/180 {
-				return polar, height
-			}
-			return polar - sign*b.Sense()*d/math.Sin(a)/z, height
+			p.polar, p.beside = p.polar+p.beside/z, 0
 		}
-		return polar - sign*b.Sense()*d*math.Sin(a)/z, height + sign*d*math.Cos(a)
+		return p
 	}
 }
 
-// Misses is what a tool narrower than the groove would leave, by both ways of shifting it.
-type Misses struct {
-	Parallel Miss // moved square to the track by both axes: exact at the middle of the depth
-	Slopes   Miss // moved by the rotary axis alone, where the track is steeper than 10 degrees
-	Flat     Miss // the same, where it is not: there it cannot cut at all
-}
-
-// Misses computes the errors of both walls for a tool of a radius (length, at most half the
-// groove's width) of a barrel cam.
-func (c *Cam) Misses(tool float64) Misses {
+// Misses returns the largest errors of the walls cut by a tool of a radius (length, at most
+// half the groove's width), by both ways of shifting it.
+func (c *Cam) Misses(tool float64) (parallel, rotary Miss) {
 	b, _ := c.drum()
-	var m Misses
 	c.overWalls(func(w follower.Wall, deg, along, x, y, z float64) {
 		n := Miss{At: camAngle(deg), Radius: along, Upper: w.Upper}
 		n.Error = nearest(x, y, z, c.passAxis(b, w, tool, false), deg-nearby, deg+nearby) - tool
-		m.Parallel.larger(n)
-		zone, t := c.cycle.Zone(deg)
-		rotary := c.passAxis(b, w, tool, true)
-		if math.Abs(c.SlantAt(zone, t, b.MiddleRadius()).Deg()) < leastSlope {
-			n.Error = away(x, y, z, rotary, deg) - tool
-			m.Flat.larger(n)
-			return
-		}
-		// The axis is one smooth path only where the track stays steep.
-		n.Error = nearest(x, y, z, rotary, deg-c.steepFor(b, deg, -1), deg+c.steepFor(b, deg, 1)) - tool
-		m.Slopes.larger(n)
+		parallel.larger(n)
+		n.Error = nearest(x, y, z, c.passAxis(b, w, tool, true), deg-nearby, deg+nearby) - tool
+		rotary.larger(n)
 	})
-	return m
-}
-
-// steepFor is how far, in degrees up to nearby, the track stays steep one way.
-func (c *Cam) steepFor(b follower.Barrel, deg, way float64) float64 {
-	const step = 0.5
-	for d := step; d <= nearby; d += step {
-		zone, t := c.cycle.Zone(deg + way*d)
-		if math.Abs(c.SlantAt(zone, t, b.MiddleRadius()).Deg()) < leastSlope {
-			return d - step
-		}
-	}
-	return nearby
+	return parallel, rotary
 }
 
 // overWalls calls do for points of both exact walls, half the groove's width from the roller's
@@ -161,18 +138,18 @@ func (c *Cam) overWalls(do func(w follower.Wall, deg, along, x, y, z float64)) {
 func (c *Cam) overlap() Miss {
 	b, _ := c.drum()
 	half := c.inset()
-	center := func(deg float64) (polar, height float64) {
+	center := func(deg float64) pose {
 		zone, t := c.cycle.Zone(deg)
-		return b.Sense() * deg * math.Pi / 180, b.Track + c.LiftIn(zone, t).S
+		return pose{polar: b.Sense() * deg * math.Pi / 180, height: b.Track + c.LiftIn(zone, t).S}
 	}
 	// The axis as a list: most positions are far from a point, and cheap to pass over.
 	const step = 0.25
 	const n = int(360 / step)
 	var sin, cos, height [n]float64
 	for k := range n {
-		p, h := center(c.zones[0].From + float64(k)*step)
-		sin[k], cos[k] = math.Sincos(p)
-		height[k] = h
+		p := center(c.zones[0].From + float64(k)*step)
+		sin[k], cos[k] = math.Sincos(p.polar)
+		height[k] = p.height
 	}
 	window := int(math.Ceil(math.Asin(math.Min(1, half/b.BottomRadius()))*180/math.Pi/step)) + 2
 	worst := Miss{}

@@ -160,10 +160,13 @@ func (c *Cam) drumReach() []gate.Gate {
 }
 
 func (c *Cam) wallError(tool float64, i int, of string) gate.Gate {
-	m, limit := c.Misses(tool), c.spec.Tolerance.Profile/2
-	chosen := m.Parallel
+	parallel, rotary := c.Misses(tool)
+	chosen, limit := parallel, c.spec.Tolerance.Profile/2
+	if c.spec.Operations[i].Shift == "rotary" {
+		chosen = rotary
+	}
 	zone, t := c.cycle.Zone(chosen.At)
 	return gate.Gate{ID: "wall-error", Of: of, Value: math.Abs(chosen.Error), Limit: limit, Unit: c.unit(), CamAngle: chosen.At, Polar: c.polarAt(zone, t), Pass: math.Abs(chosen.Error) <= limit,
-		Text: fmt.Sprintf("operation %d: error of the walls cut by a tool %.4g %s narrower than the groove, shifted square to the track (%+.4g %s, material left is positive, at %.4g %s from the camshaft axis); by the rotary axis alone it would be %+.4g %s on the slopes and %+.4g %s where the track is flat; take a tool nearer to the groove's width",
-			i+1, 2*(c.inset()-tool), c.unit(), chosen.Error, c.unit(), chosen.Radius, c.unit(), m.Slopes.Error, c.unit(), m.Flat.Error, c.unit())}
+		Text: fmt.Sprintf("operation %d: largest error of walls cut by a tool %.4g %s narrower than the groove, exact at the middle of the depth: %+.3g %s with shift: parallel (axial axis and a linear axis across it), %+.3g %s with shift: rotary (axial and rotary axis), at %.4g %s from the camshaft axis; positive is material left; take a tool nearer to the groove's width",
+			i+1, 2*(c.inset()-tool), c.unit(), parallel.Error, c.unit(), rotary.Error, c.unit(), chosen.Radius, c.unit())}
 }

@@ -11,7 +11,7 @@ type block struct {
 	n    int // -1 when none
 	g    []word
 	m    []word
-	axis map[byte]word // X Y Z I J F S T D H P O
+	axis map[byte]word // X Y Z A B C I J F S T D H P O
 }
 
 func (b block) has(letter byte) bool { _, ok := b.axis[letter]; return ok }
@@ -68,10 +68,10 @@ var groups = map[int]string{ // number times ten
 	0: "motion", 10: "motion", 20: "motion", 30: "motion", 800: "motion",
 	170: "plane", 200: "units", 210: "units", 400: "compensation", 410: "compensation", 420: "compensation",
 	430: "length", 490: "length", 540: "work", 550: "work", 560: "work", 570: "work", 580: "work", 590: "work",
-	610: "path", 640: "path", 900: "distance", 910: "distance", 901: "center", 911: "center", 940: "feed",
+	610: "path", 640: "path", 900: "distance", 910: "distance", 901: "center", 911: "center", 930: "feed", 940: "feed",
 }
 
-const allowedG = "G0 G1 G2 G3 G17 G20 G21 G40 G41 G42 G43 G49 G54 to G59 G61 G64 G80 G90 G90.1 G91 G91.1 G94 are read here"
+const allowedG = "G0 G1 G2 G3 G17 G20 G21 G40 G41 G42 G43 G49 G54 to G59 G61 G64 G80 G90 G90.1 G91 G91.1 G93 G94 are read here"
 
 // codes returns the G words of the block by group, their numbers times ten.
 func (b block) codes() (map[string]int, error) {

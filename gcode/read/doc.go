@@ -1,5 +1,5 @@
 // Package read reads NC programs: it knows no writer. It takes the words of
-// ISO 6983-1 and RS-274-D that a milled or wire-cut plate needs, with the
+// ISO 6983-1 and RS-274-D that a milled or wire-cut cam needs, with the
 // meaning NIST RS274/NGC v3 (NISTIR 6556, 2000) gives them, and refuses every
 // word it does not know: a word passed over could move the tool.
 //
@@ -36,7 +36,8 @@ func (c Comp) String() string { return [...]string{"G40", "G41", "G42"}[c] }
 
 // State is what is modal while a move is made.
 type State struct {
-	Feed    float64 // length/min; 0 when no F word came yet
+	Feed    float64 // length/min; under Inverse moves a minute, of this move alone; 0 when no F word came yet
+	Inverse bool    // G93: F is one over the minutes the move takes
 	Comp    Comp
 	D       int  // register of G41 and G42; -1 when none was given
 	H       int  // register of G43; -1 under G49
@@ -62,6 +63,9 @@ type Move struct {
 	// HasXY, HasZ: the block has words of the plane, of Z. A move under
 	// compensation without XY words still is a move.
 	HasXY, HasZ bool
+
+	FromR, ToR   float64 // rotary axis, degrees, not brought into a turn
+	KnownR, HasR bool    // as KnownZ and HasZ
 	State
 }
 
@@ -76,6 +80,7 @@ type Misc struct {
 type Program struct {
 	Number   int  // O word; -1 when there is none
 	Inch     bool // G20; else G21
+	Rotary   byte // the letter of the rotary axis: 'A', 'B' or 'C'; 0 when there is none
 	Moves    []Move
 	Misc     []Misc
 	End      State // after the last block

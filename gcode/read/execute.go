@@ -63,6 +63,9 @@ func (r *reader) modes(b block, codes map[string]int, _ []int) error {
 		}
 		r.state.Work = c / 10
 	}
+	if c, ok := codes["feed"]; ok && (c == 930) != r.state.Inverse {
+		r.state.Inverse, r.state.Feed = c == 930, 0 // NISTIR 6556 3.5.20: the old F means nothing now
+	}
 	if w, ok := b.axis['P']; ok && codes["path"] != 640 {
 		return b.fault(w, "P stands with G64 only")
 	}
@@ -150,7 +153,7 @@ func (r *reader) moves(b block, codes map[string]int, _ []int) error {
 		r.hasMotion = c != 800
 		r.motion = c / 10
 	}
-	if !b.has('X') && !b.has('Y') && !b.has('Z') && !b.has('I') && !b.has('J') {
+	if b.first().column == 0 {
 		return nil
 	}
 	first := b.first()
@@ -162,13 +165,16 @@ func (r *reader) moves(b block, codes map[string]int, _ []int) error {
 	case r.distance == 0:
 		return b.fault(first, "G90 or G91 comes before the first move")
 	}
+	if r.state.Inverse && r.motion != 0 && !b.has('F') {
+		return b.fault(first, "under G93 every feed move has its own F")
+	}
 	return r.move(b)
 }
 
 // first returns the leftmost word of the axes.
 func (b block) first() word {
 	var f word
-	for _, letter := range []byte("XYZIJ") {
+	for _, letter := range []byte("XYZABCIJ") {
 		if w, ok := b.axis[letter]; ok && (f.column == 0 || w.column < f.column) {
 			f = w
 		}
@@ -182,23 +188,47 @@ func (r *reader) move(b block) error {
 	if m.Tool < 0 {
 		m.Tool = r.pending
 	}
+	letter, err := r.letter(b)
+	if err != nil {
+		return err
+	}
+	m.HasR, m.KnownR, m.FromR = letter != 0, r.haveR, value(r.rotary)
 	m.From, m.FromZ = point(r.x, r.y), value(r.z)
 	x0, y0 := r.x, r.y
 	for _, axis := range []struct {
 		letter byte
 		at     *int64
 		have   *bool
-	}{{'X', &r.x, &r.haveX}, {'Y', &r.y, &r.haveY}, {'Z', &r.z, &r.haveZ}} {
+	}{{'X', &r.x, &r.haveX}, {'Y', &r.y, &r.haveY}, {'Z', &r.z, &r.haveZ}, {letter, &r.rotary, &r.haveR}} {
 		if err := r.axis(b, axis.letter, axis.at, axis.have); err != nil {
 			return err
 		}
 	}
-	m.To, m.ToZ = point(r.x, r.y), value(r.z)
+	m.To, m.ToZ, m.ToR = point(r.x, r.y), value(r.z), value(r.rotary)
 	if err := r.center(b, &m, x0, y0); err != nil {
 		return err
 	}
 	r.p.Moves = append(r.p.Moves, m)
 	return nil
+}
+
+// letter returns the letter of the block's rotary word, 0 when it has none. A program has one
+// rotary axis.
+func (r *reader) letter(b block) (byte, error) {
+	found := byte(0)
+	for _, c := range []byte("ABC") {
+		w, ok := b.axis[c]
+		switch {
+		case !ok:
+			continue
+		case r.p.Rotary != 0 && r.p.Rotary != c:
+			return 0, b.fault(w, fmt.Sprintf("the rotary axis of this program is %c; one is read", r.p.Rotary))
+		case r.motion == 2 || r.motion == 3:
+			return 0, b.fault(w, "a rotary word stands with G0 and G1")
+		}
+		found, r.p.Rotary = c, c
+	}
+	return found, nil
 }
 
 // maxTravel keeps sums of coordinates exact in a double.

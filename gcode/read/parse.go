@@ -42,9 +42,11 @@ type reader struct {
 	hasMotion       bool
 
 	x, y, z int64 // billionths
+	rotary  int64 // billionths of a degree
 	haveX   bool
 	haveY   bool
 	haveZ   bool
+	haveR   bool
 }
 
 // line reads one line of the file.

@@ -52,6 +52,28 @@ func TestCentersAndDistances(t *testing.T) {
 	}
 }
 
+// One rotary axis, in degrees that go on beyond a turn; G93's F belongs to its own move, and
+// no F of before or after it counts across (NISTIR 6556 3.5.20).
+func TestRotary(t *testing.T) {
+	p, err := read.Parse([]byte(head + "G0 A350.5 X10\nG93\nG1 A370.25 X12 F20\nA371 F4.5\nG94 G1 X13 F100\nG91 A-1.5\nM30\n%\n"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	m := p.Moves
+	if len(m) != 5 || p.Rotary != 'A' {
+		t.Fatalf("%d moves, rotary %q", len(m), p.Rotary)
+	}
+	if m[0].KnownR || !m[0].HasR || m[0].ToR != 350.5 || m[0].Inverse {
+		t.Errorf("first: %+v", m[0])
+	}
+	if !m[1].KnownR || m[1].FromR != 350.5 || m[1].ToR != 370.25 || !m[1].Inverse || m[1].Feed != 20 || m[2].Feed != 4.5 || m[2].HasXY {
+		t.Errorf("under G93: %+v, %+v", m[1], m[2])
+	}
+	if m[3].HasR || m[3].ToR != 371 || m[3].Inverse || m[3].Feed != 100 || m[4].ToR != 369.5 {
+		t.Errorf("after it: %+v, %+v", m[3], m[4])
+	}
+}
+
 // Modal words reach the moves they belong to.
 func TestState(t *testing.T) {
 	p, err := read.Parse([]byte(head + "(first) T4 M6 (change)\nS2500 M3\nG0 X1 Y2\nG43 H4 Z5\nG1 Z-1 F80\nG41 D14 X5 F300\n" +
@@ -94,7 +116,11 @@ func TestFaults(t *testing.T) {
 		column     int
 	}{
 		{"G5 X1", "G0 G1 G2 G3", 1},
-		{"G0 X1 A3", "words G X Y", 7},
+		{"G0 X1 U3", "words G X Y", 7},
+		{"G0 A3 B4", "one is read", 7},
+		{"G2 X1 I1 A3", "with G0 and G1", 10},
+		{"G93 G1 X1 F100 A3 G94", "of the same kind", 19},
+		{"G93 G1 X1", "its own F", 8},
 		{"G0 G18 X1", "G0 G1 G2 G3", 4},
 		{"G0 G1 X1", "of the same kind", 4},
 		{"G1 X1 X2", "one X", 7},

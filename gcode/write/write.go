@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"lobewright/gcode"
+	"lobewright/tolerance/chain"
 )
 
 const (
@@ -113,9 +114,11 @@ func (w *writer) words(b gcode.Block) []string {
 	for _, a := range []struct {
 		letter string
 		count  gcode.Count
-	}{{"X", b.X}, {"Y", b.Y}, {"Z", b.Z}, {"I", b.I}, {"J", b.J}, {"F", b.F}} {
+		grid   chain.Grid
+	}{{"X", b.X, w.p.Grid}, {"Y", b.Y, w.p.Grid}, {"Z", b.Z, w.p.Grid}, {string(w.p.Rotary), b.R, w.p.RotaryGrid},
+		{"I", b.I, w.p.Grid}, {"J", b.J, w.p.Grid}, {"F", b.F, w.p.Grid}} {
 		if a.count.On {
-			words = append(words, a.letter+w.p.Grid.Format(a.count.V))
+			words = append(words, a.letter+a.grid.Format(a.count.V))
 		}
 	}
 	for _, a := range []struct {

@@ -228,6 +228,7 @@ type Operation struct {
 	Compensation string   // "path", "wear" or "control"; default "path"
 	Direction    string   // "climb" or "conventional"; default "climb"
 	StartAt      *float64 // start_at_cam_angle, degrees; nil for the default place
+	Shift        string   // of a narrow tool in a barrel's groove: "parallel" or "rotary"; default "parallel"
 	Moves        string   // "arcs" or "lines"; default "arcs"
 
 	WireDiameter float64 // length

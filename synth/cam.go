@@ -69,6 +69,9 @@ func kindOf(k spec.EventKind) motion.Kind {
 // Build completes the cam of a spec. It fails only where the spec contradicts
 // itself in a way its reader cannot see.
 func Build(s *spec.Spec) (*Cam, error) {
+	if err := refuseFreeOffset(s); err != nil {
+		return nil, err
+	}
 	m, err := complete(s)
 	if err != nil {
 		return nil, err

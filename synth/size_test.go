@@ -27,11 +27,13 @@ func TestSizeClosedForms(t *testing.T) {
 		law         string
 		over, ratio float64
 	}{
+		{"simple-harmonic", 30, .2118575279}, {"simple-harmonic", 120, 1.121150276},
+		{"cycloidal", 30, .1630988884}, {"cycloidal", 120, .8233803491}, {"cycloidal", 180, 1.444848726},
 		{"simple-harmonic", 45, 1.0 / 3}, {"simple-harmonic", 60, .4660372313}, {"simple-harmonic", 90, .7675918792},
 		{"cycloidal", 45, .2542224155}, {"cycloidal", 60, .3522976643}, {"cycloidal", 90, .5711203198},
 		{"polynomial-3-4-5", 60, .3792930584}, {"modified-sine", 60, .4080740494},
 	} {
-		z, err := Size(sizing(0.5, 0, true, rise(20, c.over, c.law), dwell(60), fall(20, 180, "cycloidal"), dwell(120-c.over)))
+		z, err := Size(sizing(0.5, 0, true, rise(20, c.over, c.law), dwell(60), fall(20, 110, "cycloidal"), dwell(190-c.over)))
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -55,45 +57,6 @@ func TestSizeCurvature(t *testing.T) {
 	near(t, "base radius", z.BaseRadius, r-30, 1e-7)
 	if z.Binds != "radius-of-curvature" {
 		t.Errorf("%s binds", z.Binds)
-	}
-}
-
-// The answer is tight: it passes its gates, a thousandth less fails one, and every smaller
-// radius is proven to fail.
-func TestSizeIsTight(t *testing.T) {
-	for _, s := range []*spec.Spec{
-		sizing(5, 0, true, dwell(60), rise(14, 90, "modified-sine"), dwell(40), fall(14, 120, "polynomial-3-4-5"), dwell(50)),
-		sizing(5, 8, true, rise(20, 60, "cycloidal"), dwell(60), fall(20, 90, "modified-trapezoidal"), dwell(150)),
-		sizing(12, -6, false, rise(20, 70, "polynomial-4-5-6-7"), fall(20, 70, "simple-harmonic"), dwell(220)),
-		sizing(3, 5, false, rise(10, 50, "parabolic"), dwell(60), fall(10, 90, "double-harmonic"), dwell(160)),
-	} {
-		z, err := Size(s)
-		if err != nil {
-			t.Fatal(err)
-		}
-		if !(z.Excluded >= z.BaseRadius*(1-2*sizeShare)) {
-			t.Errorf("base radius %v, but only up to %v is excluded", z.BaseRadius, z.Excluded)
-		}
-		for _, c := range []struct {
-			share float64
-			pass  bool
-		}{{1, true}, {0.999, false}} {
-			again := *s
-			again.Cam.BaseRadius = c.share * z.BaseRadius
-			cam, err := Build(&again)
-			if err != nil {
-				t.Fatal(err)
-			}
-			pass := true
-			for _, g := range cam.Gates() {
-				if g.ID == "pressure-angle" || g.ID == "radius-of-curvature" || g.ID == "undercut" {
-					pass = pass && g.Pass
-				}
-			}
-			if pass != c.pass {
-				t.Errorf("%v of the base radius %v: passes %v", c.share, z.BaseRadius, pass)
-			}
-		}
 	}
 }
 

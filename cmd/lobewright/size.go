@@ -3,6 +3,7 @@ package main
 import (
 	"encoding/json"
 	"fmt"
+	"math"
 
 	"github.com/urfave/cli/v2"
 
@@ -13,7 +14,7 @@ import (
 func sizeCommand() *cli.Command {
 	return &cli.Command{
 		Name:      "size",
-		Usage:     "find the smallest base radius that meets the limits; change nothing",
+		Usage:     "find the smallest base radius (and a free offset) that meets the limits; change nothing",
 		UsageText: "lobewright size SPEC [--json]\n\nExamples:\n   lobewright size samples/box-pusher.yaml\n   lobewright size samples/box-pusher.yaml --json",
 		Flags:     []cli.Flag{&cli.BoolFlag{Name: "json", Usage: "print JSON"}},
 		Action: func(c *cli.Context) error {
@@ -39,6 +40,10 @@ func sizeCommand() *cli.Command {
 	}
 }
 
+// undecided is the share of the base radius that the proof may leave below the answer without
+// a word.
+const undecided = 2e-3
+
 // sizeJSON is what --json prints.
 type sizeJSON struct {
 	Part       string        `json:"part"`
@@ -48,6 +53,7 @@ type sizeJSON struct {
 	Excluded   float64       `json:"excluded_up_to"` // every smaller base radius down to "smallest_sensible" is proven to fail
 	Floor      float64       `json:"smallest_sensible"`
 	Limits     []sizeLimitJS `json:"limits"`
+	Offset     *float64      `json:"best_offset,omitempty"` // only of a free offset; found by search
 	Rows       []sizeRowJS   `json:"trade_off"`
 }
 
@@ -55,6 +61,9 @@ type sizeLimitJS struct {
 	ID       string  `json:"id"`
 	Least    float64 `json:"least_base_radius"`
 	CamAngle float64 `json:"cam_angle"`
+
+	Margin *float64 `json:"margin"` // left at base_radius; null when nothing there needs the limit
+	Unit   string   `json:"unit"`
 }
 
 type sizeRowJS struct {
@@ -67,7 +76,14 @@ type sizeRowJS struct {
 func sizeFacts(s *spec.Spec, z synth.Sizing) sizeJSON {
 	out := sizeJSON{Part: s.Part, Units: string(s.Units), BaseRadius: z.BaseRadius, Binds: z.Binds, Excluded: z.Excluded, Floor: z.Floor}
 	for _, l := range z.Limits {
-		out.Limits = append(out.Limits, sizeLimitJS(l))
+		x := sizeLimitJS{ID: l.ID, Least: l.Least, CamAngle: l.CamAngle, Unit: l.Unit}
+		if !math.IsInf(l.Margin, 0) {
+			x.Margin = &l.Margin
+		}
+		out.Limits = append(out.Limits, x)
+	}
+	if z.OffsetFree {
+		out.Offset = &z.BestOffset
 	}
 	for _, r := range z.Rows {
 		out.Rows = append(out.Rows, sizeRowJS(r))
@@ -78,10 +94,24 @@ func sizeFacts(s *spec.Spec, z synth.Sizing) sizeJSON {
 func printSize(c *cli.Context, s *spec.Spec, z synth.Sizing) {
 	w, u := c.App.Writer, s.Units.Short()
 	fmt.Fprintf(w, "%s: smallest base radius %.6g %s (the spec has %g); %s binds\n", s.Part, z.BaseRadius, u, s.Cam.BaseRadius, z.Binds)
-	fmt.Fprintf(w, "every base radius from %.6g to %.6g %s is proven to fail\n\n", z.Floor, z.Excluded, u)
-	fmt.Fprintf(w, "%-24s %14s %12s\n", "limit", "asks for", "cam angle")
+	if z.OffsetFree {
+		fmt.Fprintf(w, "with follower.offset %g %s: of the offsets tried (a scan, then golden section between the best one's neighbors) it allows the smallest base radius\n", z.BestOffset, u)
+	}
+	if z.Excluded > z.Floor {
+		if z.Excluded < z.BaseRadius*(1-undecided) {
+			fmt.Fprintf(w, "from %.6g %s to the answer the search found none that meets the limits, but not every radius is proven to fail\n", z.Excluded, u)
+		}
+		fmt.Fprintf(w, "every base radius from %.6g to %.6g %s is proven to fail\n\n", z.Floor, z.Excluded, u)
+	} else {
+		fmt.Fprintf(w, "below it no cam is looked for: it would leave no room for the bore, or the follower could not stand\n\n")
+	}
+	fmt.Fprintf(w, "%-24s %14s %12s   %s\n", "limit", "asks for", "cam angle", "left at the smallest")
 	for _, l := range z.Limits {
-		fmt.Fprintf(w, "%-24s %11.6g %-2s %11.2f°\n", l.ID, l.Least, u, l.CamAngle)
+		left := "nothing needs it"
+		if !math.IsInf(l.Margin, 0) {
+			left = fmt.Sprintf("%.4g %s", l.Margin, l.Unit)
+		}
+		fmt.Fprintf(w, "%-24s %11.6g %-2s %11.2f°   %s\n", l.ID, l.Least, u, l.CamAngle, left)
 	}
 	fmt.Fprintf(w, "\n%14s %16s %22s\n", "base radius", "pressure angle", "least convex radius")
 	for _, r := range z.Rows {

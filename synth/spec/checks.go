@@ -34,6 +34,9 @@ func (r *reader) checkBody(s *Spec) {
 	if c.Kind == barrelCam {
 		r.checkBarrel(s)
 	}
+	if s.Follower.OffsetFree && c.Kind != plateCam && r.ok("follower.offset", "cam.kind") {
+		r.faultAt("follower.offset", Fault{Found: "free", Allowed: eitherWay().String(), Advice: "only a plate cam can be sized"})
+	}
 	if b := c.Bore; b != nil && c.Kind != barrelCam && r.ok("cam.bore.diameter", "cam.base_radius") && b.Diameter/2 >= c.BaseRadius {
 		r.faultAt("cam.bore.diameter", Fault{Found: figure(b.Diameter), Allowed: "a bore smaller than the base circle, whose diameter is " + figure(2*c.BaseRadius)})
 	}

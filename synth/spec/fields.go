@@ -17,6 +17,27 @@ func number[T any](name, doc string, s span, at func(*T) *float64) field[T] {
 		}}
 }
 
+// numberOr is a key with a number in the span or one word.
+func numberOr[T any](word, name, doc string, s span, at func(*T) *float64, said func(*T) *bool) field[T] {
+	allowed := s.String() + ", or " + word
+	return field[T]{name: name, doc: doc, allowed: allowed, schema: object{{"anyOf", []object{s.schema(), {{"const", word}}}}},
+		read: func(r *reader, w where, into *T) {
+			if w.val.Kind == yaml.ScalarNode && w.val.Value == word {
+				r.seen(w)
+				*said(into) = true
+				return
+			}
+			if _, advice, ok := plainNumber(w); !ok {
+				r.seen(w)
+				r.wrong(w, allowed, advice)
+				return
+			}
+			if x, ok := r.number(w, s); ok {
+				*at(into) = x
+			}
+		}}
+}
+
 // optional is a key whose absence differs from every value.
 func optional[T any](name, doc string, s span, at func(*T) **float64) field[T] {
 	return field[T]{name: name, doc: doc, allowed: s.String(), schema: s.schema(),

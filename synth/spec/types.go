@@ -126,6 +126,7 @@ type Follower struct {
 	HeadDiameter   float64 // length, of a mushroom
 	FaceWidth      float64 // length, of a translating flat face
 	Offset         float64 // length, positive towards +Y
+	OffsetFree     bool    // `offset: free`: sizing chooses it, and nothing else can be made of the spec
 	ArmLength      float64 // length, pivot to roller center
 	PivotDistance  float64 // length, camshaft axis to pivot
 	Below          bool    // a swinging follower touches the cam below the center line

@@ -102,6 +102,10 @@ type Operation struct {
 	Stock        []float64
 	Direction    Direction
 
+	// Barrel: letter of the rotary axis, and whether a narrow tool is shifted by it alone.
+	Rotary      byte
+	RotaryShift bool
+
 	// Wire.
 	WireDiameter float64   // length
 	Offsets      []float64 // wire center to contour, a length for each pass
@@ -139,6 +143,10 @@ type Machine struct {
 	BlockNumbers bool
 	MaxBlocks    int     // 0 when not limited
 	SafeZ        float64 // length above the top of the blank
+
+	RotaryDecimals int     // 0 to 9, of degrees
+	RotaryTable    bool    // growing rotary words turn the work, else the tool about it, counterclockwise seen on the marked face
+	RotarySpeed    float64 // largest speed of the rotary axis, degrees/min; 0 when not limited
 }
 
 func (m Machine) grid() chain.Grid { return chain.Grid{Decimals: m.Decimals} }

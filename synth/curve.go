@@ -16,8 +16,8 @@ import (
 // junction can be asked for.
 type Curve struct {
 	cam    *Cam
-	left   float64 // distance from the pitch curve, to the left of travel, length
-	tool   float64 // of a barrel: radius of a tool that cuts the wall on that side, whose path this is; 0 for the wall itself
+	left   float64   // distance from the pitch curve, to the left of travel, length
+	tool   *DrumTool // of a barrel: the tool whose axis this is
 	pieces []plane.Piece
 }
 

@@ -43,18 +43,23 @@ func (c *Curve) flanked() (follower.Wall, bool) {
 	return follower.Wall{Half: math.Abs(c.left), Upper: c.left*c.cam.outward() > 0}, c.left != 0
 }
 
-// drumF is a wall of a barrel, or the path of a tool that cuts it, as series.
+// drumF is a wall of a barrel, or the path of a tool's axis, as series; ok is false for the pitch
+// curve itself.
 func (c *Curve) drumF(piece int, t float64) (x, y taylor.F, ok bool) {
 	b, drum := c.cam.drum()
 	w, wall := c.flanked()
-	if !drum || !wall {
+	if !drum || !wall && c.tool == nil {
 		return x, y, false
 	}
 	deg, lift := taylor.FVar(t), c.cam.liftF(piece, t)
-	if c.tool > 0 {
-		x, y = b.ShiftedF(deg, lift, w, c.tool, b.MiddleRadius())
-	} else {
+	switch {
+	case c.tool == nil:
 		x, y = b.WallF(deg, lift, w, b.OuterRadius)
+	case wall:
+		x, y = b.AxisF(deg, lift, w, c.shift(b), c.tool.At)
+	default:
+		x, y = b.F(deg, lift)
+		x = x.Scale(c.tool.At / b.OuterRadius)
 	}
 	return x, y, true
 }
@@ -63,44 +68,53 @@ func (c *Curve) drumF(piece int, t float64) (x, y taylor.F, ok bool) {
 func (c *Curve) drumI(piece int, t taylor.Interval, order int) (x, y taylor.I, ok bool) {
 	b, drum := c.cam.drum()
 	w, wall := c.flanked()
-	if !drum || !wall {
+	if !drum || !wall && c.tool == nil {
 		return x, y, false
 	}
-	deg := taylor.IVar(t, order+1)
+	if wall {
+		order++
+	}
+	deg := taylor.IVar(t, order)
 	lift := c.cam.lift.I(piece, deg)
-	if c.tool > 0 {
-		x, y = b.ShiftedI(deg, lift, w, c.tool, b.MiddleRadius())
-	} else {
+	switch {
+	case c.tool == nil:
 		x, y = b.WallI(deg, lift, w, b.OuterRadius)
+	case wall:
+		x, y = b.AxisI(deg, lift, w, c.shift(b), c.tool.At)
+	default:
+		x, y = b.I(deg, lift)
+		x = x.Scale(c.tool.At / b.OuterRadius)
 	}
 	return x, y, true
 }
 
-// ToolPath returns the path of the axis of a tool in a barrel's groove, in the developed
-// plane: of a tool as wide as the groove the pitch curve; of a narrower one, for the upper
-// wall (away from the datum end) or the lower, the pitch curve shifted square to the track by
-// what the tool is too narrow and by the stock that is to stay (length), which is exact at
-// the middle of the roller's depth.
-func (c *Cam) ToolPath(toolRadius, stock float64, upper bool) *Curve {
-	half := c.inset()
-	if narrower := half - toolRadius - stock; narrower <= widthSlack*half {
-		return c.Pitch()
-	}
-	left := half * c.outward()
-	if !upper {
-		left = -left
-	}
-	p := c.curve(left)
-	p.tool = toolRadius + stock
-	return p.renewed()
+// shift is how the curve's tool is moved.
+func (c *Curve) shift(b follower.Barrel) follower.Shift {
+	return follower.Shift{Tool: c.tool.Radius, Exact: b.MiddleRadius(), Rotary: c.tool.Rotary}
 }
 
-// renewed settles again what depends on where the curve is.
-func (c *Curve) renewed() *Curve {
-	for i := 1; i < len(c.pieces); i++ {
-		c.pieces[i].Jump = jump(c.At(i-1, c.pieces[i-1].To), c.At(i, c.pieces[i].From), c.cam.size())
+// DrumTool is a tool in a barrel's groove, and how its axis is looked at.
+type DrumTool struct {
+	Radius float64 // length, with the stock it is to leave
+	Side   int     // 0 on the pitch curve; else it cuts a wall: -1 that at the datum end, +1 the other
+	Rotary bool    // shifted to its wall by the rotary axis, else by an axis across
+	At     float64 // distance from the camshaft axis at which it is looked at, length
+}
+
+// ToolAxis returns the path of the tool's axis as the plane at a distance from the camshaft
+// axis sees it: X is that distance times its polar angle and what the tool is beside it, Y the
+// axial position.
+func (c *Cam) ToolAxis(t DrumTool) *Curve {
+	left := 0.0
+	if t.Side != 0 && t.Radius < c.inset() {
+		left = float64(t.Side) * c.outward() * c.inset()
 	}
-	return c
+	p := c.curve(left)
+	p.tool = &t
+	for i := 1; i < len(p.pieces); i++ {
+		p.pieces[i].Jump = jump(p.At(i-1, p.pieces[i-1].To), p.At(i, p.pieces[i].From), c.size())
+	}
+	return p
 }
 
 // drumRound is the least radius of curvature of both walls where their material bulges, in the

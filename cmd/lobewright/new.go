@@ -12,7 +12,7 @@ func newCommand() *cli.Command {
 	return &cli.Command{
 		Name:      "new",
 		Usage:     "print a commented starter spec that releases as it stands",
-		UsageText: "lobewright new [KIND]\n\nExamples:\n   lobewright new > my-cam.yaml\n   lobewright new groove",
+		UsageText: "lobewright new [KIND]\n\nExamples:\n   lobewright new > my-cam.yaml\n   lobewright new barrel",
 		Action: func(c *cli.Context) error {
 			if c.NArg() > 1 {
 				return failure{statusInput, fmt.Errorf("lobewright new: found %d arguments; allowed: one kind at most", c.NArg())}

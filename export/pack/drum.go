@@ -157,6 +157,9 @@ func (j *job) drumTrace(exact *synth.Curve, path chain.Path) [][]svg.DeviationSa
 		for k := range tracePoints {
 			p := e.PointAt((float64(k) + 0.5) / tracePoints)
 			t := p.X / perDegree
+			if t > last { // a program runs on past its first turn
+				t, p.X = t-360, p.X-360*perDegree
+			}
 			for range 8 {
 				f := frame(t)
 				t += p.Sub(f.P).Dot(f.T) * math.Abs(f.T.X/perDegree)

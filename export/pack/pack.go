@@ -146,6 +146,9 @@ func (j *job) allocate() {
 // a control may round the points it interpolates.
 func (j *job) otherShares() []tolerance.Share {
 	shares := []tolerance.Share{{Source: "grid", HalfWidth: math.Pow10(-j.spec.Control.Decimals) / 2, Kind: tolerance.Fixed}}
+	if x := j.wallShift(); x > 0 {
+		shares = append(shares, tolerance.Share{Source: "shift", HalfWidth: x, Kind: tolerance.Fixed})
+	}
 	if m := j.spec.Tolerance.MachineTool; m != nil {
 		shares = append(shares,
 			tolerance.Share{Source: "resolution", HalfWidth: m.Resolution, Kind: tolerance.Variable},

@@ -125,6 +125,9 @@ func (p program) faults() int {
 }
 
 func (j *job) tryProgram(i int, eps float64) (program, error) {
+	if j.drum() {
+		return j.tryDrumProgram(i, eps)
+	}
 	op := j.operation(i, eps)
 	part, machine := j.part(op, i), j.machine()
 	plan, err := gcode.Plan(part, op, machine)
@@ -191,7 +194,8 @@ func healed(p chain.Path, count float64) chain.Path {
 func (j *job) machine() gcode.Machine {
 	c := j.spec.Control
 	return gcode.Machine{Decimals: c.Decimals, AbsoluteArcs: c.AbsoluteArcs, ArcMismatch: c.ArcMismatch,
-		BlockNumbers: c.BlockNumbers, MaxBlocks: c.MaxBlocks, SafeZ: c.SafeZ}
+		BlockNumbers: c.BlockNumbers, MaxBlocks: c.MaxBlocks, SafeZ: c.SafeZ,
+		RotaryDecimals: c.RotaryDecimals, RotaryTable: c.RotarySense == "table", RotarySpeed: c.RotarySpeed}
 }
 
 func (j *job) part(op gcode.Operation, i int) gcode.Part {

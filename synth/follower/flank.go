@@ -83,29 +83,39 @@ func flankAt[T taylor.Scalar[T]](b Barrel, deg, lift T, w Wall, along float64) (
 	return x, y, lift.Add(lift.Of(b.Track)).Add(long.Of(w.sign() * w.Half * along).Div(long))
 }
 
-// shifted is the axis of a tool narrower than the groove that cuts one wall, in the developed
-// plane: moved square to the track, by what the wall lies further out than the tool reaches.
-// It touches the wall where it should at the distance from the camshaft axis that is given,
-// for which the track's slope is taken.
-func shifted[T taylor.Scalar[T]](b Barrel, deg, lift T, w Wall, tool, radius float64) (x, y T) {
-	d := w.Half - tool
+// Shift is how a tool narrower than the groove is moved from the pitch curve to cut a wall.
+type Shift struct {
+	Tool   float64 // its radius, length, at most Wall.Half
+	Exact  float64 // distance from the camshaft axis at which it touches the wall where the roller does, length
+	Rotary bool    // moved along the turning by the rotary axis, else by an axis across
+}
+
+// axisAt is the tool's axis as the plane at a distance from the camshaft axis sees it: moved
+// square to the track, as that is at the distance where it is exact, by what the wall lies further
+// out than the tool reaches.
+func axisAt[T taylor.Scalar[T]](b Barrel, deg, lift T, w Wall, s Shift, radius float64) (x, y T) {
+	d := w.Half - s.Tool
 	v := slope(deg, lift)
-	long := v.Mul(v).Add(v.Of(radius * radius)).Sqrt()
-	x, y = developed(b, deg, lift)
-	t := v.Div(long).Scale(-w.sign() * b.Sense() * d * b.OuterRadius / radius)
-	return x.Add(t), y.Add(long.Of(w.sign() * d * radius).Div(long))
+	long := v.Mul(v).Add(v.Of(s.Exact * s.Exact)).Sqrt()
+	t := v.Div(long).Scale(-w.sign() * b.Sense() * d)
+	if s.Rotary {
+		t = t.Scale(radius / s.Exact)
+	}
+	x, y = deg.Radians().Scale(b.Sense()*radius), lift.Add(lift.Of(b.Track))
+	return x.Add(t), y.Add(long.Of(w.sign() * d * s.Exact).Div(long))
 }
 
-// ShiftedF returns the path of the axis of a tool of the given radius (length, at most
-// w.Half) that cuts the wall w, touching it exactly at a distance from the camshaft axis
-// (length, above 0), as series in the cam angle in degrees. One order is lost.
-func (b Barrel) ShiftedF(deg, lift taylor.F, w Wall, tool, radius float64) (x, y taylor.F) {
-	return shifted(b, deg, lift, w, tool, radius)
+// AxisF returns the path of a tool's axis as the plane at a distance from the camshaft axis
+// (length, above 0) sees it, as series in the cam angle in degrees: X is that distance times the
+// axis's polar angle, and what the axis is beside that radial line; Y the axial position. One
+// order is lost.
+func (b Barrel) AxisF(deg, lift taylor.F, w Wall, s Shift, radius float64) (x, y taylor.F) {
+	return axisAt(b, deg, lift, w, s, radius)
 }
 
-// ShiftedI encloses what ShiftedF computes; its order is one less than that of lift.
-func (b Barrel) ShiftedI(deg, lift taylor.I, w Wall, tool, radius float64) (x, y taylor.I) {
-	return shifted(b, deg, lift, w, tool, radius)
+// AxisI encloses what AxisF computes; its order is one less than that of lift.
+func (b Barrel) AxisI(deg, lift taylor.I, w Wall, s Shift, radius float64) (x, y taylor.I) {
+	return axisAt(b, deg, lift, w, s, radius)
 }
 
 // FlankF returns the point of the wall that touches the roller at a distance from the

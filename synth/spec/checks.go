@@ -14,6 +14,7 @@ func (r *reader) check(s *Spec) {
 	r.checkBlank(s)
 	for i := range s.Operations {
 		path := fmt.Sprintf("operations[%d]", i+1)
+		r.checkAxes(path, s, &s.Operations[i])
 		switch op := &s.Operations[i]; op.Process {
 		case "mill":
 			r.checkStock(path+".stock", op.Stock)
@@ -67,6 +68,32 @@ func (r *reader) checkBarrel(s *Spec) {
 	}
 	if b := c.Bore; b != nil && r.ok("cam.bore.diameter", "cam.groove_depth", "cam.radius") && b.Diameter/2 >= c.Radius-c.GrooveDepth {
 		r.faultAt("cam.bore.diameter", Fault{Found: figure(b.Diameter), Allowed: "a bore smaller than the core under the groove, whose diameter is " + figure(2*(c.Radius-c.GrooveDepth))})
+	}
+}
+
+// checkAxes: a barrel is milled on a rotary axis and one along it, whose sense must be told; other
+// cams are cut in the plane.
+func (r *reader) checkAxes(path string, s *Spec, op *Operation) {
+	drum := s.Cam.Kind == barrelCam
+	if op.Axes == "" {
+		op.Axes = "xy"
+		if drum {
+			op.Axes = "cylinder"
+		}
+	}
+	if !r.ok("cam.kind", path+".process", path+".axes") {
+		return
+	}
+	switch {
+	case drum && op.Process != "mill":
+		r.faultAtKey(path, Fault{Found: op.Process + " on a barrel", Allowed: "mill: a barrel's groove is milled on axes: cylinder"})
+	case drum && op.Axes != "cylinder":
+		r.faultAt(path+".axes", Fault{Found: op.Axes + " on a barrel", Allowed: "cylinder"})
+	case !drum && op.Axes == "cylinder":
+		r.faultAt(path+".axes", Fault{Found: "cylinder on a cam of kind " + s.Cam.Kind, Allowed: "xy"})
+	case drum && s.Control.RotarySense == "" && r.ok("control", "control.rotary_sense"):
+		r.faultAtKey(path, Fault{Found: "a rotary axis whose sense is not told", Allowed: "control: {rotary_sense: tool} or {rotary_sense: table}",
+			Advice: "the wrong one is a mirrored cam, so there is no default: look at which way the table turns for a growing word"})
 	}
 }
 

@@ -2,6 +2,9 @@ package spec
 
 // The keys of the format, in the order a spec is written in.
 
+// rotaryDecimals are the decimals of degrees unless the spec gives others.
+const rotaryDecimals = 3
+
 // formatVersion is the only value of the key lobewright.
 const formatVersion = 1
 
@@ -203,12 +206,14 @@ func blankTable() table[Blank] {
 
 func operationTable(v Vocabulary) table[Operation] {
 	const mill, wire = "mill", "wire"
-	fresh := Operation{Axes: "xy", Tool: 1, Compensation: "path", Direction: "climb", Moves: "arcs"}
+	fresh := Operation{RotaryAxis: "A", Shift: "parallel", Tool: 1, Compensation: "path", Direction: "climb", Moves: "arcs"}
 	return table[Operation]{what: "an operation", fresh: fresh, place: func(o *Operation, p Place) { o.Place = p },
 		kinds: v.Processes, name: "process", kind: byKey("process", v.Processes, everyProcess()),
 		fields: []field[Operation]{
 			kindKey("process", "how the contour is cut", v.Processes, func(o *Operation, w string) { o.Process = w }),
-			choice("axes", "axes of the machine, default xy", []string{"xy"}, everyAxes(), func(o *Operation, w string) { o.Axes = w }),
+			choice("axes", "axes of the machine: xy, or cylinder (a rotary axis and one along it, for barrels); default xy, for a barrel cylinder", []string{"xy", "cylinder"}, everyAxes(), func(o *Operation, w string) { o.Axes = w }),
+			choice("rotary_axis", "letter of the rotary axis on axes cylinder, default A (with X along it, Y across); B has Y along it and X across", []string{"A", "B"}, nil, func(o *Operation, w string) { o.RotaryAxis = w }).of(mill),
+			choice("shift", "how a tool narrower than a barrel's groove is moved to its walls, default parallel: by the axial axis and one across it; rotary: by the axial and the rotary axis", []string{"parallel", "rotary"}, nil, func(o *Operation, w string) { o.Shift = w }).of(mill),
 			integer("tool", "tool number, default 1", 1, 9999, func(o *Operation) *int { return &o.Tool }).of(mill),
 			number("tool_diameter", "diameter of the cutter, length", length(), func(o *Operation) *float64 { return &o.ToolDiameter }).of(mill).required(),
 			number("spindle_speed", "spindle speed in rpm", rpm(), func(o *Operation) *float64 { return &o.SpindleSpeed }).of(mill).required(),
@@ -246,7 +251,6 @@ func startHoleTable() table[StartHole] {
 
 func controlTable() table[Control] {
 	return table[Control]{what: "a control", place: func(c *Control, p Place) { c.Place = p },
-		absent: []absent{{name: "rotary_sense"}},
 		fields: []field[Control]{
 			integer("decimals", "decimals of the coordinates, default 3 in mm and 4 in inch", 2, 6, func(c *Control) *int { return &c.Decimals }),
 			choice("arc_center", "how I and J give an arc's center, default incremental", []string{"incremental", "absolute"}, nil,
@@ -255,6 +259,10 @@ func controlTable() table[Control] {
 				func(c *Control) *float64 { return &c.ArcMismatch }),
 			flag("block_numbers", "number the blocks, default true", func(c *Control) *bool { return &c.BlockNumbers }),
 			integer("max_blocks", "most blocks of a program; left out: no limit", 1, 100_000_000, func(c *Control) *int { return &c.MaxBlocks }),
+			choice("rotary_sense", "what a growing rotary word turns counterclockwise, seen on the marked face: the tool about the work, or the table with the work; needed for axes cylinder, no default", []string{"tool", "table"}, nil,
+				func(c *Control, w string) { c.RotarySense = w }),
+			integer("rotary_decimals", "decimals of rotary words, default 3", 2, 6, func(c *Control) *int { return &c.RotaryDecimals }),
+			number("rotary_speed", "largest speed of the rotary axis, degrees/min; left out: no limit", span{noun: "degrees/min", lo: 0, hi: mostRate, above: true}, func(c *Control) *float64 { return &c.RotarySpeed }),
 			number("safe_z", "height of rapid moves above the top of the blank, length, default 5 mm or 0.2 inch", length(), func(c *Control) *float64 { return &c.SafeZ }),
 		}}
 }

@@ -66,6 +66,9 @@ func defaults(s *Spec) {
 	if c.ArcMismatch == 0 {
 		c.ArcMismatch = mismatch
 	}
+	if c.RotaryDecimals == 0 {
+		c.RotaryDecimals = rotaryDecimals
+	}
 	if c.SafeZ == 0 {
 		c.SafeZ = safe
 	}

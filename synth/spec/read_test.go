@@ -64,13 +64,13 @@ func TestDefaults(t *testing.T) {
 		Cam:       Cam{Kind: "plate", BaseRadius: 45, Thickness: 12, Place: Place{11, 6}},
 		Limits:    Limits{PressureAngle: 30},
 		Tolerance: Tolerance{Profile: 0.02, Combine: "fixed+rss", Place: Place{12, 12}},
-		Control:   Control{Decimals: 3, ArcMismatch: 0.002, BlockNumbers: true, SafeZ: 5},
+		Control:   Control{Decimals: 3, ArcMismatch: 0.002, BlockNumbers: true, SafeZ: 5, RotaryDecimals: 3},
 	}
 	if diff := cmp.Diff(want, s); diff != "" {
 		t.Errorf("(-want +got):\n%s", diff)
 	}
 	inch := mustRead(t, replaced(t, smallest, "units: mm", "units: inch"))
-	if diff := cmp.Diff(Control{Decimals: 4, ArcMismatch: 0.0002, BlockNumbers: true, SafeZ: 0.2}, inch.Control); diff != "" {
+	if diff := cmp.Diff(Control{Decimals: 4, ArcMismatch: 0.0002, BlockNumbers: true, SafeZ: 0.2, RotaryDecimals: 3}, inch.Control); diff != "" {
 		t.Errorf("inch (-want +got):\n%s", diff)
 	}
 }
@@ -114,7 +114,7 @@ func TestStarterOptionalKeys(t *testing.T) {
 	if diff := cmp.Diff(tolerance, s.Tolerance); diff != "" {
 		t.Errorf("tolerance (-want +got):\n%s", diff)
 	}
-	if diff := cmp.Diff(Control{3, false, 0.002, true, 20000, 5, s.Control.Place}, s.Control); diff != "" {
+	if diff := cmp.Diff(Control{Decimals: 3, ArcMismatch: 0.002, BlockNumbers: true, MaxBlocks: 20000, SafeZ: 5, RotaryDecimals: 3, Place: s.Control.Place}, s.Control); diff != "" {
 		t.Errorf("control (-want +got):\n%s", diff)
 	}
 	if diff := cmp.Diff(&at, s.Operations[0].StartAt); diff != "" {
@@ -129,8 +129,8 @@ func TestStarterOptionalKeys(t *testing.T) {
 
 func TestStarterUnknown(t *testing.T) {
 	for kind, want := range map[string]string{
-		"barrel": "found barrel, which is not available in this version; allowed: plate, groove",
-		"plat":   `found the kind "plat"; allowed: plate, groove; did you mean plate?`,
+		"barell": `found the kind "barell"; allowed: plate, groove, barrel; did you mean barrel?`,
+		"plat":   `found the kind "plat"; allowed: plate, groove, barrel; did you mean plate?`,
 	} {
 		if text, err := Starter(kind); err == nil || err.Error() != want || text != "" {
 			t.Errorf("%s: %q, %v", kind, text, err)

@@ -19,8 +19,8 @@ func vocabulary() Vocabulary {
 		ShareLaws:     []string{"modified-constant-velocity"},
 		SymmetricLaws: []string{"simple-harmonic", "cycloidal", "modified-sine", "polynomial-3-4-5", "modified-constant-velocity"},
 		HalfLaws:      []HalfLaw{{"simple-harmonic", math.Pi / 2}, {"cycloidal", 2}},
-		Followers:     []string{"translating-roller"},
-		Cams:          []string{"plate"},
+		Followers:     everyFollower(),
+		Cams:          []string{"plate", "groove", "barrel"},
 		Processes:     []string{"mill", "wire"},
 		EndSpeeds: func(l Law) (start, end float64) {
 			switch l.Name {

@@ -217,7 +217,7 @@ type Blank struct {
 // Operation is one program.
 type Operation struct {
 	Process string // "mill", "grind" or "wire"
-	Axes    string // "xy"; default "xy"
+	Axes    string // "xy" or "cylinder"; default "xy", of a barrel "cylinder"
 
 	Tool         int     // tool number, default 1
 	ToolDiameter float64 // length, mill and grind
@@ -229,6 +229,7 @@ type Operation struct {
 	Compensation string   // "path", "wear" or "control"; default "path"
 	Direction    string   // "climb" or "conventional"; default "climb"
 	StartAt      *float64 // start_at_cam_angle, degrees; nil for the default place
+	RotaryAxis   string   // letter of the rotary axis on axes cylinder; default "A"
 	Shift        string   // of a narrow tool in a barrel's groove: "parallel" or "rotary"; default "parallel"
 	Moves        string   // "arcs" or "lines"; default "arcs"
 
@@ -260,5 +261,9 @@ type Control struct {
 	BlockNumbers bool    // default true
 	MaxBlocks    int     // 0 when not limited
 	SafeZ        float64 // length above the top of the blank; default 5 mm, 0.2 inch
-	Place        Place
+
+	RotarySense    string  // "tool" or "table"; empty when not given
+	RotaryDecimals int     // of degrees; default 3
+	RotarySpeed    float64 // degrees/min; 0 when not limited
+	Place          Place
 }

@@ -124,6 +124,12 @@ func Open(curve Curve, path chain.Path) (Deviation, error) {
 	return certify(curve, path, whole)
 }
 
+// Part certifies an open path against the stretch of an open curve beside it. It begins and ends
+// beside points of the curve, which the result names. Errors are those of Closed.
+func Part(curve Curve, path chain.Path) (Deviation, error) {
+	return certify(curve, path, within)
+}
+
 // reach says how much of the curve a path stands for.
 type reach uint8
 
@@ -131,10 +137,11 @@ const (
 	turn    reach = iota // a closed curve, once around
 	stretch              // of a closed curve, what the path runs along
 	whole                // all of an open curve
+	within               // of an open curve, what the path runs along
 )
 
 func certify(curve Curve, path chain.Path, r reach) (Deviation, error) {
-	s, err := newSurvey(curve, r != whole)
+	s, err := newSurvey(curve, r == turn || r == stretch)
 	if err != nil {
 		return Deviation{}, err
 	}
@@ -151,7 +158,7 @@ func certify(curve Curve, path chain.Path, r reach) (Deviation, error) {
 	here := first
 	for i := range figures {
 		there, err := w.step(here, &figures[i])
-		if r != stretch && i == len(figures)-1 {
+		if (r == turn || r == whole) && i == len(figures)-1 {
 			there = mark{first.turn + 1, first.t}
 		}
 		if err == nil {

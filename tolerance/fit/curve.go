@@ -47,6 +47,7 @@ type run struct {
 	parts   []part
 	samples []sample // growing t; at a part's boundary both sides
 	pins    []int    // indices into samples: where the curvature or tangent jumps, or the curve starts; the right side
+	ends    []int    // the same, where a straight piece begins or ends
 }
 
 const (
@@ -181,7 +182,7 @@ func at(p plane.Piece, j, n int) float64 {
 func newRun(c Curve, parts []part, density per, wanted float64) (*run, error) {
 	r := &run{curve: c, parts: parts}
 	s, steepest := 0.0, 0.0
-	for _, p := range parts {
+	for i, p := range parts {
 		ss, err := sampleEvenly(c, p, density, wanted)
 		if err != nil {
 			return nil, err
@@ -193,7 +194,9 @@ func newRun(c Curve, parts []part, density per, wanted float64) (*run, error) {
 			ss[j].s = s
 			steepest = math.Max(steepest, math.Abs(ss[j].K))
 		}
-		if n := len(r.samples); n > 0 && (p.piece == 0 || jumps(r.samples[n-1].Frame, ss[0].Frame, steepest) || breaks(r.samples[n-1].Frame, ss[0].Frame)) {
+		if n := len(r.samples); n > 0 && (p.Straight || r.parts[i-1].Straight) {
+			r.ends = append(r.ends, n)
+		} else if n > 0 && (p.piece == 0 || jumps(r.samples[n-1].Frame, ss[0].Frame, steepest) || breaks(r.samples[n-1].Frame, ss[0].Frame)) {
 			r.pins = append(r.pins, n)
 		}
 		r.samples = append(r.samples, ss...)

@@ -3,6 +3,7 @@ package fit
 import (
 	"fmt"
 	"math"
+	"sort"
 
 	"lobewright/synth/plane"
 	"lobewright/tolerance/chain"
@@ -47,7 +48,7 @@ func vertexAt(f plane.Frame, t, s, off float64) vertex {
 
 // Lines returns a path of lines, closed when the curve is, within eps (a length) of the curve by the estimate
 // of dense samples, vertices up to eps off the curve. It runs with growing parameter;
-// Source as in Arcs. A corner of the curve gets a vertex of its own. Errors as for Arcs.
+// Source as in Arcs. A corner of the curve gets a vertex of its own, and so do the ends of a straight piece. Errors as for Arcs.
 func Lines(c Curve, eps float64) (chain.Path, error) {
 	pieces, err := validate(c, eps)
 	if err != nil {
@@ -84,7 +85,7 @@ func (r *run) firstVertex(eps float64) vertex {
 	return vertexAt(first.Frame, first.t, 0, off)
 }
 
-// corners returns the pins where the tangent jumps.
+// corners returns the pins where the tangent jumps, and the ends of straight pieces.
 func (r *run) corners() []int {
 	var at []int
 	for _, j := range r.pins {
@@ -92,6 +93,8 @@ func (r *run) corners() []int {
 			at = append(at, j)
 		}
 	}
+	at = append(at, r.ends...)
+	sort.Ints(at)
 	return at
 }
 

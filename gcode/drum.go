@@ -55,6 +55,9 @@ type DrumPass struct {
 const (
 	leadDegrees = 5.0 // cam angle over which a tool slides to a wall
 	mostStep    = 1.0 // degrees of a step of that slide
+	// apartDegrees is how near two stations may be: nearer ones would make lines of which rounding
+	// gives the direction.
+	apartDegrees = 0.02
 )
 
 // sense is the sign of the polar angle as the cam angle grows.
@@ -308,7 +311,7 @@ func (p drumPlan) stations(pass DrumPass) ([]station, error) {
 	var apart []station
 	for i, s := range out {
 		s.turned = math.Abs(float64(s.r-first.r)) * p.p.RotaryGrid.Step()
-		if i > 0 && s.r == apart[len(apart)-1].r && s.axial == apart[len(apart)-1].axial {
+		if i > 0 && i < len(out)-1 && s.turned-apart[len(apart)-1].turned < apartDegrees {
 			continue
 		}
 		apart = append(apart, s)
@@ -357,7 +360,7 @@ func (p drumPlan) cut(turn []station, from, to float64) []station {
 	cut := []station{at(from)}
 	end := at(to)
 	for _, s := range out {
-		if s.turned > cut[0].turned+1e-9 && s.turned < end.turned-1e-9 {
+		if s.turned > cut[0].turned+apartDegrees && s.turned < end.turned-apartDegrees {
 			cut = append(cut, s)
 		}
 	}

@@ -332,12 +332,12 @@ func (v *drumVerifier) between(moves []read.Move, c DrumCut, forward bool) {
 		v.wrong("lead", moves[0].LineNo, "%v", err)
 		return
 	}
-	side := d.Right // +Y is on the left of travel towards growing X
+	wrong := d.Left // +Y is on the left of travel towards growing X
 	if (c.Pass.Side > 0) == (v.x.Sense > 0) {
-		side = d.Left
+		wrong = d.Right
 	}
-	if room := v.x.Room(c.Pass.Stock) + v.x.Eps; !(d.Bound <= room) || !(d.Bound-side <= v.x.Eps+0.02*room) {
-		v.fail("lead", d.Bound, room, d.At, moves[0].LineNo, "the tool slides %.6g from the pitch curve, %.6g to the side it is meant for; at most %.6g is allowed, and to that side", d.Bound, side, room)
+	if room := v.x.Room(c.Pass.Stock) + v.x.Eps; !(d.Bound <= room) || !(wrong <= v.x.Eps) {
+		v.fail("lead", d.Bound, room, d.At, moves[0].LineNo, "the tool slides %.6g from the pitch curve, and %.6g away from the wall it is meant for; at most %.6g is allowed, and only to the wall", d.Bound, wrong, room)
 	}
 }
 

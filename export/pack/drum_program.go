@@ -39,23 +39,7 @@ func (j *job) tryDrumProgram(i int, eps float64) (program, error) {
 		return program{}, err
 	}
 	p := program{index: i, name: fmt.Sprintf("%s.%d-%s.nc", j.spec.Part, i+1, j.spec.Operations[i].Process), plan: plan}
-	p.data = j.tampered(p.name, write.Program(plan))
-	back, err := read.Parse(p.data)
-	if err != nil {
-		return p, fmt.Errorf("%s: %w", p.name, err)
-	}
-	if err := gcode.Differs(plan, back); err != nil {
-		return p, fmt.Errorf("%s: %w", p.name, err)
-	}
-	if p, err = j.verifyDrum(p, back, op, machine); err != nil {
-		return p, err
-	}
-	exact := j.cam.Pitch()
-	p.theory = fit.Theory(exact, j.chord, chain.Line)
-	if p.result.FinishOffset == 0 && p.result.Finish != nil {
-		p.finish = &written{file: p.name, curve: "last pass", exact: exact, path: p.result.Finish, deviation: p.result.Deviation, theory: p.theory, floor: j.floor(exact)}
-	}
-	return p, nil
+	return j.proveProgram(p, j.tampered(p.name, write.Program(plan)))
 }
 
 // drumOperation is an operation of the spec as one on a barrel.
@@ -67,15 +51,18 @@ func (j *job) drumOperation(i int) gcode.Operation {
 }
 
 // verifyDrum holds a program against the exact paths of its tool.
-func (j *job) verifyDrum(p program, back *read.Program, op gcode.Operation, machine gcode.Machine) (program, error) {
-	expect := gcode.ExpectedDrum(j.drumPart(p.index, j.chord), op, machine, j.chord)
+func (j *job) verifyDrum(p program, back *read.Program) (program, error) {
+	expect := gcode.ExpectedDrum(j.drumPart(p.index, j.chord), j.drumOperation(p.index), j.machine(), j.chord)
 	result, err := gcode.VerifyDrum(back, expect)
 	if err != nil {
 		return p, fmt.Errorf("%s: %w", p.name, err)
 	}
 	p.expect, p.result = expect.Expect, result
-	if result.Finish != nil {
+	exact := j.cam.Pitch()
+	p.theory = fit.Theory(exact, j.chord, chain.Line)
+	if result.Finish != nil && result.FinishOffset == 0 {
 		p.result.Finish = j.firstTurn(result.Finish)
+		p.finish = &written{file: p.name, curve: "last pass", exact: exact, path: p.result.Finish, deviation: result.Deviation, theory: p.theory, floor: j.floor(exact)}
 	}
 	return p, nil
 }

@@ -150,6 +150,9 @@ func (j *job) proveProgram(p program, data []byte) (program, error) {
 	if err := gcode.Differs(p.plan, back); err != nil {
 		return p, fmt.Errorf("%s: %w", p.name, err)
 	}
+	if j.drum() {
+		return j.verifyDrum(p, back)
+	}
 	if p.result, err = gcode.Verify(back, p.expect); err != nil {
 		return p, fmt.Errorf("%s: %w", p.name, err)
 	}

@@ -19,7 +19,7 @@ type endless struct {
 }
 
 // turnsBefore and turnsBehind are how far the path of a program may run.
-const turnsBefore, turnsBehind = 1, 2
+const turnsBefore, turnsBehind = 2, 2
 
 func newEndless(c Curve, z, sense float64) endless {
 	e := endless{Curve: c, z: z, sense: sense}

@@ -64,11 +64,19 @@ type pose struct{ polar, beside, height float64 }
 // axis is a tool's pose at a cam angle, degrees.
 type axis func(deg float64) pose
 
-// flank is the point of the exact wall at a cam angle and a distance along the roller's axis.
-func (c *Cam) flank(b follower.Barrel, w follower.Wall, deg, along float64) (x, y, z float64) {
-	zone, t := c.cycle.Zone(deg)
-	fx, fy, fz := b.FlankF(taylor.FVar(t), c.liftF(zone, t), w, along)
+// Flank returns the point of a wall (the upper one is that away from the datum end) that touches
+// the roller at cam angle t (degrees) of a zone, at a distance along the roller's axis from the
+// camshaft axis (length): x and y across the camshaft, z from the datum end.
+func (c *Cam) Flank(zone int, t, along float64, upper bool) (x, y, z float64) {
+	b, _ := c.drum()
+	fx, fy, fz := b.FlankF(taylor.FVar(t), c.liftF(zone, t), follower.Wall{Half: c.inset(), Upper: upper}, along)
 	return fx.C[0], fy.C[0], fz.C[0]
+}
+
+// flank is the point of the exact wall at a cam angle and a distance along the roller's axis.
+func (c *Cam) flank(w follower.Wall, deg, along float64) (x, y, z float64) {
+	zone, t := c.cycle.Zone(deg)
+	return c.Flank(zone, t, along, w.Upper)
 }
 
 // away is the distance of a point from a tool's axis.
@@ -127,7 +135,7 @@ func (c *Cam) overWalls(do func(w follower.Wall, deg, along, x, y, z float64)) {
 			deg := from + float64(k)*wallStep
 			for i := range wallDepths {
 				along := b.BottomRadius() + b.Depth*float64(i)/(wallDepths-1)
-				x, y, z := c.flank(b, w, deg, along)
+				x, y, z := c.flank(w, deg, along)
 				do(w, deg, along, x, y, z)
 			}
 		}

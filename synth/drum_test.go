@@ -58,7 +58,7 @@ func TestShiftedToolOnAHelix(t *testing.T) {
 			for _, z := range []float64{40, 42, 45, 48, 50} {
 				v := c.LiftAt(100).V
 				a, m := math.Atan2(v, z), math.Atan2(v, 45)
-				x, y, h := c.flank(b, w, 100, z)
+				x, y, h := c.flank(w, 100, z)
 				for rotary, want := range map[bool]float64{
 					false: d * (1 - math.Cos(a-m)),
 					true:  d * (1 - z/45*math.Sin(m)*math.Sin(a) - math.Cos(m)*math.Cos(a)),

@@ -86,11 +86,11 @@ func (j *job) firstTurn(p chain.Path) chain.Path {
 }
 
 // wallShift is the largest error of a barrel's walls that shifting a narrow tool leaves, over all
-// operations, length.
+// operations, length. One that is refused for it is not counted twice.
 func (j *job) wallShift() float64 {
 	most := 0.0
 	for _, g := range j.gates {
-		if g.ID == "wall-error" {
+		if g.ID == "wall-error" && g.Pass {
 			most = max(most, g.Value)
 		}
 	}

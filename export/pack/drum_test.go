@@ -3,6 +3,7 @@ package pack
 import (
 	"fmt"
 	"math"
+	"math/rand"
 	"strings"
 	"testing"
 
@@ -156,4 +157,88 @@ operations:
 			t.Errorf("%s: %.5f of the walls is left, %.5f is cut away; allowed %.5f", name, left, gouged, allowed)
 		}
 	}
+}
+
+// randomBarrel draws a barrel cam: with dwells or none, beginning anywhere, at the bottom or the
+// top, cut by a tool of the groove's width or a narrower one, shifted either way.
+func randomBarrel(r *rand.Rand) string {
+	d := &dice{Rand: r}
+	radius, lift, roller := d.mm(35, 70), d.mm(5, 30), d.mm(8, 20)
+	depth, clearance := d.mm(0.1, 0.2)*radius, 0.02
+	law := func() string { return d.smoothLaw() }
+	rise := fmt.Sprintf("{rise: %.3f, over: %d, law: %s}", lift, 100+d.Intn(60), law())
+	fall := fmt.Sprintf("{fall: %.3f, over: %d, law: %s}", lift, 100+d.Intn(60), law())
+	events, start := fmt.Sprintf("[{dwell: %d}, %s, {dwell: %d}, %s, {dwell: rest}]", 5+d.Intn(25), rise, 1+d.Intn(10), fall), 0.0
+	switch d.Intn(3) {
+	case 0:
+		events = fmt.Sprintf("[{rise: %.3f, over: 170, law: %s}, {fall: %.3f, over: 190, law: %s}]", lift, law(), lift, law())
+	case 1:
+		events, start = fmt.Sprintf("[%s, {dwell: 10}, %s, {dwell: rest}]", fall, rise), math.Round(lift*1000)/1000
+	}
+	d.say("lobewright: 1\npart: random\nunits: mm\ncamshaft: {speed: %d, rotation: %s}\n", 30+d.Intn(200), d.of("clockwise", "counterclockwise"))
+	d.say("motion:\n  start_at_cam_angle: %d\n  start_lift: %g\n  events: %s\n", d.Intn(360), start, events)
+	d.say("follower: {kind: translating-roller, roller_diameter: %.3f}\n", roller)
+	d.say("cam: {kind: barrel, radius: %.3f, length: 120, groove_depth: %.3f, clearance: %g, track_position: 40, datum: none}\n", radius, depth, clearance)
+	d.say("limits: {pressure_angle: 55}\ntolerance: {profile: 0.04, chord: 0.003}\ncontrol: {rotary_sense: %s}\nblank: {diameter: %.3f}\n", d.of("tool", "table"), 2*math.Round(radius*1000)/1000)
+	tool, stock, shift := spec1(roller/2)+clearance, "[0]", "parallel"
+	if d.Intn(2) == 0 {
+		tool, stock, shift = tool-1, "[0.2, 0]", d.of("parallel", "rotary")
+	}
+	d.say("operations:\n  - {process: mill, rotary_axis: %s, tool_diameter: %.3f, shift: %s, spindle_speed: 2000, feed: 200, plunge_feed: 60, step_down: 4, stock: %s, direction: %s}\n",
+		d.of("A", "B"), tool, shift, stock, d.of("climb", "conventional"))
+	return d.b.String()
+}
+
+// A random barrel releases unless a gate of its own geometry speaks; then every curve is where
+// the certificate says, and the follower's lift on it is right.
+func TestRandomBarrelsRelease(t *testing.T) {
+	mine := map[string]bool{"pressure-angle": true, "undercut": true, "track": true, "wall-error": true}
+	released := 0
+	const specs = 12
+	for seed := range int64(specs) {
+		text := randomBarrel(rand.New(rand.NewSource(77_000 + seed)))
+		s, err := spec.Read("random.yaml", []byte(text), synth.Vocabulary())
+		if err != nil {
+			t.Fatalf("seed %d: %v\n%s", seed, err, text)
+		}
+		p, j, err := work(s, options())
+		if err != nil {
+			t.Fatalf("seed %d: %v\n%s", seed, err, text)
+		}
+		sound := true
+		for _, g := range j.gates {
+			if !g.Pass && mine[g.ID] {
+				sound = false
+			}
+		}
+		if sound != p.Passed {
+			for _, g := range j.gates {
+				if !g.Pass {
+					t.Errorf("seed %d: gate %s %v against %v, %s\n%s", seed, g.ID, g.Value, g.Limit, g.Text, text)
+				}
+			}
+			continue
+		}
+		if !sound {
+			continue
+		}
+		released++
+		for _, w := range j.outline.paths {
+			if d := farthest(w.exact, w.path); d > w.deviation.Bound+3e-5 {
+				t.Errorf("seed %d, %s: sampled deviation %v, certified %v\n%s", seed, w.curve, d, w.deviation.Bound, text)
+			}
+		}
+		for _, u := range j.unknown {
+			t.Errorf("seed %d: %s\n%s", seed, u.Text, text)
+		}
+		for curve, r := range j.follows {
+			if r.err.Lift > 3*j.chord {
+				t.Errorf("seed %d, %s: the follower's lift is off by %v\n%s", seed, curve, r.err.Lift, text)
+			}
+		}
+	}
+	if released < specs/2 {
+		t.Errorf("only %d of %d released", released, specs)
+	}
+	t.Logf("%d of %d random barrels released", released, specs)
 }

@@ -39,6 +39,9 @@ func farthest(c *synth.Curve, path chain.Path) float64 {
 			pts = append(pts, c.At(i, p.From+(p.To-p.From)*float64(k)/float64(n)).P)
 		}
 	}
+	if last := len(c.Pieces()) - 1; !c.Closed() {
+		pts = append(pts, c.At(last, c.Pieces()[last].To).P)
+	}
 	worst := 0.0
 	for _, e := range path {
 		for k := range 9 {

@@ -53,7 +53,7 @@ type Laws func(name string) (motion.Law, error)
 // Rows computes the table, grouped by source. It fails only where a law is missing.
 func Rows(laws Laws) ([]Row, error) {
 	var rows []Row
-	for _, part := range []func(Laws) ([]Row, error){peaks, printed, skewed, joined, tables, contours, kinds} {
+	for _, part := range []func(Laws) ([]Row, error){peaks, printed, skewed, joined, tables, contours, kinds, barrel} {
 		r, err := part(laws)
 		if err != nil {
 			return nil, err

@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"lobewright/synth"
+	"lobewright/synth/plane"
 	"lobewright/synth/spec"
 )
 
@@ -60,4 +61,43 @@ func kinds(Laws) ([]Row, error) {
 	const cauchy = "Integral checks of a whole cam under a flat face (A. L. Cauchy: the length is the integral of the height)"
 	return append(rows, Row{cauchy, Derived, "3-4-5, 20 over 90° and 120°, base 60: length", "434.586983746588", k.Contour().Length()},
 		Row{cauchy, Derived, "the same: area", "14943.8010910284", k.Contour().Area()}), nil
+}
+
+// barrel: a modified-sine rise of 30 in 120° on a cylinder of 50, roller of 16, from textbook
+// formulas other than the program's, with 30 digits.
+func barrel(Laws) ([]Row, error) {
+	s := &spec.Spec{Units: spec.MM, Camshaft: spec.Camshaft{Speed: 60, Clockwise: true}}
+	s.Motion.Events = []spec.Event{event(spec.Rise, 30, 120, "modified-sine"), {Kind: spec.Dwell, Over: 60}, event(spec.Fall, 30, 120, "modified-sine"), {Kind: spec.Dwell, Over: 60}}
+	s.Follower = spec.Follower{Kind: "translating-roller", RollerDiameter: 16}
+	s.Cam = spec.Cam{Kind: "barrel", Radius: 50, Length: 60, GrooveDepth: 10}
+	s.Limits.PressureAngle = 30
+	k, err := synth.Build(s)
+	if err != nil {
+		return nil, err
+	}
+	const source = "Barrel cam by the conjugate condition: the roller touches where its normal is square to its velocity seen from the cam (F. L. Litvin, Gear Geometry and Applied Theory, 1994, cited from memory)"
+	b, _ := k.Barrel()
+	zone, t := k.Cycle().Zone(30)
+	rows := []Row{
+		{source, Derived, "slope of the track at 25 % of the rise at the outer radius, degrees", "17.48733442154", k.SlantAt(zone, t, 50).Deg()},
+		{source, Derived, "radius of curvature of the developed pitch curve there", "88.00177030846", 1 / k.Pitch().At(zone, t).K},
+	}
+	for _, c := range []struct {
+		deg, along    float64
+		upper         bool
+		radius, y, at string
+	}{
+		{60, 50, true, "50.12950857029", "22.14369445744", "55.88060246546"},
+		{60, 50, false, "50.12950857029", "7.856305542562", "64.11939753454"},
+		{60, 45, true, "45.16949243726", "21.97975307305", "55.03492190852"},
+		{30, 50, true, "50.05775686567", "11.14562174068", "27.24738474194"},
+	} {
+		zone, t := k.Cycle().Zone(c.deg)
+		x, y, z := k.Flank(zone, t, c.along, c.upper)
+		p := plane.Point{X: x, Y: y}
+		what := fmt.Sprintf("wall (upper %v) touched at cam angle %g, %g along the roller's axis: ", c.upper, c.deg, c.along)
+		rows = append(rows, Row{source, Derived, what + "distance from the camshaft axis", c.radius, p.Radius()},
+			Row{source, Derived, what + "polar angle", c.at, p.PolarAngle()}, Row{source, Derived, what + "height", c.y, z - b.Track})
+	}
+	return rows, nil
 }

@@ -1,5 +1,7 @@
 package motion
 
+import "math"
+
 // Opened returns the same motion with its zones counted from the middle of the longest
 // lowest dwell on, of which either half becomes a zone of its own: where a curve that is
 // developed is best cut open. Without a dwell at the lowest lift of all dwells the motion is
@@ -31,13 +33,12 @@ func (c *Cycle) Opened() *Cycle {
 	for i := 1; i < len(d.zones); i++ { // adding a turn rounds
 		d.zones[i].From = d.zones[i-1].To
 	}
-	last := &d.zones[len(d.zones)-1]
-	last.To = middle + 360
-	if middle > 0 { // so that cam angle 0 lies within
+	if turns := 360 * math.Ceil(middle/360); turns > 0 { // so that cam angle 0 lies within
 		for i := range d.zones {
 			z := &d.zones[i]
-			z.From, z.To, z.Origin = z.From-360, z.To-360, z.Origin-360
+			z.From, z.To, z.Origin = z.From-turns, z.To-turns, z.Origin-turns
 		}
 	}
+	d.zones[len(d.zones)-1].To = d.zones[0].From + 360
 	return d
 }

@@ -71,6 +71,7 @@ func TestShiftedToolOnAHelix(t *testing.T) {
 			}
 		}
 		parallel, rotary := c.Misses(half - 1)
+		t.Logf("1 narrower in radius: parallel %.5f, rotary %.5f", parallel.Error, rotary.Error)
 		if e := math.Abs(parallel.Error); !(e > 0.0008 && e < 0.0025) {
 			t.Errorf("parallel %+v", parallel)
 		}

@@ -66,6 +66,16 @@ type Polyline struct {
 	Closed   bool
 }
 
+// Path is the polyline as any reader must rebuild it from its points and bulges.
+func (p Polyline) Path() chain.Path {
+	var points []plane.Point
+	var bulges []float64
+	for _, v := range p.Vertices {
+		points, bulges = append(points, p.Grid.Value(v.P)), append(bulges, v.Bulge)
+	}
+	return chain.FromBulges(points, bulges, p.Closed)
+}
+
 // Circle is a full circle.
 type Circle struct {
 	Layer  string

@@ -3,6 +3,7 @@ package dxf
 import (
 	"fmt"
 	"slices"
+	"strings"
 
 	"github.com/yofu/dxf/color"
 )
@@ -22,6 +23,7 @@ const (
 	LayerZeroMark     = "ZERO_MARK"     // where the cam angle 0 is stamped
 	LayerCheckLine    = "CHECK_LINE"    // a line of known length with its text
 	LayerNotes        = "NOTES"         // texts
+	LayerToolPath     = "TOOL_PATH_"    // and the number of an operation: path of its tool's center, last pass
 )
 
 // LongestLayer is the longest layer name, which is the limit of R12.
@@ -59,6 +61,9 @@ func lookOf(layer string) look {
 		return look{color.Magenta, solid, 25}
 	case LayerCheckLine:
 		return look{color.Yellow, solid, 18}
+	}
+	if strings.HasPrefix(layer, LayerToolPath) {
+		return look{color.Yellow, dashes, 18}
 	}
 	return look{color.White, solid, 18}
 }

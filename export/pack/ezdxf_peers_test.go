@@ -5,7 +5,6 @@ package pack
 import (
 	"bytes"
 	"encoding/json"
-	"os"
 	"os/exec"
 	"path/filepath"
 	"strings"
@@ -25,28 +24,7 @@ type ezdxfFile struct {
 // ezdxf (Debian package python3-ezdxf) reads every sample's DXF, in both versions,
 // without an audit error or fix, and finds the vertices our reader finds.
 func TestPeerEzdxfSamples(t *testing.T) {
-	dir := t.TempDir()
-	var files []string
-	var ours []*read.File
-	for _, name := range releasingSamples(t) {
-		for _, version := range []string{"2000", "r12"} {
-			o := options()
-			o.DXF = version
-			p, j, err := work(readSample(t, name), o)
-			if err != nil || !p.Passed {
-				t.Fatal(name, err)
-			}
-			file := filepath.Join(dir, version+"-"+j.outline.name)
-			if err := os.WriteFile(file, j.outline.data, 0o644); err != nil {
-				t.Fatal(err)
-			}
-			parsed, err := read.Parse(j.outline.data)
-			if err != nil {
-				t.Fatal(err)
-			}
-			files, ours = append(files, file), append(ours, parsed)
-		}
-	}
+	files, ours := outlines(t)
 	cmd := exec.Command("/usr/bin/python3", append([]string{"../dxf/testdata/ezdxf_read.py"}, files...)...)
 	var messages bytes.Buffer
 	cmd.Stderr = &messages

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 	"sync"
 
 	"lobewright/export/dxf"
@@ -31,6 +32,7 @@ type outline struct {
 // written is one path as it was read back from a file.
 type written struct {
 	file, curve string
+	layer       string // of the DXF, empty in a program
 	exact       *synth.Curve
 	path        chain.Path
 	deviation   certify.Deviation
@@ -128,8 +130,9 @@ func (j *job) tryOutline(eps float64) (*outline, error) {
 }
 
 // proveOutline reads a DXF back from its bytes, holds its curves against the exact
-// ones and everything else against what was meant.
-func (j *job) proveOutline(drawing dxf.Drawing, data []byte) (*outline, error) {
+// ones and everything else against what was meant. A curve that is read back as one of
+// the known, element by element, has its proof already.
+func (j *job) proveOutline(drawing dxf.Drawing, data []byte, known ...written) (*outline, error) {
 	o := &outline{name: j.spec.Part + ".dxf", drawing: drawing, data: data}
 	file, err := read.Parse(o.data)
 	if err != nil {
@@ -153,7 +156,7 @@ func (j *job) proveOutline(drawing dxf.Drawing, data []byte) (*outline, error) {
 		layers = append(layers, layer{dxf.LayerPitchCurve, "pitch curve", j.cam.Pitch()})
 	}
 	for _, c := range layers {
-		w, err := j.proveLayer(o.name, file, c.layer, c.curve, c.exact)
+		w, err := j.proveLayer(o.name, file, c.layer, c.curve, c.exact, known)
 		if err != nil {
 			return nil, err
 		}
@@ -169,19 +172,33 @@ func (j *job) tampered(name string, data []byte) []byte {
 	return j.opt.tamper(name, data)
 }
 
-// proveLayer certifies the one polyline of a layer against its exact curve, closed as that is.
-func (j *job) proveLayer(name string, file *read.File, layer, curve string, exact *synth.Curve) (written, error) {
+// onLayer is the one polyline of a layer, closed as the curve it stands for.
+func onLayer(name string, file *read.File, layer string, closed bool) (chain.Path, error) {
 	var path chain.Path
 	for _, p := range file.Polylines {
 		if p.Layer == layer {
-			if path != nil || p.Closed != exact.Closed() {
-				return written{}, fmt.Errorf("%s: layer %s must hold one polyline, closed: %v", name, layer, exact.Closed())
+			if path != nil || p.Closed != closed {
+				return nil, fmt.Errorf("%s: layer %s must hold one polyline, closed: %v", name, layer, closed)
 			}
 			path = chain.FromBulges(p.Points, p.Bulges, p.Closed)
 		}
 	}
 	if path == nil {
-		return written{}, fmt.Errorf("%s: layer %s holds no polyline", name, layer)
+		return nil, fmt.Errorf("%s: layer %s holds no polyline", name, layer)
+	}
+	return path, nil
+}
+
+// proveLayer certifies the one polyline of a layer against its exact curve, closed as that is.
+func (j *job) proveLayer(name string, file *read.File, layer, curve string, exact *synth.Curve, known []written) (written, error) {
+	path, err := onLayer(name, file, layer, exact.Closed())
+	if err != nil {
+		return written{}, err
+	}
+	for _, w := range known {
+		if w.layer == layer && slices.Equal(w.path, path) {
+			return w, nil
+		}
 	}
 	prove := certify.Closed
 	if !exact.Closed() {
@@ -191,7 +208,7 @@ func (j *job) proveLayer(name string, file *read.File, layer, curve string, exac
 	if err != nil {
 		return written{}, fmt.Errorf("%s: layer %s: %w", name, layer, err)
 	}
-	return written{file: name, curve: curve, exact: exact, path: path, deviation: d,
+	return written{file: name, curve: curve, layer: layer, exact: exact, path: path, deviation: d,
 		theory: fit.Theory(exact, j.chord, chain.Arc), floor: j.floor(exact), toPitch: -exact.Left()}, nil
 }
 
@@ -266,6 +283,7 @@ func (j *job) keywayOutline() chain.Path {
 // marks adds center lines, the zero mark, the check line and the notes.
 func (j *job) marks(d *dxf.Drawing) {
 	_, reach := j.extent()
+	reach = math.Max(reach, j.toolReach())
 	over := 1.08 * reach
 	line := func(layer string, a, b plane.Point) {
 		d.Lines = append(d.Lines, dxf.Line{Layer: layer, From: a, To: b})

@@ -115,6 +115,7 @@ func (j *job) writeSmoothEnough() {
 			}
 			j.findings = append(j.findings, j.unknown...)
 			j.followerGates(worst)
+			j.drawToolPaths()
 			return
 		}
 	}

@@ -2,6 +2,7 @@ package pack
 
 import (
 	"fmt"
+	"strings"
 
 	"lobewright/export/dxf"
 	"lobewright/export/dxf/read"
@@ -49,12 +50,13 @@ func sameDrawing(d dxf.Drawing, f *read.File) error {
 	return nil
 }
 
-// samePolyline compares the bore exactly; contour and pitch curve are left to the certificate.
+// samePolyline compares bore and tool paths exactly; contour and pitch curve are left to
+// the certificate.
 func samePolyline(p dxf.Polyline, g read.Polyline) error {
 	if g.Layer != p.Layer || g.Closed != p.Closed || len(g.Points) != len(p.Vertices) {
 		return fmt.Errorf("it was read back on layer %s with %d vertices of %d", g.Layer, len(g.Points), len(p.Vertices))
 	}
-	if p.Layer != dxf.LayerBore {
+	if p.Layer != dxf.LayerBore && !strings.HasPrefix(p.Layer, dxf.LayerToolPath) {
 		return nil
 	}
 	for i, v := range p.Vertices {

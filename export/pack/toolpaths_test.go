@@ -1,0 +1,65 @@
+package pack
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+	"testing"
+
+	"lobewright/export/dxf/read"
+	"lobewright/synth/plane"
+	"lobewright/tolerance/chain"
+)
+
+// Every program of every sample has its tool path in the DXF: where the program holds the center's path, its joints
+// are those of the program to the last digit; where the control compensates, it runs a tool radius outside
+// the contour.
+func TestToolPathsInDXF(t *testing.T) {
+	for _, name := range releasingSamples(t) {
+		_, j, err := work(readSample(t, name), options())
+		if err != nil {
+			t.Fatal(err)
+		}
+		file, err := read.Parse(j.outline.data)
+		if err != nil {
+			t.Fatal(err)
+		}
+		n := 0
+		for _, p := range j.programs {
+			layer := fmt.Sprintf("TOOL_PATH_%d", p.index+1)
+			i := slices.IndexFunc(file.Polylines, func(q read.Polyline) bool { return q.Layer == layer })
+			if i < 0 {
+				t.Errorf("%s: no layer %s", name, layer)
+				continue
+			}
+			n++
+			op := j.spec.Operations[p.index]
+			if op.Compensation != "control" {
+				var joints []plane.Point
+				for _, e := range p.finish.path {
+					joints = append(joints, e.From)
+				}
+				for _, q := range joints {
+					if !slices.Contains(file.Polylines[i].Points, q) {
+						t.Fatalf("%s: joint %v of the program is not on %s", name, q, layer)
+					}
+				}
+				continue
+			}
+			for _, e := range chain.FromBulges(file.Polylines[i].Points, file.Polylines[i].Bulges, true) {
+				if d := farthest(j.cam.Contour(), chain.Path{e}); math.Abs(d-op.ToolDiameter/2) > 2*j.chord {
+					t.Errorf("%s: %s is %.4f from the contour, the tool's radius is %g", name, layer, d, op.ToolDiameter/2)
+				}
+			}
+		}
+		for _, q := range file.Polylines {
+			if strings.HasPrefix(q.Layer, "TOOL_PATH_") {
+				n--
+			}
+		}
+		if n != 0 {
+			t.Errorf("%s: layers of tool paths without a program", name)
+		}
+	}
+}

@@ -9,6 +9,7 @@ import (
 	"slices"
 
 	"lobewright/export/sheet"
+	"lobewright/export/table"
 	"lobewright/gcode"
 	"lobewright/synth/gate"
 	"lobewright/synth/plane"
@@ -41,7 +42,9 @@ func (j *job) finish() (*Pack, error) {
 	if err != nil {
 		return nil, err
 	}
+	probe := j.probe()
 	p.Report = j.report(released)
+	p.Report.Probe = j.probeFacts(probe)
 	name := func(tail string) string { return j.spec.Part + "." + tail }
 	look := []File{{name("svg"), figures.Drawing}, {name("motion.svg"), figures.Motion}}
 	if figures.Deviation != nil {
@@ -55,6 +58,13 @@ func (j *job) finish() (*Pack, error) {
 		p.Files = append(p.Files, File{q.name, q.data})
 	}
 	p.Files = append(p.Files, File{name("inspection.csv"), inspection}, File{name("motion.csv"), motion})
+	if len(probe) > 0 {
+		data, err := table.Probe(probe, j.spec.Camshaft.Clockwise, tableDecimals)
+		if err != nil {
+			return nil, err
+		}
+		p.Files = append(p.Files, File{name("probe.csv"), data})
+	}
 	if p.Report.Released {
 		for _, f := range p.Files {
 			sum := sha256.Sum256(f.Data)

@@ -30,11 +30,11 @@ func (j *job) stops(step float64) []stop {
 	n := int(math.Round(360 / step))
 	seen := map[float64]bool{}
 	for i := range n {
-		seen[float64(i)*step] = true
+		seen[360*float64(i)/float64(n)] = true
 	}
 	angles := make([]float64, 0, n+len(jumps))
 	for i := range n {
-		angles = append(angles, float64(i)*step)
+		angles = append(angles, 360*float64(i)/float64(n))
 	}
 	for _, x := range j.cam.Cycle().Junctions() {
 		if a := plane.Wrap360(x.At); !seen[a] {
@@ -79,7 +79,11 @@ func (j *job) motionTable() ([]byte, error) {
 func (j *job) inspectionTable() ([]byte, error) {
 	pitch, contour := j.cam.Pitch(), j.cam.Contour()
 	var rows []table.InspectionRow
-	for _, s := range j.stops(1) {
+	step := 1.0
+	if i := j.spec.Inspection; i != nil {
+		step = i.Step
+	}
+	for _, s := range j.stops(step) {
 		p, k := pitch.At(s.zone, s.t), contour.At(s.zone, s.t)
 		rows = append(rows, table.InspectionRow{
 			CamAngle: s.angle, Lift: j.cam.LiftIn(s.zone, s.t).S,

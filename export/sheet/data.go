@@ -33,8 +33,26 @@ type Report struct {
 	Tolerance  Tolerance   `json:"tolerance"`
 	Notes      []string    `json:"notes"`
 	Cautions   []string    `json:"cautions"`
+	Probe      *Probe      `json:"probe,omitempty"` // the table for a probe, when the spec asks for one
 	Files      []string    `json:"files"`
 	FileHashes []FileHash  `json:"file_hashes"` // of the files that were finished before the report
+}
+
+// Probe is the table a probe on a rotary table is held against. Lengths are those of the
+// probe's center from the camshaft axis.
+type Probe struct {
+	File     string     `json:"file"`
+	Diameter float64    `json:"probe_diameter"`
+	Step     float64    `json:"step"`  // degrees of table angle
+	Sense    string     `json:"sense"` // in which the table turns, seen on the marked face: "clockwise" or "counterclockwise"
+	Rows     int        `json:"rows"`  // of the file
+	Shown    []ProbeRow `json:"-"`     // those the page shows, at equal table angles
+}
+
+// ProbeRow is one row of it; Outer is that of a groove's outer wall.
+type ProbeRow struct {
+	TableAngle, Radius, Lower, Upper, Difference float64
+	Outer                                        *ProbeRow
 }
 
 // FileHash is the SHA-256 of a file of the pack, hexadecimal.

@@ -79,6 +79,9 @@ func functions(r Report) template.FuncMap {
 		"hash":     r.hash,
 		"gated":    func(kind string) bool { return kind == r.Budget.Combine },
 		"followed": r.followed,
+		"micro":    func(v float64) string { return micro(v, r.Units) },
+		"every":    func(p Probe) int { return (p.Rows + len(p.Shown) - 1) / len(p.Shown) },
+		"blocks":   blocks,
 		"fail":     func(v, limit float64) bool { return v > limit },
 	}
 }
@@ -103,6 +106,21 @@ func offset(v float64, units string) string {
 		return "+" + s
 	}
 	return s
+}
+
+// micro prints a length of the probe's table: a tenth of a micrometer, or ten millionths of an inch.
+func micro(v float64, units string) string {
+	decimals := 4
+	if units == "inch" {
+		decimals = 5
+	}
+	return strconv.FormatFloat(v+0, 'f', decimals, 64)
+}
+
+// blocks parts the rows of the probe's table so that each block stays on a printed page.
+func blocks(rows []ProbeRow) [][]ProbeRow {
+	const most = 30
+	return slices.Collect(slices.Chunk(rows, most))
 }
 
 // failing are the gates that refuse.

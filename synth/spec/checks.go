@@ -12,6 +12,7 @@ import (
 func (r *reader) check(s *Spec) {
 	r.checkBody(s)
 	r.checkBlank(s)
+	r.checkInspection(s)
 	for i := range s.Operations {
 		path := fmt.Sprintf("operations[%d]", i+1)
 		r.checkAxes(path, s, &s.Operations[i])
@@ -112,6 +113,31 @@ func (r *reader) checkBlank(s *Spec) {
 	if r.ok("blank.diameter", "blank.clamp_radius") && b.ClampRadius >= b.Diameter/2 {
 		r.faultAt("blank.clamp_radius", Fault{Found: figure(b.ClampRadius), Allowed: "a clamp within the blank, whose radius is " + figure(b.Diameter/2)})
 	}
+}
+
+func (r *reader) checkInspection(s *Spec) {
+	i := s.Inspection
+	if i == nil {
+		return
+	}
+	if rows := math.Round(360 / i.Step); r.ok("inspection.step") && math.Abs(rows*i.Step-360) > 1e-9 {
+		r.faultAt("inspection.step", Fault{Found: figure(i.Step), Allowed: "a step that goes into 360 a whole number of times, such as " + figure(nearestStep(rows))})
+	}
+	width := s.Follower.RollerDiameter + s.Cam.Clearance
+	if s.Cam.Kind == grooveCam && r.ok("inspection.probe_diameter", "follower", "cam.clearance") && i.ProbeDiameter > width {
+		r.faultAt("inspection.probe_diameter", Fault{Found: figure(i.ProbeDiameter), Allowed: "a probe that enters the groove, which is " + figure(width) + " wide"})
+	}
+}
+
+// nearestStep is a step that prints short: 360 over the next count of rows whose step has at most
+// two decimals.
+func nearestStep(rows float64) float64 {
+	for ; rows > 4; rows-- {
+		if step := 360 / rows; math.Abs(step*100-math.Round(step*100)) < 1e-9 {
+			return step
+		}
+	}
+	return 90
 }
 
 func (r *reader) checkStock(path string, stock []float64) {

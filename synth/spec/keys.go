@@ -54,6 +54,7 @@ func specTable(v Vocabulary) table[Spec] {
 		list("operations", "the NC programs, one each, in the order of work", operationTable(v),
 			func(_ *reader, s *Spec, all []Operation) { s.Operations = all }),
 		child("control", "the NC control that reads the programs", controlTable(), func(s *Spec) *Control { return &s.Control }),
+		maybe("inspection", "how the finished cam is measured; left out: a table of the contour alone, a row a degree", inspectionTable(), func(s *Spec) **Inspection { return &s.Inspection }),
 		text("material", "text for the drawing", func(s *Spec) *string { return &s.Material }),
 		text("hardness", "text for the drawing", func(s *Spec) *string { return &s.Hardness }),
 		text("finish", "text for the drawing", func(s *Spec) *string { return &s.Finish }),
@@ -196,6 +197,16 @@ func machineTable() table[MachineTool] {
 		number("tool", "error of the tool's radius, plus or minus, length, default 0", orNoLength(), func(m *MachineTool) *float64 { return &m.Tool }),
 	}}
 }
+
+func inspectionTable() table[Inspection] {
+	return table[Inspection]{what: "an inspection", place: func(i *Inspection, p Place) { i.Place = p }, fresh: Inspection{Step: 1}, fields: []field[Inspection]{
+		number("step", "degrees from row to row, a whole part of 360, default 1", span{noun: "an angle in degrees", lo: leastStep, hi: 90}, func(i *Inspection) *float64 { return &i.Step }),
+		number("probe_diameter", "diameter of the probe's ball or roller, length; left out: no table for a probe", length(), func(i *Inspection) *float64 { return &i.ProbeDiameter }),
+	}}
+}
+
+// leastStep bounds a table to 3600 rows.
+const leastStep = 0.1
 
 func blankTable() table[Blank] {
 	return table[Blank]{what: "a blank", place: func(b *Blank, p Place) { b.Place = p }, fields: []field[Blank]{

@@ -15,6 +15,7 @@ type Spec struct {
 	Limits                Limits
 	Tolerance             Tolerance
 	Blank                 *Blank
+	Inspection            *Inspection // nil when the spec says nothing of it
 	Operations            []Operation
 	Control               Control
 
@@ -206,6 +207,13 @@ type Tolerance struct {
 
 // MachineTool holds the machine's errors, each plus or minus on the contour, length.
 type MachineTool struct{ Resolution, Positioning, Runout, Tool float64 }
+
+// Inspection is how the finished cam is measured.
+type Inspection struct {
+	Step          float64 // degrees from row to row
+	ProbeDiameter float64 // length, 0 without a probe
+	Place         Place
+}
 
 // Blank is the disk the cam is cut from.
 type Blank struct {

@@ -55,19 +55,46 @@ func (j *job) turn() *sheet.Turn {
 		normal := plane.Vector(rest).Unit() // at lift 0 the face is tangent to the base circle
 		foot := pivot.Add(normal.Scale(-f.FaceOffset))
 		along := rest.Sub(foot).Unit()
-		t.Bars = []sheet.Bar{{From: pivot, To: foot}, {From: foot.Add(along.Scale(f.From)), To: foot.Add(along.Scale(f.To))}}
+		t.Bars = []sheet.Bar{{From: pivot, To: foot}, {From: foot, To: foot.Add(along.Scale(f.From))}, {From: foot.Add(along.Scale(f.From)), To: foot.Add(along.Scale(f.To))}}
 	}
 	if j.cam.Swings() {
 		t.Pivot, t.Below = pivot.X, j.spec.Follower.Below
 	}
-	if b := j.spec.Cam.Bore; b != nil {
-		t.Bore = b.Diameter
+	if j.cam.Grooved() {
+		t.Outer, t.Outside = j.shape(j.cam.OuterWall()), j.spec.Cam.OutsideDiameter
 	}
+	t.Hub = j.hub()
+	for i := range j.spec.Cam.Holes {
+		t.Holes = append(t.Holes, j.cam.HoleCircle(i))
+	}
+	t.Tools = j.toolPaths()
+	zone, at := j.cam.Cycle().Zone(0)
+	t.Zero = j.cam.Contour().At(zone, at).P
 	for k := range int(360/turnStep) + 1 {
+		zone, at := j.cam.Cycle().Zone(float64(k) * turnStep)
+		polar := j.cam.Contour().At(zone, at).P.PolarAngle()
+		if k > 0 {
+			last := t.Polar[k-1]
+			polar = last + plane.Wrap360(polar-last+180) - 180
+		}
+		t.Polar = append(t.Polar, polar)
 		l := j.cam.LiftAt(float64(k) * turnStep)
 		t.Lift, t.Velocity, t.Acceleration = append(t.Lift, l.S), append(t.Velocity, l.V*w), append(t.Acceleration, l.A*w*w)
 	}
 	return t
+}
+
+// hub is the bore with its keyway as one closed path, empty without a bore.
+func (j *job) hub() chain.Path {
+	b := j.spec.Cam.Bore
+	if b == nil {
+		return nil
+	}
+	if b.Keyway != nil {
+		return j.keywayOutline()
+	}
+	right, left := plane.Point{X: b.Diameter / 2}, plane.Point{X: -b.Diameter / 2}
+	return chain.Path{{Kind: chain.Arc, From: right, To: left, CCW: true}, {Kind: chain.Arc, From: left, To: right, CCW: true}}
 }
 
 func (j *job) head(released bool) svg.Head {
@@ -222,12 +249,15 @@ func (j *job) runs(f func(zone int, t float64) float64) []svg.Run {
 // curve is a panel of the motion chart: its samples, and its least and greatest value
 // where they truly are, between the samples.
 func (j *job) curve(unit string, limits []svg.Limit, f func(zone int, t float64) float64) svg.Curve {
+	const rounding = 1e-9 // of the other peak: a value that is 0 but for rounding is no peak
 	c := svg.Curve{Unit: unit, Limits: limits, Runs: j.runs(f), Peaks: []svg.Sample{}}
-	for _, sign := range []float64{-1, 1} {
-		at, value := j.greatest(func(zone int, t float64) float64 { return sign * f(zone, t) })
-		if value > 0 {
-			c.Peaks = append(c.Peaks, svg.Sample{CamAngle: at, Value: sign * value})
-		}
+	low, least := j.greatest(func(zone int, t float64) float64 { return -f(zone, t) })
+	high, most := j.greatest(f)
+	if least > rounding*math.Abs(most) {
+		c.Peaks = append(c.Peaks, svg.Sample{CamAngle: low, Value: -least})
+	}
+	if most > rounding*math.Abs(least) {
+		c.Peaks = append(c.Peaks, svg.Sample{CamAngle: high, Value: most})
 	}
 	return c
 }

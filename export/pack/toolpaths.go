@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strings"
 
 	"lobewright/export/dxf"
 	"lobewright/synth/gate"
@@ -77,6 +78,19 @@ func (j *job) addToolPath(d *dxf.Drawing, p program) error {
 	note.Value = fmt.Sprintf("%s: center of the tool of %s, %s.", layer, p.name, what)
 	d.Polylines, d.Texts = append(d.Polylines, line), append(d.Texts, note)
 	return nil
+}
+
+// toolPaths are the tool paths of the DXF in the order of the operations.
+func (j *job) toolPaths() []chain.Path {
+	var all []chain.Path
+	if j.outline != nil {
+		for _, p := range j.outline.drawing.Polylines {
+			if strings.HasPrefix(p.Layer, dxf.LayerToolPath) {
+				all = append(all, p.Path())
+			}
+		}
+	}
+	return all
 }
 
 // plannedShare is the share of the chord tolerance that a planned tool path is fitted to: room

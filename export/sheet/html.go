@@ -12,6 +12,9 @@ import (
 //go:embed sheet.tmpl.html
 var page string
 
+//go:embed turn.tmpl.html
+var turnPart string
+
 // view is what the template sees.
 type view struct {
 	Report
@@ -41,7 +44,7 @@ func HTML(r Report, figures Figures) ([]byte, error) {
 	if v.Moving, err = figures.Turn.look(); err != nil {
 		return nil, err
 	}
-	t, err := template.New("sheet").Funcs(functions(r)).Parse(page)
+	t, err := template.New("sheet").Funcs(functions(r)).Parse(turnPart + page)
 	if err != nil {
 		return nil, fmt.Errorf("sheet: %w", err)
 	}

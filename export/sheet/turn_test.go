@@ -14,14 +14,21 @@ import (
 // (H. A. Rothbart, ed., Cam Design Handbook, 2004, p. 461).
 func eccentricTurn() *Turn {
 	a, b := plane.Point{X: 28}, plane.Point{X: -52}
-	t := &Turn{Clockwise: true, Center: true, Roller: 10, Datum: 38, Step: 5, Bore: 16, Contour: chain.Path{
-		{Kind: chain.Arc, From: a, To: b, Center: plane.Point{X: -12}, CCW: true},
-		{Kind: chain.Arc, From: b, To: a, Center: plane.Point{X: -12}, CCW: true},
-	}}
+	t := &Turn{Clockwise: true, Center: true, Roller: 10, Datum: 38, Step: 5, Zero: a, Outside: 120,
+		Hub: chain.Path{
+			{Kind: chain.Arc, From: plane.Point{X: 8}, To: plane.Point{X: -8}, CCW: true},
+			{Kind: chain.Arc, From: plane.Point{X: -8}, To: plane.Point{X: 8}, CCW: true},
+		},
+		Holes: []plane.Circle{{Center: plane.Point{X: -30, Y: 10}, Radius: 3}},
+		Contour: chain.Path{
+			{Kind: chain.Arc, From: a, To: b, Center: plane.Point{X: -12}, CCW: true},
+			{Kind: chain.Arc, From: b, To: a, Center: plane.Point{X: -12}, CCW: true},
+		}}
+	t.Tools = []chain.Path{t.Contour}
 	for k := range 73 {
 		sin, cos := math.Sincos(float64(k) * 5 * math.Pi / 180)
 		t.Lift = append(t.Lift, -12*cos+math.Sqrt(2500-144*sin*sin)-38)
-		t.Velocity, t.Acceleration = append(t.Velocity, 0), append(t.Acceleration, 0)
+		t.Velocity, t.Acceleration, t.Polar = append(t.Velocity, 0), append(t.Acceleration, 0), append(t.Polar, 0)
 	}
 	return t
 }
@@ -42,7 +49,7 @@ func TestMovingFigure(t *testing.T) {
 	page := string(out)
 	for _, want := range []string{
 		`d="M 28 0 A 40 40 0 0 0 -52 0 A 40 40 0 0 0 28 0 Z"`, // counterclockwise with Y down is sweep 0
-		`cx="38" cy="0" r="10"`, `id="turn-controls" hidden="hidden"`, `aria-label="The cam and its follower`,
+		`cx="38" cy="0" r="10"`, `cx="-30" cy="-10" r="3"`, `<circle r="60"`, `id="turn-tool"`, `over-angle`, `id="turn-controls" hidden="hidden"`, `aria-label="The cam and its follower`,
 		`prefers-reduced-motion`, `,16.9081,`, // lift 16.90807704 at 120°
 	} {
 		if !strings.Contains(page, want) {
@@ -59,6 +66,8 @@ func TestMovingFigure(t *testing.T) {
 // Series that do not fit or are not finite are refused.
 func TestMovingFigureRefused(t *testing.T) {
 	for name, spoil := range map[string]func(*Turn){
+		"no polar":     func(x *Turn) { x.Polar = nil },
+		"NaN tool":     func(x *Turn) { x.Tools = []chain.Path{{{Kind: chain.Line, To: plane.Point{X: math.NaN()}}}} },
 		"short series": func(x *Turn) { x.Velocity = x.Velocity[1:] },
 		"wrong step":   func(x *Turn) { x.Step = 4 },
 		"no contour":   func(x *Turn) { x.Contour = nil },

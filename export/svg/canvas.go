@@ -39,7 +39,15 @@ type pen struct {
 	color string
 	dash  string // SVG dash array in mm
 	fill  string
+	class string // names the shape for the sheet's script
 }
+
+// Classes of shapes that the release sheet draws a cursor on: the frame of a panel over cam
+// angles 0 to 360, and the zero circle of a trace by polar angle.
+const (
+	overAngle = "over-angle"
+	byPolar   = "by-polar"
+)
 
 // canvas writes one figure in paper mm and keeps the first fault.
 type canvas struct {
@@ -173,6 +181,9 @@ func (p pen) attrs() []string {
 	}
 	if p.dash != "" {
 		a = append(a, attr("stroke-dasharray", p.dash))
+	}
+	if p.class != "" {
+		a = append(a, attr("class", p.class))
 	}
 	return a
 }

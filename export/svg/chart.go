@@ -94,7 +94,7 @@ func (a axes) frame(events []Event, angles bool) {
 			a.c.text(pt{x, a.b.y1 + 1.6 + axisSize}, num(t, 0), font{size: axisSize, anchor: "middle"})
 		}
 	}
-	a.c.rect(a.b, pen{width: 0.25})
+	a.c.rect(a.b, pen{width: 0.25, class: overAngle})
 }
 
 // tick prints an axis value with the decimals its step needs.

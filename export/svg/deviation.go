@@ -188,7 +188,7 @@ func (r trace) at(polar, v float64) pt {
 }
 
 func (r trace) draw(p PathDeviation, chord float64) {
-	r.c.circle(r.m, ringMean, pen{width: 0.18, color: gray})
+	r.c.circle(r.m, ringMean, pen{width: 0.18, color: gray, class: byPolar})
 	for _, v := range []float64{-chord, chord} {
 		r.c.circle(r.m, ringMean+ringSwing*v/r.top, pen{width: 0.3, color: red, dash: dashed})
 	}

@@ -110,7 +110,7 @@ func TestPeerDxfParser(t *testing.T) {
 // chords between its dots. Two dots are what a point may be off.
 const librecadError = 2 * 25.4 / 1200 // mm on the page at 1:1
 
-// LibreCAD plots every sample at 1:1. Each point of what it draws of the edges lies on contour, bore or a hole, and
+// LibreCAD plots every sample that fits its page at 1:1. Each point of what it draws of the edges lies on contour, bore or a hole, and
 // each point of the contour on such a stroke, within its plotting grid. The drawing is moved
 // to the middle of the page first: what is off the page LibreCAD does not plot.
 func TestPeerLibreCAD(t *testing.T) {
@@ -123,6 +123,9 @@ func TestPeerLibreCAD(t *testing.T) {
 			_, j, err := work(readSample(t, sample), o)
 			if err != nil {
 				t.Fatal(err)
+			}
+			if j.drum() { // its developed plane is wider than the page
+				continue
 			}
 			unit := 1.0
 			if j.outline.drawing.Inch && version != "r12" { // R12 tells no units: an inch is plotted as a millimeter

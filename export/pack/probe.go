@@ -1,6 +1,7 @@
 package pack
 
 import (
+	"errors"
 	"fmt"
 	"math"
 	"sort"
@@ -95,6 +96,9 @@ func (j *job) probe() []table.ProbeRow {
 }
 
 func (j *job) probeRows(step, radius float64) ([]table.ProbeRow, error) {
+	if j.drum() {
+		return nil, errors.New("a barrel is not measured on a ray through its axis")
+	}
 	half := j.spec.Tolerance.Profile / 2
 	if hollow := j.cam.Contour().Radii().Concave; radius+half >= hollow {
 		return nil, fmt.Errorf("the contour is hollow with a radius of %.6g; take a smaller probe", hollow)

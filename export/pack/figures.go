@@ -7,7 +7,6 @@ import (
 	"lobewright/export/sheet"
 	"lobewright/export/svg"
 	"lobewright/synth"
-	"lobewright/synth/follower"
 	"lobewright/synth/plane"
 	"lobewright/synth/spec"
 	"lobewright/tolerance/chain"
@@ -44,21 +43,12 @@ func (j *job) turn() *sheet.Turn {
 	w, rest := j.cam.Omega(), j.cam.AtRest()
 	t := &sheet.Turn{Clockwise: j.spec.Camshaft.Clockwise, Contour: j.shape(j.cam.Contour()), Center: j.cam.HasCenter(), Roller: j.cam.Follower().Radius(),
 		Datum: rest.X, Offset: rest.Y, Step: turnStep}
-	pivot := plane.Point{X: j.spec.Follower.PivotDistance}
-	switch f := j.cam.Follower().(type) {
-	case follower.TranslatingFlat:
-		half := plane.Vector{Y: f.FaceWidth / 2}
-		t.Bars = []sheet.Bar{{From: rest.Add(half), To: rest.Add(half.Neg())}}
-	case follower.SwingingRoller:
-		t.Bars = []sheet.Bar{{From: pivot, To: rest}}
-	case follower.SwingingFlat:
-		normal := plane.Vector(rest).Unit() // at lift 0 the face is tangent to the base circle
-		foot := pivot.Add(normal.Scale(-f.FaceOffset))
-		along := rest.Sub(foot).Unit()
-		t.Bars = []sheet.Bar{{From: pivot, To: foot}, {From: foot, To: foot.Add(along.Scale(f.From))}, {From: foot.Add(along.Scale(f.From)), To: foot.Add(along.Scale(f.To))}}
+	arm, face := j.linkageAtRest()
+	for _, bar := range append(arm, face...) {
+		t.Bars = append(t.Bars, sheet.Bar{From: bar[0], To: bar[1]})
 	}
 	if j.cam.Swings() {
-		t.Pivot, t.Below = pivot.X, j.spec.Follower.Below
+		t.Pivot, t.Below = j.spec.Follower.PivotDistance, j.spec.Follower.Below
 	}
 	if j.cam.Grooved() {
 		t.Outer, t.Outside = j.shape(j.cam.OuterWall()), j.spec.Cam.OutsideDiameter
@@ -114,6 +104,10 @@ func (j *job) drawingData(head svg.Head) svg.DrawingData {
 	}
 	if s.Follower.Kind != "translating-roller" {
 		d.Follower, d.Swings = j.followerText()+", "+j.placeText(), j.cam.Swings()
+	}
+	d.Linkage, d.Sheet = j.linkageData(), j.opt.Sheet
+	if j.opt.ToolPaths {
+		d.ToolPaths = j.toolPaths()
 	}
 	if r := s.Follower.FaceRadius; r > 0 {
 		d.RollerText = "FACE R" + fmt.Sprintf("%g", r)

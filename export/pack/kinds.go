@@ -31,7 +31,11 @@ func (j *job) placeText() string {
 		if f.Below {
 			side = "below (-Y)"
 		}
-		return fmt.Sprintf("pivot on +X at %g %s from the camshaft axis, touching %s the center line", f.PivotDistance, u, side)
+		sense := "leading: the cam's surface runs towards the pivot"
+		if j.trails() {
+			sense = "trailing: the cam's surface runs away from the pivot"
+		}
+		return fmt.Sprintf("pivot on +X at %g %s from the camshaft axis, touching %s the center line, %s", f.PivotDistance, u, side, sense)
 	}
 	switch {
 	case f.Offset > 0:

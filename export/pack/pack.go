@@ -19,7 +19,11 @@ import (
 type Options struct {
 	Tool  string // "lobewright x.y.z", as written into the pack
 	DXF   string // "2000" or "r12"
-	Draft bool   // a check: figures and sheet are marked NOT RELEASED whatever the gates say
+	Sheet string // of the drawing: "A4", "A3" or "Letter"; empty takes what the units and the size ask for
+
+	ToolPaths bool // the drawing shows the tools' center paths
+
+	Draft bool // a check: figures and sheet are marked NOT RELEASED whatever the gates say
 
 	// tamper changes a file's bytes between writing and reading back; tests use it
 	// to show that a damaged file is refused.

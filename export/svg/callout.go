@@ -141,8 +141,10 @@ func (g *drawing) list() []callout {
 	cs := []callout{g.frame()}
 	cs = append(cs, g.boreCallouts()...)
 	cs = append(cs, g.followerCallouts()...)
+	cs = append(cs, g.linkageCallouts()...)
 	cs = append(cs, g.holeCallouts()...)
-	return append(cs, g.circleCallouts()...)
+	cs = append(cs, g.circleCallouts()...)
+	return append(cs, g.toolCallouts()...)
 }
 
 // frame is the profile tolerance on the contour.

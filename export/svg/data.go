@@ -41,6 +41,9 @@ type DrawingData struct {
 	Offset          float64      // length, distance of the follower's line from the axis, positive to +Y
 	Swings          bool         // the follower swings about a pivot: it has no line
 	Follower        string       // a note that says what the follower is and where it stands; may be empty
+	Linkage         *Linkage     // arm, face and pivot at lift 0; nil for a follower that is a center on a line
+	ToolPaths       []chain.Path // paths of the tools' centers; empty leaves them out
+	Sheet           string       // "A4", "A3" or "Letter"; empty takes what the units and the size ask for
 	Profile         float64      // length, total width of the profile zone
 	Barrel          *Barrel      // set when the view is a barrel's development; Contours are then its two walls
 	Bore            *Bore        // nil when there is none
@@ -58,6 +61,15 @@ type Barrel struct {
 	Radius, Length, Depth, Width float64
 	Track                        float64 // Y of the track at lift 0
 	Left, Right                  float64 // range of X
+}
+
+// Linkage is a follower's arm and face at lift 0, cam frame. A line whose ends are the same is not there.
+type Linkage struct {
+	Pivots             bool        // there is a pivot
+	Pivot              plane.Point // fixed
+	Arm, Face          [2]plane.Point
+	PivotText, ArmText string // labels: "PIVOT, 88 FROM THE AXIS", "ARM 70, TRAILING"
+	FaceText           string // "FACE 30 WIDE AT LIFT 0"
 }
 
 // Bore is the hole about the camshaft axis: datum A.

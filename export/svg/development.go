@@ -14,7 +14,7 @@ func development(data DrawingData) ([]byte, error) {
 	b := data.Barrel
 	mid := plane.Point{X: (b.Left + b.Right) / 2, Y: b.Length / 2}
 	var err error
-	if g.p, g.s, err = choose(data.Units, b.Right-b.Left, b.Length, data.Released); err != nil {
+	if g.p, g.s, err = choose(data.Units, data.Sheet, b.Right-b.Left, b.Length, data.Released); err != nil {
 		return nil, err
 	}
 	room := g.p.room(data.Released)

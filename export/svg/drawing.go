@@ -34,7 +34,7 @@ func Drawing(data DrawingData) ([]byte, error) {
 	g := &drawing{d: data, contour: outline(data), pitch: points(data.PitchCurve)}
 	ext := g.extent()
 	var err error
-	if g.p, g.s, err = choose(data.Units, ext.width(), ext.height(), data.Released); err != nil {
+	if g.p, g.s, err = choose(data.Units, data.Sheet, ext.width(), ext.height(), data.Released); err != nil {
 		return nil, err
 	}
 	room := g.p.room(data.Released)
@@ -117,6 +117,20 @@ func (d DrawingData) checkLists() error {
 			return fmt.Errorf("svg: drawing: pitch curve, element %d has a coordinate that is not finite", j+1)
 		}
 	}
+	for i, path := range d.ToolPaths {
+		for j, e := range path {
+			if !finitePoint(e.From) || !finitePoint(e.To) || !finitePoint(e.Center) {
+				return fmt.Errorf("svg: drawing: tool path %d, element %d has a coordinate that is not finite", i+1, j+1)
+			}
+		}
+	}
+	if l := d.Linkage; l != nil {
+		for _, p := range []plane.Point{l.Pivot, l.Arm[0], l.Arm[1], l.Face[0], l.Face[1]} {
+			if !finitePoint(p) {
+				return fmt.Errorf("svg: drawing: the follower's arm or face has a coordinate that is not finite")
+			}
+		}
+	}
 	for i, e := range d.Events {
 		if !finitePoint(e.Start) || !finite(e.From, e.To) {
 			return fmt.Errorf("svg: drawing: event %d has an angle or a point that is not finite", i+1)
@@ -162,6 +176,19 @@ func (g *drawing) extent() box {
 		add(plane.Point{}, g.d.BaseRadius+r)
 	}
 	add(plane.Point{}, math.Max(g.d.BaseRadius, g.d.OutsideDiameter/2))
+	for _, path := range g.d.ToolPaths {
+		for _, p := range points(path) {
+			add(p, 0)
+		}
+	}
+	if l := g.d.Linkage; l != nil {
+		for _, p := range append(l.Arm[:], l.Face[:]...) {
+			add(p, 0)
+		}
+		if l.Pivots {
+			add(l.Pivot, 0)
+		}
+	}
 	return b
 }
 

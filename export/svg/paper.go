@@ -37,12 +37,21 @@ type paper struct {
 	w, h, column float64 // mm
 }
 
-// papersFor lists the sheets a drawing may stand on, smallest first.
-func papersFor(units string) []paper {
-	if units == "inch" {
-		return []paper{{"Letter", 279.4, 215.9, 92}}
+// sheets lists the sheets there are.
+func sheets() []paper {
+	return []paper{{"A4", 297, 210, 92}, {"A3", 420, 297, 118}, {"Letter", 279.4, 215.9, 92}}
+}
+
+// papersFor lists the sheets a drawing may stand on, smallest first: the one that is wanted, else those of
+// the units.
+func papersFor(units, wanted string) []paper {
+	var fit []paper
+	for _, p := range sheets() {
+		if p.name == wanted || wanted == "" && (p.name == "Letter") == (units == "inch") {
+			fit = append(fit, p)
+		}
 	}
-	return []paper{{"A4", 297, 210, 92}, {"A3", 420, 297, 118}}
+	return fit
 }
 
 // view maps the cam frame to the sheet.
@@ -80,8 +89,11 @@ const most = 20
 // choose picks the sheet and scale. Full scale comes first: on the smallest sheet that
 // holds it, enlarged as far as that sheet allows; else the least reduction that the
 // largest sheet holds, on the smallest sheet that holds it too.
-func choose(units string, w, h float64, released bool) (paper, scale, error) {
-	all := papersFor(units)
+func choose(units, sheet string, w, h float64, released bool) (paper, scale, error) {
+	all := papersFor(units, sheet)
+	if len(all) == 0 {
+		return paper{}, scale{}, fmt.Errorf("svg: drawing: the sheet is %q; allowed are A4, A3 and Letter", sheet)
+	}
 	for _, p := range all {
 		for _, s := range enlargements(units) {
 			if p.takes(units, w, h, s, released) {

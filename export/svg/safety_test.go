@@ -214,7 +214,7 @@ func TestChooseSheetAndScale(t *testing.T) {
 		{"mm", 150, 140, "A4", "1:1"}, {"mm", 200, 200, "A3", "1:1"}, {"mm", 500, 480, "A3", "1:2"}, {"mm", 14, 14, "A4", "10:1"},
 		{"mm", 9000, 9000, "A3", "1:50"}, {"inch", 5, 5, "Letter", "1:1"}, {"inch", 12, 12, "Letter", "1:4"}, {"inch", 0.5, 0.5, "Letter", "8:1"},
 	} {
-		p, s, err := choose(c.units, c.w, c.h, true)
+		p, s, err := choose(c.units, "", c.w, c.h, true)
 		if err != nil || p.name != c.name || s.String() != c.want {
 			t.Errorf("%g by %g %s: %s at %s (%v), want %s at %s", c.w, c.h, c.units, p.name, s, err, c.name, c.want)
 		}

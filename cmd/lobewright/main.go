@@ -82,7 +82,7 @@ func application(stdout, stderr io.Writer) *cli.App {
 		Writer:          stdout,
 		ErrWriter:       stderr,
 		ExitErrHandler:  func(*cli.Context, error) {},
-		Commands:        []*cli.Command{releaseCommand(), checkCommand(), sizeCommand(), proveoutCommand(), lawsCommand(), evidenceCommand(), newCommand(), schemaCommand()},
+		Commands:        []*cli.Command{releaseCommand(), checkCommand(), sizeCommand(), proveoutCommand(), lawsCommand(), evidenceCommand(), newCommand(), schemaCommand(), completionCommand()},
 		Action: func(c *cli.Context) error {
 			if c.NArg() == 0 {
 				return cli.ShowAppHelp(c)

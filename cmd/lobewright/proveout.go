@@ -18,7 +18,7 @@ func proveoutCommand() *cli.Command {
 	return &cli.Command{
 		Name:      "proveout",
 		Usage:     "say what an NC program, ours or one edited by hand, would cut",
-		UsageText: "lobewright proveout SPEC PROGRAM.nc\n\nExamples:\n   lobewright proveout samples/stick-lift.yaml release/stick-lift/stick-lift.1-mill.nc\n   lobewright proveout samples/stick-lift.yaml edited.nc --operation 1 --tool-diameter 15.98",
+		UsageText: "lobewright proveout SPEC PROGRAM.nc\n\nExamples:\n   lobewright proveout samples/stick-lift.yaml release/stick-lift/stick-lift.1-mill.nc\n   lobewright proveout samples/stick-lift.yaml release/stick-lift/stick-lift.1-mill.nc --operation 1 --tool-diameter 15.98",
 		Flags: []cli.Flag{
 			&cli.IntFlag{Name: "operation", Usage: "operation of the spec, from 1 (default: the program's O number)"},
 			&cli.Float64Flag{Name: "tool-diameter", Usage: "diameter of the cutter in the machine, in the spec's units (default: the spec's)"},

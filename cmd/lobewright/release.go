@@ -1,11 +1,12 @@
 package main
 
 import (
-	"errors"
 	"fmt"
 	"io"
 	"os"
 	"path/filepath"
+	"slices"
+	"strings"
 
 	"github.com/urfave/cli/v2"
 
@@ -19,52 +20,23 @@ func releaseCommand() *cli.Command {
 	return &cli.Command{
 		Name:      "release",
 		Usage:     "read a spec, prove every file of its release pack, and place the pack whole",
-		UsageText: "lobewright release SPEC... [-o DIR] [--watch]\n\nExamples:\n   lobewright release samples/stick-lift.yaml\n   lobewright release samples/stick-lift.yaml samples/box-pusher.yaml -o out",
-		Flags: []cli.Flag{
+		UsageText: "lobewright release SPEC... [-o DIR] [--dxf 2000|r12] [--sheet A4|A3|Letter] [--watch]\n\nExamples:\n   lobewright release samples/stick-lift.yaml\n   lobewright release samples/stick-lift.yaml samples/box-pusher.yaml -o out",
+		Flags: append([]cli.Flag{
 			&cli.StringFlag{Name: "o", Value: "release", Usage: "folder that receives one folder a part"},
 			&cli.StringFlag{Name: "dxf", Value: "2000", Usage: "DXF version: 2000 or r12"},
 			&cli.BoolFlag{Name: "json", Usage: "print the report of each spec as JSON"},
 			&cli.BoolFlag{Name: "watch", Usage: "release again whenever a spec changes, until interrupted"},
-		},
+		}, drawingFlags()...),
 		Action: func(c *cli.Context) error {
-			once := func() error { return eachSpec(c, func(s *spec.Spec) error { return release(c, s) }) }
+			once := func() error {
+				return eachSpec(c, func(w printer, s *spec.Spec) (sheet.Outcome, error) { return release(c, w, s) })
+			}
 			if c.Bool("watch") && c.NArg() > 0 {
 				return watch(c, once)
 			}
 			return once()
 		},
 	}
-}
-
-// eachSpec runs the job on every spec named; each stands for itself and the exit
-// status is the highest.
-func eachSpec(c *cli.Context, job func(*spec.Spec) error) error {
-	if c.NArg() == 0 {
-		return failure{statusInput, fmt.Errorf("lobewright %s: found no spec; name at least one YAML file, for example samples/stick-lift.yaml", c.Command.Name)}
-	}
-	worst := failure{}
-	for _, file := range c.Args().Slice() {
-		err := func() error {
-			s, err := readSpec(file)
-			if err != nil {
-				return failure{statusInput, err}
-			}
-			return job(s)
-		}()
-		var f failure
-		if errors.As(err, &f) {
-			if f.err != nil {
-				fmt.Fprintln(c.App.ErrWriter, f.err)
-			}
-			worst.status = max(worst.status, f.status)
-		} else if err != nil {
-			return err
-		}
-	}
-	if worst.status > 0 {
-		return worst
-	}
-	return nil
 }
 
 // fileLimit is the largest file read, bytes: a spec's own limit is lower, a table's as
@@ -101,23 +73,24 @@ func readFile(name string) ([]byte, error) {
 	return io.ReadAll(io.LimitReader(f, fileLimit+1))
 }
 
-func release(c *cli.Context, s *spec.Spec) error {
-	p, err := prove(c, s)
+func release(c *cli.Context, w printer, s *spec.Spec) (sheet.Outcome, error) {
+	p, err := prove(c, w, s)
 	if err != nil {
-		return err
+		return sheet.Outcome{}, err
 	}
 	folder := filepath.Join(c.String("o"), s.Part)
+	o := sheet.Judged(p.Report, "RELEASED", "REFUSED")
 	if !p.Report.Released {
-		fmt.Fprintf(c.App.ErrWriter, "%s: refused; nothing was written%s\n", s.File, older(folder))
-		return failure{status: statusGate}
+		fmt.Fprintf(w.messages, "%s: refused; nothing was written%s\n", s.File, older(folder))
+		return o, failure{status: statusGate}
 	}
 	if err := p.Place(c.String("o")); err != nil {
-		return failure{statusOutput, fmt.Errorf("%s: cannot write the pack: %w", s.File, err)}
+		return sheet.Outcome{}, failure{statusOutput, fmt.Errorf("%s: cannot write the pack: %w", s.File, err)}
 	}
 	if !c.Bool("json") {
-		fmt.Fprintf(c.App.Writer, "released %s: %d files, each read back or hashed in manifest.json\n", folder, len(p.Files))
+		fmt.Fprintf(w.out, "released %s: %d files, each read back or hashed in manifest.json\n", folder, len(p.Files))
 	}
-	return nil
+	return o, nil
 }
 
 func older(folder string) string {
@@ -128,13 +101,10 @@ func older(folder string) string {
 }
 
 // prove runs the job in memory and prints what it found.
-func prove(c *cli.Context, s *spec.Spec) (*pack.Pack, error) {
-	o := pack.Options{Tool: "lobewright " + version, DXF: "2000", Draft: c.Command.Name == "check"}
-	if c.Command.Name == "release" {
-		o.DXF = c.String("dxf")
-	}
-	if o.DXF != "2000" && o.DXF != "r12" {
-		return nil, failure{statusInput, fmt.Errorf("lobewright release: found --dxf %q; allowed: 2000, r12%s", o.DXF, nearest(o.DXF, []string{"2000", "r12"}))}
+func prove(c *cli.Context, w printer, s *spec.Spec) (*pack.Pack, error) {
+	o, err := packOptions(c)
+	if err != nil {
+		return nil, err
 	}
 	p, err := pack.Make(s, o)
 	if err != nil {
@@ -145,19 +115,40 @@ func prove(c *cli.Context, s *spec.Spec) (*pack.Pack, error) {
 		if err != nil {
 			return nil, failure{statusOutput, err}
 		}
-		_, err = c.App.Writer.Write(data)
+		_, err = w.out.Write(data)
 		return p, err
 	}
-	fmt.Fprint(c.App.Writer, sheet.Text(p.Report, colored(c.App.Writer)))
+	fmt.Fprint(w.out, sheet.Text(p.Report, w.color))
 	return p, nil
 }
 
-// colored reports whether the writer is a terminal that wants color.
-func colored(w io.Writer) bool {
-	f, ok := w.(*os.File)
-	if !ok || os.Getenv("NO_COLOR") != "" {
-		return false
+// packOptions are the flags that change a pack.
+func packOptions(c *cli.Context) (pack.Options, error) {
+	o := pack.Options{Tool: "lobewright " + version, DXF: "2000", Draft: c.Command.Name == "check", Sheet: c.String("sheet"), ToolPaths: c.Bool("tool-paths")}
+	if c.Command.Name == "release" {
+		o.DXF = c.String("dxf")
 	}
-	info, err := f.Stat()
-	return err == nil && info.Mode()&os.ModeCharDevice != 0
+	if err := oneOf(c, "dxf", o.DXF, "2000", "r12"); err != nil {
+		return o, err
+	}
+	if o.Sheet == "" {
+		return o, nil
+	}
+	return o, oneOf(c, "sheet", o.Sheet, "A4", "A3", "Letter")
+}
+
+// oneOf refuses a flag's value that is none of the words.
+func oneOf(c *cli.Context, flag, value string, words ...string) error {
+	if slices.Contains(words, value) {
+		return nil
+	}
+	return failure{statusInput, fmt.Errorf("lobewright %s: found --%s %q; allowed: %s%s", c.Command.Name, flag, value, strings.Join(words, ", "), nearest(value, words))}
+}
+
+// drawingFlags are those of the commands that draw.
+func drawingFlags() []cli.Flag {
+	return []cli.Flag{
+		&cli.StringFlag{Name: "sheet", Usage: "sheet of the drawing: A4, A3 or Letter (default: what units and size ask for)"},
+		&cli.BoolFlag{Name: "tool-paths", Usage: "show the tools' center paths on the drawing"},
+	}
 }

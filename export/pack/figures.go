@@ -311,6 +311,10 @@ func (j *job) motionChart(head svg.Head) svg.MotionChart {
 		})},
 		Events: j.events(),
 	}
+	perSecond := j.spec.Camshaft.Speed * 6 // degrees
+	for i, to := range []*svg.Curve{&c.Velocity, &c.Acceleration, &c.Jerk} {
+		to.Second = &svg.Scale{Unit: u + "/deg" + []string{"", "²", "³"}[i], Factor: math.Pow(perSecond, -float64(i+1))}
+	}
 	for _, x := range j.cam.Cycle().Junctions() {
 		step := func(to *[]svg.Step, pair [2]float64, scale float64) {
 			if pair[0] != pair[1] {

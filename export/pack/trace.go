@@ -10,7 +10,7 @@ import (
 )
 
 // tracePoints is how many points of each element the deviation chart shows.
-const tracePoints = 7
+const tracePoints = 25
 
 // trace samples the deviation of a closed path around its exact curve, positive
 // outside, for a chart. It proves nothing: the certificate does.
@@ -19,31 +19,49 @@ func (j *job) trace(exact *synth.Curve, path chain.Path) [][]svg.DeviationSample
 		return j.drumTrace(exact, path)
 	}
 	foot := j.nearest(exact, path[0].From)
-	var run []svg.DeviationSample
-	runs := [][]svg.DeviationSample{}
-	start := foot
+	var all []svg.DeviationSample
 	for _, e := range path {
 		for k := range tracePoints {
-			p := e.PointAt((float64(k) + 0.5) / tracePoints)
+			p := e.PointAt(float64(k) / (tracePoints - 1))
 			foot = j.footNear(exact, p, foot)
 			zone, t := j.cam.Cycle().Zone(foot)
 			f := exact.At(zone, t)
-			s := svg.DeviationSample{CamAngle: plane.Wrap360(foot), Polar: p.PolarAngle(), Value: p.Sub(f.P).Dot(j.outward(f))}
-			if n := len(run); n > 0 && s.CamAngle < run[n-1].CamAngle {
-				runs, run = append(runs, run), nil
-			}
-			if foot < start+360 {
-				run = append(run, s)
-			}
+			all = append(all, svg.DeviationSample{CamAngle: foot, Polar: p.PolarAngle(), Value: p.Sub(f.P).Dot(j.outward(f))})
 		}
 	}
-	if len(run) > 0 {
-		runs = append(runs, run)
+	return parted(all)
+}
+
+// parted brings samples of one turn into 0 to 360, in two runs where the turn passes 360.
+func parted(all []svg.DeviationSample) [][]svg.DeviationSample {
+	start := all[0].CamAngle
+	turn := 360 * math.Floor(start/360)
+	var late, early []svg.DeviationSample // before and after 360
+	for i, s := range all {
+		if s.CamAngle > start+360 || i > 0 && s.CamAngle < all[i-1].CamAngle {
+			continue // rounding at the end of the turn, or at a joint
+		}
+		s.CamAngle -= turn
+		if s.CamAngle <= 360 {
+			late = append(late, s)
+			continue
+		}
+		s.CamAngle -= 360
+		if len(early) == 0 && len(late) > 0 {
+			last := late[len(late)-1]
+			between := last
+			between.Value += (s.Value - last.Value) * (360 - last.CamAngle) / (s.CamAngle + 360 - last.CamAngle)
+			between.CamAngle, between.Polar = 360, s.Polar
+			late = append(late, between)
+			between.CamAngle = 0
+			early = append(early, between)
+		}
+		early = append(early, s)
 	}
-	if len(runs) > 1 && runs[0][0].CamAngle > runs[len(runs)-1][0].CamAngle {
-		runs = append(runs[1:], runs[0])
+	if len(early) == 0 {
+		return [][]svg.DeviationSample{late}
 	}
-	return runs
+	return [][]svg.DeviationSample{early, late}
 }
 
 // nearest returns the cam angle of the curve point nearest to p, roughly.

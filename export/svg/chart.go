@@ -15,6 +15,7 @@ const (
 	titleSize   = 2.7 // title of a panel
 	headSize    = 4.0 // title of the figure
 	axisRoom    = 16.0
+	secondRoom  = 13.0 // scale on the right of a motion panel
 	titleRoom   = 5.2
 	chartMargin = 6.0
 )
@@ -204,11 +205,41 @@ func factor(v float64) (float64, string) {
 	for v/f >= 1e5 && exponent < 30 {
 		f, exponent = f*1000, exponent+3
 	}
-	if exponent == 0 {
-		return 1, ""
+	return f, powerName(exponent)
+}
+
+// reduced is factor for sizes that may be small too: those below 0.1 are brought above it.
+func reduced(v float64) (float64, string) {
+	f, exponent := 1.0, 0
+	for v > 0 && v/f < 0.1 && exponent > -30 {
+		f, exponent = f/1000, exponent-3
 	}
-	up := strings.NewReplacer("0", "⁰", "1", "¹", "2", "²", "3", "³", "4", "⁴", "5", "⁵", "6", "⁶", "7", "⁷", "8", "⁸", "9", "⁹")
-	return f, "10" + up.Replace(fmt.Sprint(exponent)) + " "
+	if exponent < 0 {
+		return f, powerName(exponent)
+	}
+	return factor(v)
+}
+
+// powerName is a power of ten before a unit, nothing for 1.
+func powerName(exponent int) string {
+	if exponent == 0 {
+		return ""
+	}
+	up := strings.NewReplacer("-", "⁻", "0", "⁰", "1", "¹", "2", "²", "3", "³", "4", "⁴", "5", "⁵", "6", "⁶", "7", "⁷", "8", "⁸", "9", "⁹")
+	return "10" + up.Replace(fmt.Sprint(exponent)) + " "
+}
+
+// second labels the right side in another unit and returns that unit with its power of ten.
+func (a axes) second(s Scale) string {
+	lo, hi := a.lo*s.Factor, a.hi*s.Factor
+	f, prefix := reduced(math.Max(math.Abs(lo), math.Abs(hi)))
+	step := niceStep(hi-lo, 4)
+	for k := math.Ceil(lo / step); k*step <= hi; k++ {
+		y := a.y(k * step / s.Factor)
+		a.c.line(pt{a.b.x1, y}, pt{a.b.x1 + 1, y}, pen{width: 0.2})
+		a.c.text(pt{a.b.x1 + 1.6, y + axisSize*0.36}, tick(k*step/f, step/f), font{size: axisSize, color: gray})
+	}
+	return prefix + s.Unit
 }
 
 // heading writes the figure's title lines and returns the y below them.

@@ -34,6 +34,7 @@ func (s sampleCam) motion() MotionChart {
 	u := map[bool]string{true: "mm", false: "in"}[s.k == 1]
 	m.Lift.Unit, m.Velocity.Unit, m.Acceleration.Unit, m.Jerk.Unit = u, u+"/s", u+"/s²", u+"/s³"
 	m.PressureAngle.Unit, m.Radius.Unit = "deg", u
+	m.Velocity.Second, m.Jerk.Second = &Scale{u + "/deg", 1.0 / 1080}, &Scale{u + "/deg³", math.Pow(1080, -3)}
 	m.PressureAngle.Limits = []Limit{{Value: 30, From: 60, To: 150, Text: "limit 30"}, {Value: -30, From: 190, To: 310}}
 	m.Acceleration.Limits = []Limit{{Value: 15000 * s.k}}
 	m.Radius.Limits = []Limit{{Value: 22 * s.k}}
@@ -111,6 +112,37 @@ func TestChartTextsKeepApart(t *testing.T) {
 			show(t, name, out)
 			checkTexts(t, out)
 		})
+	}
+}
+
+// The second scale stands on the right, a value at the height at which the first scale has its match: at 180 rpm
+// 0.1 mm/deg is 108 mm/s.
+func TestSecondScale(t *testing.T) {
+	out, err := Motion(mmCam(5, true).motion())
+	if err != nil {
+		t.Fatal(err)
+	}
+	texts := checkTexts(t, out)
+	if !has(texts, "right: mm/deg") || !has(texts, "right: 10⁻³ mm/deg³") {
+		t.Error("the second scales have no unit")
+	}
+	find := func(text string, left bool) float64 {
+		for _, w := range texts { // the velocity is the first panel with a second scale
+			if w.text == text && (w.box.x0 < 40) == left && w.box.y0 > 60 {
+				return w.box.y0
+			}
+		}
+		t.Fatalf("no label %q", text)
+		return 0
+	}
+	perMM := (find("0", true) - find("200", true)) / 200
+	if got := (find("0", false) - find("0.2", false)) / 0.2; math.Abs(got-1080*perMM) > 0.02*got {
+		t.Errorf("a mm/deg is %.4f mm high, 1080 mm/s are %.4f", got, 1080*perMM)
+	}
+	bad := mmCam(5, true).motion()
+	bad.Jerk.Second = &Scale{"x", math.NaN()}
+	if _, err := Motion(bad); err == nil {
+		t.Error("a second scale that is not a number was accepted")
 	}
 }
 

@@ -125,10 +125,17 @@ type Limit struct {
 type Curve struct {
 	Runs   []Run
 	Unit   string   // printed on the axis: "mm", "mm/s", "deg"
+	Second *Scale   // a second scale, on the right; nil for none
 	Limits []Limit  // in Unit
 	Peaks  []Sample // labeled places, in Unit; nil labels the greatest and the least sample
 	Steps  []Step   // jumps, labeled with their size as far as there is room, the largest first
 	Marks  []Mark   // what is known, in Unit; table points in order of cam angle
+}
+
+// Scale is another unit of the same curve: its values are those in Unit times Factor.
+type Scale struct {
+	Unit   string // "mm/deg²"
+	Factor float64
 }
 
 // Step is a jump of a curve at a cam angle, degrees.

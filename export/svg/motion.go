@@ -45,10 +45,10 @@ func Motion(m MotionChart) ([]byte, error) {
 		y := top + float64(i)*(titleRoom+panelHeight+panelGap) + titleRoom
 		c.group(fmt.Sprintf("panel-%d", i+1))
 		c.doing(p.name)
-		p.draw(c, box{chartMargin + axisRoom, y, chartWidth - chartMargin - 2, y + panelHeight}, m.Events, i == len(panels)-1)
+		p.draw(c, box{chartMargin + axisRoom, y, chartWidth - chartMargin - secondRoom, y + panelHeight}, m.Events, i == len(panels)-1)
 		c.end()
 	}
-	c.text(pt{(chartMargin + axisRoom + chartWidth - chartMargin) / 2, height - 3}, "Cam angle, degrees",
+	c.text(pt{(chartMargin + axisRoom + chartWidth - chartMargin - secondRoom) / 2, height - 3}, "Cam angle, degrees",
 		font{size: titleSize, anchor: "middle"})
 	return c.bytes()
 }
@@ -57,7 +57,7 @@ func Motion(m MotionChart) ([]byte, error) {
 // that runs past 360 stands on its longer part.
 func eventNames(c *canvas, events []Event, y float64) {
 	c.doing("event names")
-	a := axes{b: box{chartMargin + axisRoom, 0, chartWidth - chartMargin - 2, 1}}
+	a := axes{b: box{chartMargin + axisRoom, 0, chartWidth - chartMargin - secondRoom, 1}}
 	l := newLayout(box{chartMargin, 0, chartWidth - chartMargin, y + 1})
 	for _, e := range events {
 		lo, hi := a.x(math.Max(0, e.From)), a.x(math.Min(360, e.To))
@@ -95,6 +95,9 @@ func (m MotionChart) panels() ([]panel, error) {
 			if !finite(t.CamAngle, t.Before, t.After) {
 				return nil, fmt.Errorf("svg: motion chart, %s: a step from %v to %v at cam angle %v; all must be finite", n.name, t.Before, t.After, t.CamAngle)
 			}
+		}
+		if s := n.c.Second; s != nil && !(s.Factor > 0 && finite(s.Factor)) {
+			return nil, fmt.Errorf("svg: motion chart, %s: the second scale is %v of the first; it must be above 0 and finite", n.name, s.Factor)
 		}
 		if err := checkMarks("motion chart, "+n.name, n.c.Marks); err != nil {
 			return nil, err
@@ -241,13 +244,17 @@ func (p panel) draw(c *canvas, b box, events []Event, angles bool) {
 	f, prefix := factor(math.Max(math.Abs(p.lo), math.Abs(p.hi)))
 	a := axes{c: c, b: b, lo: p.lo, hi: p.hi, unit: f}
 	title := p.name + ", " + prefix + p.curve.Unit
+	right := ""
+	if p.curve.Second != nil {
+		right = "right: " + a.second(*p.curve.Second)
+	}
 	c.text(pt{b.x0, b.y0 - 1.6}, title, font{size: titleSize, bold: true})
 	x := b.x0 + widthOf(title, titleSize, true) + 2
 	a.frame(events, angles)
 	l := newLayout(b.grown(-0.6))
 	a.under(p.curve.Marks)
 	off := p.limits(a, l)
-	if note := joinNotes(joinNotes(p.note, legend(p.curve.Marks)), off); note != "" {
+	if note := joinNotes(joinNotes(joinNotes(right, p.note), legend(p.curve.Marks)), off); note != "" {
 		text, size := fitted(note, b.x1-x, axisSize, 1.6, false)
 		c.text(pt{x, b.y0 - 1.6}, text, font{size: size, color: gray})
 	}
@@ -260,10 +267,14 @@ func (p panel) draw(c *canvas, b box, events []Event, angles bool) {
 	p.steps(a, l)
 }
 
-// steps labels jumps with their size and angle where there is room, the largest first.
+// leastStep is the share of the panel's height below which a jump is not seen and not labeled.
+const leastStep = 0.03
+
+// steps labels the jumps that can be seen with their size and angle where there is room, the
+// largest first.
 func (p panel) steps(a axes, l *layout) {
-	steps := slices.Clone(p.curve.Steps)
 	size := func(s Step) float64 { return math.Abs(s.After - s.Before) }
+	steps := slices.DeleteFunc(slices.Clone(p.curve.Steps), func(s Step) bool { return size(s) < leastStep*(a.hi-a.lo) })
 	slices.SortStableFunc(steps, func(s, t Step) int { return cmp.Compare(size(t), size(s)) })
 	for _, s := range steps {
 		mid := math.Min(math.Max((s.Before+s.After)/2, a.lo), a.hi)

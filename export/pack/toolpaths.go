@@ -14,8 +14,12 @@ import (
 
 // drawToolPaths adds to the DXF the path of the tool's center in the last pass of every
 // program, as it was read back from the program, and proves the file anew. A path that cannot be drawn
-// within the chord tolerance is left out, with a finding; the outline is whole without it.
+// within the chord tolerance is left out, with a finding; the outline is whole without it. In a
+// barrel's development the pitch curve is the path of the tool, and stands there.
 func (j *job) drawToolPaths() {
+	if j.drum() {
+		return
+	}
 	drawing := j.outline.drawing
 	drawing.Polylines = slices.Clone(drawing.Polylines)
 	drawing.Texts = slices.Clone(drawing.Texts)

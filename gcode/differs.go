@@ -99,6 +99,10 @@ func (s *said) block(b Block) {
 			s.state.Spindle = 1
 		case 6:
 			s.state.Tool = s.pending
+		case 7, 8:
+			s.state.Fluid = true
+		case 9:
+			s.state.Fluid = false
 		}
 	}
 	s.move(b)

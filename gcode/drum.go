@@ -138,7 +138,7 @@ func PlanDrum(d Drum, op Operation, m Machine) (Program, error) {
 	e.p.Header = p.header()
 	e.add(Block{G: e.safety()})
 	e.add(Block{T: number(op.Tool), M: []int{6}})
-	e.add(Block{S: number(op.speed()), M: []int{3}})
+	e.add(Block{S: number(op.speed()), M: op.on()})
 	if err := p.slot(); err != nil {
 		return Program{}, err
 	}
@@ -148,7 +148,7 @@ func PlanDrum(d Drum, op Operation, m Machine) (Program, error) {
 			return Program{}, err
 		}
 	}
-	e.add(Block{M: []int{5}})
+	e.add(Block{M: op.off()})
 	e.add(Block{G: e.safety()})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil

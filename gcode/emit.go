@@ -14,7 +14,7 @@ type emitter struct {
 
 func newEmitter(part Part, op Operation, m Machine) *emitter {
 	g := m.grid()
-	return &emitter{grid: g, p: &Program{Number: op.Number, Inch: part.Inch, Grid: g, AbsoluteArcs: m.AbsoluteArcs, BlockNumbers: m.BlockNumbers}}
+	return &emitter{grid: g, p: &Program{Number: op.programNumber(), Inch: part.Inch, Grid: g, AbsoluteArcs: m.AbsoluteArcs, BlockNumbers: m.BlockNumbers}}
 }
 
 func (e *emitter) add(b Block) { e.p.Blocks = append(e.p.Blocks, b) }

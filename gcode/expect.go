@@ -28,6 +28,9 @@ type Expect struct {
 	Compensation Compensation
 	Registers    []Register // what the D registers hold
 	Feed         float64    // length/min as written; 0 for none
+	FeedStep     float64    // what F is printed in
+	ContourFeed  bool       // Feed is held at the contour: on arcs F is another
+	Fluid        bool       // the coolant is on while the tool cuts
 	MaxBlocks    int        // 0 when not limited
 	ArcMismatch  float64    // length
 
@@ -51,8 +54,8 @@ type Expect struct {
 func Expected(part Part, op Operation, m Machine, eps float64) Expect {
 	g := m.grid()
 	written := func(x float64) float64 { return gridValue(g, x) }
-	x := Expect{Process: op.Process, Number: op.Number, Inch: part.Inch, Eps: eps, CamClockwise: part.CamClockwise, Curve: part.Curve,
-		Compensation: op.Compensation, Registers: registers(op), Feed: written(op.Feed), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch}
+	x := Expect{Process: op.Process, Number: op.programNumber(), Fluid: op.Coolant > 0, ContourFeed: op.ContourFeed, Inch: part.Inch, Eps: eps, CamClockwise: part.CamClockwise, Curve: part.Curve,
+		Compensation: op.Compensation, Registers: registers(op), Feed: written(op.Feed), FeedStep: g.Step(), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch}
 	if op.Process == Wire {
 		for _, o := range op.Offsets {
 			x.Cuts = append(x.Cuts, Cut{Offset: o, Stock: writtenOffset(op.Compensation, o, o)})

@@ -81,11 +81,11 @@ func millText(part Part, op Operation, m Machine) []string {
 	h := []string{
 		fmt.Sprintf("TOOL T%d DIAMETER %s RIGHT-HAND", op.Tool, m.text(op.ToolDiameter)),
 		"Z0 TOP OF BLANK. SAFE Z " + m.text(m.SafeZ),
-		"CUTS " + m.text(part.breakthrough()) + " BELOW THE PART",
+		"CUTS " + m.text(op.breakthrough(part)) + " BELOW THE PART",
 		"STOCK LEFT BY EACH PASS " + m.list(op.Stock),
-		fmt.Sprintf("%s CUTTING. EACH PASS RUNS %g DEGREES PAST ITS START", op.Direction, overlapDegrees),
+		fmt.Sprintf("%s CUTTING. EACH PASS RUNS %g DEGREES PAST ITS START", op.Direction, op.overlap()),
 		"COMPENSATION " + compText(op),
-		"F IS THE FEED OF THE TOOL CENTER",
+		feedText(op),
 	}
 	if last := op.Stock[len(op.Stock)-1]; last > 0 {
 		h = append(h, "NOT FINISHED. "+m.text(last)+" IS LEFT ON THE CONTOUR")
@@ -128,6 +128,14 @@ func wireText(part Part, op Operation, m Machine) []string {
 		h = append(h, "NO F WORD. THE GENERATOR SETS THE FEED")
 	}
 	return h
+}
+
+// feedText says what F means.
+func feedText(op Operation) string {
+	if op.ContourFeed {
+		return "F IS SCALED ON ARCS. THE FEED IS HELD AT THE CONTOUR. THE CONTROL MUST NOT SCALE IT AGAIN"
+	}
+	return "F IS THE FEED OF THE TOOL CENTER"
 }
 
 func compText(op Operation) string {

@@ -25,9 +25,6 @@ func (p Part) small(mm, inch float64) float64 {
 	return mm
 }
 
-// breakthrough is how far the tool goes below the part.
-func (p Part) breakthrough() float64 { return p.small(1, 0.04) }
-
 // gap is the least distance between tool and blank where the tool plunges.
 func (p Part) gap() float64 { return p.small(2, 0.08) }
 
@@ -57,13 +54,13 @@ func planMill(part Part, op Operation, m Machine) (Program, error) {
 	e.add(Block{G: e.safety()})
 	e.add(Block{G: []Code{e.arcMode()}})
 	e.add(Block{T: number(op.Tool), M: []int{6}})
-	e.add(Block{S: number(op.speed()), M: []int{3}})
+	e.add(Block{S: number(op.speed()), M: op.on()})
 	for i := range op.Stock {
 		if err := millPass(e, part, op, m, i); err != nil {
 			return Program{}, fmt.Errorf("pass %d of %d: %w", i+1, len(op.Stock), err)
 		}
 	}
-	e.add(Block{M: []int{5}})
+	e.add(Block{M: op.off()})
 	e.add(Block{G: e.safety()})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil
@@ -76,13 +73,13 @@ func (e *emitter) safety() []Code {
 
 func (op Operation) speed() int { return int(math.Round(op.SpindleSpeed)) }
 
-// depths returns the Z of every cut of pass i, in counts, top first. Passes before the
-// last go down in equal steps of at most StepDown; the last goes at full depth,
-// unless it is the only one.
+// depths returns the Z of every cut of pass i, in counts, top first. Passes go down in equal
+// steps of at most StepDown; one that leaves what the last leaves goes at full depth, unless it is
+// the first.
 func depths(part Part, op Operation, g chain.Grid, i int) []int64 {
-	total := part.Thickness + part.breakthrough()
+	total := part.Thickness + op.breakthrough(part)
 	n := 1.0
-	if op.StepDown > 0 && (i < len(op.Stock)-1 || len(op.Stock) == 1) {
+	if op.StepDown > 0 && (i == 0 || op.Stock[i] != op.Stock[len(op.Stock)-1]) {
 		n = math.Ceil(total/op.StepDown - 1e-9) // a step larger only by rounding is one step
 	}
 	var zs []int64
@@ -110,10 +107,45 @@ func millPass(e *emitter, part Part, op Operation, m Machine, i int) error {
 		if op.Compensation != CompPath {
 			on.G, on.D = []Code{sideCode(op.side())}, number(op.Tool)
 		}
+		from := len(e.p.Blocks)
 		e.chain(c, on, op.Compensation != CompPath)
+		e.contourFeed(op, c, e.p.Blocks[from:])
 		e.z(Rapid, m.SafeZ, Block{})
 	}
 	return nil
+}
+
+// contourFeed sets F on arcs so that the feed is held where the tool touches, not at its center:
+// on an arc of radius R of the center the contour has R less the tool's radius where it bulges, R
+// and the radius where it is hollow (elementary). Lines keep the feed.
+func (e *emitter) contourFeed(op Operation, c chain.Chain, blocks []Block) {
+	if !op.ContourFeed {
+		return
+	}
+	last := counts(e.grid, op.Feed)
+	path := c.Path()
+	for i := range blocks {
+		want := counts(e.grid, contourFeed(op.Feed, op.radius(), op.clockwise(), path[i]))
+		if i == 0 || want != last {
+			blocks[i].F = count(want)
+		}
+		last = want
+	}
+}
+
+// contourFeed is the feed of the tool's center on an element, length/min.
+func contourFeed(feed, radius float64, clockwise bool, e chain.Element) float64 {
+	if e.Kind != chain.Arc {
+		return feed
+	}
+	r := e.From.Dist(e.Center)
+	if e.CCW == clockwise { // hollow: the arc turns away from the contour's side
+		return feed * r / (r + radius)
+	}
+	if r <= radius { // the contour is a corner there
+		return feed
+	}
+	return feed * r / (r - radius)
 }
 
 // side is +1 when the tool is on the left of travel, the contour on the right.
@@ -135,7 +167,7 @@ func millPath(part Part, op Operation, m Machine, i int) (chain.Chain, error) {
 	if err != nil {
 		return chain.Chain{}, err
 	}
-	path, err := l.around(part.StartAt, overlapDegrees, op.clockwise() == part.CamClockwise)
+	path, err := l.around(part.StartAt, op.overlap(), op.clockwise() == part.CamClockwise)
 	if err != nil {
 		return chain.Chain{}, err
 	}

@@ -88,7 +88,9 @@ type StartHole struct {
 
 // Operation is one program.
 type Operation struct {
-	Number       int     // its place in the spec, from 1; the program number
+	Number       int     // its place in the spec, from 1
+	Program      int     // program number, 1 to 9999; 0 for Number
+	Coolant      int     // M word that turns it on: 7 or 8; 0 for none
 	Process      Process // Mill or Wire
 	Compensation Compensation
 	Feed         float64 // length/min; wire: 0 leaves the feed to the generator
@@ -101,6 +103,9 @@ type Operation struct {
 	StepDown     float64 // length; 0 means full depth
 	Stock        []float64
 	Direction    Direction
+	Overlap      float64 // degrees a pass runs past its start; 0 for 4
+	Breakthrough float64 // length the tool goes below the part; 0 for 1 mm or 0.04 inch
+	ContourFeed  bool    // Feed is held at the contour, else at the tool's center
 
 	// Barrel: letter of the rotary axis, and whether a narrow tool is shifted by it alone.
 	Rotary      byte
@@ -117,6 +122,45 @@ type Operation struct {
 	// when it has arcs, in the direction of growing cam angle, every element
 	// with its Source. An error says that the pass does not reach.
 	Path func(offset float64) (chain.Path, error)
+}
+
+// programNumber returns the O word.
+func (op Operation) programNumber() int {
+	if op.Program > 0 {
+		return op.Program
+	}
+	return op.Number
+}
+
+// overlap returns how far a milled pass runs past its start, degrees of cam angle.
+func (op Operation) overlap() float64 {
+	if op.Overlap > 0 {
+		return op.Overlap
+	}
+	return overlapDegrees
+}
+
+// breakthrough returns how far the tool goes below the part, length.
+func (op Operation) breakthrough(p Part) float64 {
+	if op.Breakthrough > 0 {
+		return op.Breakthrough
+	}
+	return p.small(1, 0.04)
+}
+
+// on and off are the M words before and after the cutting.
+func (op Operation) on() []int {
+	if op.Coolant > 0 {
+		return []int{3, op.Coolant}
+	}
+	return []int{3}
+}
+
+func (op Operation) off() []int {
+	if op.Coolant > 0 {
+		return []int{9, 5}
+	}
+	return []int{5}
 }
 
 // radius returns the tool's radius, a length.

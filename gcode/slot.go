@@ -139,7 +139,7 @@ func planSlot(part Part, op Operation, m Machine) (Program, error) {
 	e.add(Block{G: e.safety()})
 	e.add(Block{G: []Code{e.arcMode()}})
 	e.add(Block{T: number(op.Tool), M: []int{6}})
-	e.add(Block{S: number(op.speed()), M: []int{3}})
+	e.add(Block{S: number(op.speed()), M: op.on()})
 	from, top := part.StartAt-rampDegrees/2, int64(0)
 	for k, z := range slotDepths(part, op, e.grid) {
 		// Forwards from a to b and one turn; backwards the same from its end.
@@ -183,7 +183,7 @@ func planSlot(part Part, op Operation, m Machine) (Program, error) {
 			return Program{}, fmt.Errorf("wall at %g from the pitch curve: %w", w.offset, err)
 		}
 	}
-	e.add(Block{M: []int{5}})
+	e.add(Block{M: op.off()})
 	e.add(Block{G: e.safety()})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil

@@ -32,6 +32,14 @@ func validate(part Part, op Operation, m Machine) error {
 	switch {
 	case m.Decimals < 0 || m.Decimals > 9:
 		return fmt.Errorf("%d decimals: 0 to 9 can be written", m.Decimals)
+	case op.ContourFeed && (op.Process != Mill || op.Compensation == CompControl):
+		return fmt.Errorf("operation %d: a feed held at the contour is of a milled tool-center path", op.Number)
+	case op.Coolant != 0 && op.Coolant != 7 && op.Coolant != 8:
+		return fmt.Errorf("operation %d: coolant M%d: M7 and M8 turn it on", op.Number, op.Coolant)
+	case op.Program < 0 || op.Program > 9999:
+		return fmt.Errorf("operation %d: program number %d: 1 to 9999 can be one", op.Number, op.Program)
+	case !(op.Overlap >= 0 && op.Overlap <= 90) || !(op.Breakthrough >= 0 && op.Breakthrough < maxLength):
+		return fmt.Errorf("operation %d: overlap %g degrees, breakthrough %g", op.Number, op.Overlap, op.Breakthrough)
 	case op.Number < 1 || op.Number > 9999:
 		return fmt.Errorf("operation number %d: 1 to 9999 can be a program number", op.Number)
 	case op.Process != Mill && op.Process != Wire && op.Process != Slot:

@@ -27,7 +27,6 @@ type DrumExpect struct {
 	RotaryTable          bool
 	RotarySpeed          float64 // degrees/min; 0 when not limited
 	OffCenter            bool
-	FeedStep             float64 // what F is printed in
 }
 
 // ExpectedDrum returns what the operation's program must do, each cut within eps (a length) of its
@@ -35,9 +34,9 @@ type DrumExpect struct {
 func ExpectedDrum(d Drum, op Operation, m Machine, eps float64) DrumExpect {
 	g := m.grid()
 	x := DrumExpect{Axis: d.Axis, Sense: d.sense(), Radius: d.Radius, Depth: d.Depth, RotaryTable: m.RotaryTable, RotarySpeed: m.RotarySpeed,
-		Room: func(stock float64) float64 { return d.room(op, stock) }, OffCenter: !d.fills(op) && !op.RotaryShift, FeedStep: g.Step()}
-	x.Expect = Expect{Process: Slot, Number: op.Number, Inch: d.Inch, Eps: eps, CamClockwise: d.CamClockwise, Compensation: op.Compensation, Rotary: op.Rotary,
-		Feed: gridValue(g, op.Feed), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch, Radius: op.radius(), Tool: op.Tool, Speed: op.speed(),
+		Room: func(stock float64) float64 { return d.room(op, stock) }, OffCenter: !d.fills(op) && !op.RotaryShift}
+	x.Expect = Expect{Process: Slot, Number: op.programNumber(), Fluid: op.Coolant > 0, Inch: d.Inch, Eps: eps, CamClockwise: d.CamClockwise, Compensation: op.Compensation, Rotary: op.Rotary,
+		Feed: gridValue(g, op.Feed), FeedStep: g.Step(), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch, Radius: op.radius(), Tool: op.Tool, Speed: op.speed(),
 		PlungeFeed: gridValue(g, op.PlungeFeed), SafeZ: gridValue(g, m.SafeZ), HalfWidth: d.Width / 2}
 	height := func(z int64) float64 { return float64(z) / float64(counts(g, 1)) }
 	for k, z := range d.depths(op, g, DrumPass{}) {

@@ -123,8 +123,8 @@ func (v *verifier) millCut(group []read.Move, k int) {
 		v.fail("depth", z, r.cut.Z, nan(), line, "the cut is at Z %.6g, expected %.6g", z, r.cut.Z)
 	}
 	for _, m := range group {
-		if m.Feed != v.x.Feed {
-			v.fail("feed", m.Feed, v.x.Feed, nan(), m.LineNo, "the cut is fed at F%g, expected F%g", m.Feed, v.x.Feed)
+		if want, slack := v.feedOf(m); !(math.Abs(m.Feed-want) <= slack) {
+			v.fail("feed", m.Feed, want, nan(), m.LineNo, "the cut is fed at F%g, expected F%.6g", m.Feed, want)
 		}
 	}
 	r.first, r.last = v.followed(group, r.cut.Stock, nearShare*v.x.Radius)
@@ -137,6 +137,15 @@ func (v *verifier) millCut(group []read.Move, k int) {
 	c := v.certify(r)
 	v.around(c, r)
 	v.centers(r, 0, len(group), tool)
+}
+
+// feedOf returns the feed a move of a cut must have, and by how much rounding may move it.
+func (v *verifier) feedOf(m read.Move) (want, slack float64) {
+	if !v.x.ContourFeed {
+		return v.x.Feed, 0
+	}
+	want = contourFeed(v.x.Feed, v.x.Radius, v.x.Clockwise, element(m))
+	return want, v.x.FeedStep
 }
 
 // around asks for a whole turn.

@@ -63,7 +63,7 @@ func (v *verifier) allowed(m read.Misc) bool {
 
 // sameWords compares what state looks at.
 func sameWords(a, b read.State) bool {
-	a.Feed, b.Feed, a.Comp, b.Comp, a.D, b.D, a.Fluid, b.Fluid = 0, 0, 0, 0, 0, 0, false, false
+	a.Feed, b.Feed, a.Comp, b.Comp, a.D, b.D = 0, 0, 0, 0, 0, 0
 	return a == b
 }
 
@@ -80,6 +80,9 @@ func (v *verifier) state(m read.Move) {
 			v.wrong("words", m.LineNo, "spindle, tool or length words in a wire program")
 		}
 		return
+	}
+	if v.x.Fluid && m.Kind != read.Rapid && !m.Fluid {
+		v.wrong("words", m.LineNo, "a cut without coolant: no M7 or M8 came before")
 	}
 	if m.Tool != v.x.Tool {
 		v.fail("words", float64(m.Tool), float64(v.x.Tool), nan(), m.LineNo, "tool T%d, expected T%d", m.Tool, v.x.Tool)

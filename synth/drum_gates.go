@@ -21,6 +21,7 @@ func (c *Cam) drumGates() []gate.Gate {
 	if b := c.drumBlank(); b != nil {
 		g = append(g, *b)
 	}
+	g = append(g, c.fluteGates()...)
 	return append(g, c.drumReach()...)
 }
 

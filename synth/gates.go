@@ -31,7 +31,25 @@ func (c *Cam) Gates() []gate.Gate {
 	if b := c.blankGate(); b != nil {
 		g = append(g, *b)
 	}
+	g = append(g, c.fluteGates()...)
 	return append(g, c.reachGates()...)
+}
+
+// fluteGates: where the length of the cutting edges is told, they must be as long as the cut is deep.
+func (c *Cam) fluteGates() []gate.Gate {
+	var g []gate.Gate
+	for i, op := range c.spec.Operations {
+		if op.FluteLength == 0 {
+			continue
+		}
+		depth := c.spec.Cam.GrooveDepth
+		if !c.Grooved() {
+			depth = c.spec.Cam.Thickness + op.Breakthrough
+		}
+		g = append(g, gate.Gate{ID: "flute-length", Of: fmt.Sprintf("%d-%s", i+1, op.Process), Value: depth, Limit: op.FluteLength, Unit: c.unit(), CamAngle: math.NaN(), Polar: math.NaN(),
+			Pass: depth <= op.FluteLength, Text: fmt.Sprintf("operation %d: depth of the last cut against the length of the tool's cutting edges; take a longer tool", i+1)})
+	}
+	return g
 }
 
 // polarAt returns the polar angle of the contour at a cam angle of a piece.

@@ -45,9 +45,11 @@ func (j *job) tryDrumProgram(i int, eps float64) (program, error) {
 // drumOperation is an operation of the spec as one on a barrel.
 func (j *job) drumOperation(i int) gcode.Operation {
 	o := j.spec.Operations[i]
-	return gcode.Operation{Number: i + 1, Process: gcode.Slot, Compensation: gcode.Compensation(o.Compensation), Feed: o.Feed, Tool: o.Tool,
-		ToolDiameter: o.ToolDiameter, SpindleSpeed: o.SpindleSpeed, PlungeFeed: o.PlungeFeed, StepDown: o.StepDown, Stock: o.Stock,
+	op := gcode.Operation{Number: i + 1, Process: gcode.Slot, Compensation: gcode.Compensation(o.Compensation), Feed: o.Feed, Tool: o.Tool,
+		ToolDiameter: o.ToolDiameter, SpindleSpeed: o.SpindleSpeed, PlungeFeed: o.PlungeFeed, StepDown: o.StepDown, Stock: j.stocks(i),
 		Direction: gcode.Direction(o.Direction), Rotary: o.RotaryAxis[0], RotaryShift: o.Shift == "rotary"}
+	settings(&op, o)
+	return op
 }
 
 // verifyDrum holds a program against the exact paths of its tool.

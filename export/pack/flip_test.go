@@ -99,7 +99,7 @@ func TestFlippedDigitsInDXF(t *testing.T) {
 
 // A digit flipped anywhere in an NC program is refused unless it stands in a comment.
 func TestFlippedDigitsInNC(t *testing.T) {
-	for _, name := range []string{"stick-lift", "box-pusher", "carton-shift", "lid-swing", "tray-sweep", "lane-guide"} {
+	for _, name := range []string{"stick-lift", "box-pusher", "carton-shift", "lid-swing", "tray-sweep", "lane-guide", "label-dab"} {
 		_, j, err := work(readSample(t, samplesFolder+"/"+name+".yaml"), options())
 		if err != nil {
 			t.Fatal(err)

@@ -224,8 +224,9 @@ func (j *job) operation(i int, eps float64) gcode.Operation {
 	op := gcode.Operation{
 		Number: i + 1, Process: gcode.Process(o.Process), Compensation: gcode.Compensation(o.Compensation), Feed: o.Feed,
 		Tool: o.Tool, ToolDiameter: o.ToolDiameter, SpindleSpeed: o.SpindleSpeed, PlungeFeed: o.PlungeFeed, StepDown: o.StepDown,
-		Stock: o.Stock, Direction: gcode.Direction(o.Direction), WireDiameter: o.WireDiameter, Offsets: o.Offsets,
+		Stock: j.stocks(i), Direction: gcode.Direction(o.Direction), WireDiameter: o.WireDiameter, Offsets: o.Offsets,
 	}
+	settings(&op, o)
 	if j.cam.Grooved() && op.Process == gcode.Mill {
 		op.Process = gcode.Slot
 	}

@@ -27,10 +27,10 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 		return sheet.ProveOut{}, fmt.Errorf("%s: %w", file, err)
 	}
 	if operation == 0 {
-		operation = back.Number
+		operation = numbered(s, back.Number)
 	}
 	if operation < 1 || operation > len(s.Operations) {
-		return sheet.ProveOut{}, fmt.Errorf("%s: found program number O%d; allowed: 1 to %d, the operations of %s; say which one with --operation",
+		return sheet.ProveOut{}, fmt.Errorf("%s: found program number O%d; allowed: those of the %d operations of %s; say which one with --operation",
 			file, back.Number, len(s.Operations), s.File)
 	}
 	j := &job{spec: s, cam: cam, tight: 1}
@@ -54,6 +54,16 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 	p := program{index: i, name: file, expect: expect, result: result}
 	return j.proveOutFacts(p, sheet.ProveOut{Tool: tool, Part: s.Part, Units: string(s.Units), File: file, Operation: operation,
 		Process: s.Operations[i].Process, ToolDiameter: diameter, Chord: j.chord}), nil
+}
+
+// numbered returns the operation, from 1, whose program number is n; 0 when there is none.
+func numbered(s *spec.Spec, n int) int {
+	for i, o := range s.Operations {
+		if o.Program == n || o.Program == 0 && i+1 == n {
+			return i + 1
+		}
+	}
+	return 0
 }
 
 func (j *job) proveOutFacts(p program, out sheet.ProveOut) sheet.ProveOut {

@@ -16,6 +16,8 @@ func (r *reader) check(s *Spec) {
 	for i := range s.Operations {
 		path := fmt.Sprintf("operations[%d]", i+1)
 		r.checkAxes(path, s, &s.Operations[i])
+		r.checkPasses(path, s, &s.Operations[i])
+		r.checkNumber(path, s, i)
 		switch op := &s.Operations[i]; op.Process {
 		case "mill":
 			r.checkStock(path+".stock", op.Stock)
@@ -69,6 +71,44 @@ func (r *reader) checkBarrel(s *Spec) {
 	}
 	if b := c.Bore; b != nil && r.ok("cam.bore.diameter", "cam.groove_depth", "cam.radius") && b.Diameter/2 >= c.Radius-c.GrooveDepth {
 		r.faultAt("cam.bore.diameter", Fault{Found: figure(b.Diameter), Allowed: "a bore smaller than the core under the groove, whose diameter is " + figure(2*(c.Radius-c.GrooveDepth))})
+	}
+}
+
+// checkPasses: what only a plate cam's milling has.
+func (r *reader) checkPasses(path string, s *Spec, op *Operation) {
+	if op.Process == "mill" && op.Breakthrough == 0 {
+		op.Breakthrough = 1
+		if s.Units == Inch {
+			op.Breakthrough = 0.04
+		}
+	}
+	plate := s.Cam.Kind == plateCam
+	if op.StepOver > 0 && !plate && r.ok("cam.kind", path+".step_over") {
+		r.faultAt(path+".step_over", Fault{Found: figure(op.StepOver) + " on a cam of kind " + s.Cam.Kind, Allowed: "passes from the blank inwards on a plate cam", Advice: "take it out"})
+	}
+	if op.FeedAt == "contour" && r.ok("cam.kind", path+".feed_at", path+".compensation") {
+		switch {
+		case !plate:
+			r.faultAt(path+".feed_at", Fault{Found: "contour on a cam of kind " + s.Cam.Kind, Allowed: "center"})
+		case op.Compensation == "control":
+			r.faultAt(path+".feed_at", Fault{Found: "contour with compensation: control", Allowed: "center: the control moves the path, and its feed", Advice: "use compensation: path or wear"})
+		}
+	}
+}
+
+// checkNumber: no two programs have one number.
+func (r *reader) checkNumber(path string, s *Spec, i int) {
+	number := func(i int) int {
+		if n := s.Operations[i].Program; n > 0 {
+			return n
+		}
+		return i + 1
+	}
+	for k := range i {
+		if number(k) == number(i) {
+			r.faultAtKey(path, Fault{Found: fmt.Sprintf("program number %d again, that of operation %d", number(i), k+1), Allowed: "a number of its own", Advice: "give program_number"})
+			return
+		}
 	}
 }
 

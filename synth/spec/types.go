@@ -240,6 +240,14 @@ type Operation struct {
 	RotaryAxis   string   // letter of the rotary axis on axes cylinder; default "A"
 	Shift        string   // of a narrow tool in a barrel's groove: "parallel" or "rotary"; default "parallel"
 	Moves        string   // "arcs" or "lines"; default "arcs"
+	StepOver     float64  // share of the tool's diameter, of passes from the blank to the first stock; 0 when there are none
+	Spring       int      // spring_passes: how often the last pass is run again
+	Overlap      float64  // degrees of cam angle; 0 for the planner's
+	Breakthrough float64  // length; 0 for the planner's
+	FluteLength  float64  // length; 0 when not given
+	FeedAt       string   // "center" or "contour"; default "center"
+	Coolant      string   // "flood", "mist" or "none"; default "none"
+	Program      int      // program_number; 0 for the operation's place in the list
 
 	WireDiameter float64 // length
 	Offsets      []float64

@@ -39,7 +39,7 @@ func startBrowser(t *testing.T) *browser {
 		chromedp.Flag("disable-sync", true), chromedp.UserDataDir(t.TempDir()))
 	all, endAll := chromedp.NewExecAllocator(context.Background(), options...)
 	tab, endTab := chromedp.NewContext(all)
-	ctx, stop := context.WithTimeout(tab, 100*time.Second)
+	ctx, stop := context.WithTimeout(tab, 5*time.Minute)
 	t.Cleanup(func() { stop(); endTab(); endAll() })
 	b := &browser{ctx: ctx}
 	none := chromedp.Do(ctx) // starts the browser
@@ -85,6 +85,14 @@ func (b *browser) note(s string) {
 func (b *browser) run(t *testing.T, actions ...chromedp.Action[chromedp.Void]) {
 	t.Helper()
 	if err := chromedp.Do(b.ctx, actions...); err != nil {
+		t.Fatal(err)
+	}
+}
+
+// media switches between the screen ("") and the printed page ("print").
+func (b *browser) media(t *testing.T, medium string) {
+	t.Helper()
+	if _, err := chromedp.Call(b.ctx, emulation.SetEmulatedMedia, emulation.SetEmulatedMediaParams{Media: medium}); err != nil {
 		t.Fatal(err)
 	}
 }
@@ -179,6 +187,18 @@ const spilled = `(function () {
   return found;
 })()`
 
+// cutOff lists the tables and figures that paper would cut off on the right, and the controls that paper shows.
+const cutOff = `(function () {
+  const found = [], width = document.documentElement.clientWidth;
+  document.querySelectorAll("table, figure, figure > svg").forEach((e) => {
+    if (e.getBoundingClientRect().right > width + 0.5) { found.push(e.tagName + " is cut off: " + e.textContent.slice(0, 40)); }
+  });
+  document.querySelectorAll("button, input, .turn-cursor").forEach((e) => {
+    if (e.getClientRects().length > 0) { found.push(e.tagName + " is printed"); }
+  });
+  return found;
+})()`
+
 // The release sheet of every sample in a browser: no complaint, no request, no text over another, nothing wider
 // than the window of a phone or a desk; and at 12 cam angles the follower as drawn touches the contour as
 // drawn and stands at the motion's lift, with every chart's cursor in its place.
@@ -202,6 +222,16 @@ func TestPeerBrowserSheets(t *testing.T) {
 				t.Errorf("%s, %d px: %s", p.Part, width, s)
 			}
 		}
+		// On paper: the width of A4 and of Letter less the page's margins of 13 mm, at 96 px an inch.
+		b.media(t, "print")
+		for _, width := range []int64{695, 718} {
+			b.run(t, chromedp.EmulateViewport(width, 1000))
+			for _, s := range append(ask[[]string](t, b, spilled), ask[[]string](t, b, cutOff)...) {
+				t.Errorf("%s, printed %d px wide: %s", p.Part, width, s)
+			}
+		}
+		b.media(t, "")
+		b.run(t, chromedp.EmulateViewport(1280, 900))
 		if j.turn() == nil { // a barrel has no figure that moves
 			continue
 		}

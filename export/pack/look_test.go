@@ -7,6 +7,8 @@ import (
 	"strconv"
 	"strings"
 	"testing"
+
+	"lobewright/export/svg"
 )
 
 // label is a text of a figure with the box it takes, mm.
@@ -73,36 +75,47 @@ func labels(t *testing.T, data []byte) (w, h float64, all []label) {
 	}
 }
 
-// On every sample's drawing and charts, on every sheet and with the tool paths shown, no text stands on another and
-// none leaves the sheet.
-func TestTextsOfSamplesKeepApart(t *testing.T) {
+// What people look at of every sample: see the checks.
+func TestSamplesAreDrawn(t *testing.T) {
 	for _, name := range releasingSamples(t) {
 		_, j, err := work(readSample(t, name), options())
 		if err != nil {
 			t.Fatal(err)
 		}
-		figures := map[string][]byte{}
-		for _, sheet := range []string{"", "A4", "A3", "Letter"} {
-			j.opt.Sheet, j.opt.ToolPaths = sheet, sheet != ""
-			f, err := j.figures(true)
-			if err != nil {
-				t.Fatal(name, err)
-			}
-			figures["drawing "+sheet], figures["motion"], figures["error"] = f.Drawing, f.Motion, f.Deviation
+		t.Run(j.spec.Part, func(t *testing.T) {
+			checkTexts(t, j)
+			checkToolPaths(t, j)
+			checkTrace(t, j)
+		})
+	}
+}
+
+// checkTexts: on drawing and charts, on every sheet and with the tool paths shown, no text stands on another and
+// none leaves the sheet.
+func checkTexts(t *testing.T, j *job) {
+	f, err := j.figures(true)
+	if err != nil {
+		t.Fatal(err)
+	}
+	figures := map[string][]byte{"drawing": f.Drawing, "motion": f.Motion, "error": f.Deviation}
+	for _, sheet := range []string{"A4", "A3", "Letter"} {
+		j.opt.Sheet, j.opt.ToolPaths = sheet, true
+		if figures["drawing "+sheet], err = svg.Drawing(j.drawingData(j.head(true))); err != nil {
+			t.Fatal(err)
 		}
-		for what, data := range figures {
-			w, h, all := labels(t, data)
-			if len(all) < 20 {
-				t.Errorf("%s, %s: %d texts", name, what, len(all))
+	}
+	for what, data := range figures {
+		w, h, all := labels(t, data)
+		if len(all) < 20 {
+			t.Errorf("%s: %d texts", what, len(all))
+		}
+		for i, a := range all {
+			if a.x0 < 0 || a.y0 < 0 || a.x1 > w || a.y1 > h {
+				t.Errorf("%s: %q leaves the sheet", what, a.text)
 			}
-			for i, a := range all {
-				if a.x0 < 0 || a.y0 < 0 || a.x1 > w || a.y1 > h {
-					t.Errorf("%s, %s: %q leaves the sheet", name, what, a.text)
-				}
-				for _, b := range all[:i] {
-					if a.x0 < b.x1 && b.x0 < a.x1 && a.y0 < b.y1 && b.y0 < a.y1 {
-						t.Errorf("%s, %s: %q overlaps %q", name, what, a.text, b.text)
-					}
+			for _, b := range all[:i] {
+				if a.x0 < b.x1 && b.x0 < a.x1 && a.y0 < b.y1 && b.y0 < a.y1 {
+					t.Errorf("%s: %q overlaps %q", what, a.text, b.text)
 				}
 			}
 		}

@@ -8,61 +8,50 @@ import (
 	"testing"
 
 	"lobewright/export/dxf/read"
-	"lobewright/synth/plane"
 	"lobewright/tolerance/chain"
 )
 
-// Every program of every sample has its tool path in the DXF: where the program holds the center's path, its joints
+// checkToolPaths: every program has its tool path in the DXF. Where the program holds the center's path, its joints
 // are those of the program to the last digit; where the control compensates, it runs a tool radius outside
 // the contour.
-func TestToolPathsInDXF(t *testing.T) {
-	for _, name := range releasingSamples(t) {
-		_, j, err := work(readSample(t, name), options())
-		if err != nil {
-			t.Fatal(err)
+func checkToolPaths(t *testing.T, j *job) {
+	file, err := read.Parse(j.outline.data)
+	if err != nil {
+		t.Fatal(err)
+	}
+	n := 0
+	for _, p := range j.programs {
+		if j.drum() {
+			break // the pitch curve is the tool's path
 		}
-		file, err := read.Parse(j.outline.data)
-		if err != nil {
-			t.Fatal(err)
+		layer := fmt.Sprintf("TOOL_PATH_%d", p.index+1)
+		i := slices.IndexFunc(file.Polylines, func(q read.Polyline) bool { return q.Layer == layer })
+		if i < 0 {
+			t.Errorf("no layer %s", layer)
+			continue
 		}
-		n := 0
-		for _, p := range j.programs {
-			if j.drum() {
-				break // the pitch curve is the tool's path
-			}
-			layer := fmt.Sprintf("TOOL_PATH_%d", p.index+1)
-			i := slices.IndexFunc(file.Polylines, func(q read.Polyline) bool { return q.Layer == layer })
-			if i < 0 {
-				t.Errorf("%s: no layer %s", name, layer)
-				continue
-			}
-			n++
-			op := j.spec.Operations[p.index]
-			if op.Compensation != "control" {
-				var joints []plane.Point
-				for _, e := range p.finish.path {
-					joints = append(joints, e.From)
-				}
-				for _, q := range joints {
-					if !slices.Contains(file.Polylines[i].Points, q) {
-						t.Fatalf("%s: joint %v of the program is not on %s", name, q, layer)
-					}
-				}
-				continue
-			}
-			for _, e := range chain.FromBulges(file.Polylines[i].Points, file.Polylines[i].Bulges, true) {
-				if d := farthest(j.cam.Contour(), chain.Path{e}); math.Abs(d-op.ToolDiameter/2) > 2*j.chord {
-					t.Errorf("%s: %s is %.4f from the contour, the tool's radius is %g", name, layer, d, op.ToolDiameter/2)
+		n++
+		op := j.spec.Operations[p.index]
+		if op.Compensation != "control" {
+			for _, e := range p.finish.path {
+				if !slices.Contains(file.Polylines[i].Points, e.From) {
+					t.Errorf("joint %v of the program is not on %s", e.From, layer)
 				}
 			}
+			continue
 		}
-		for _, q := range file.Polylines {
-			if strings.HasPrefix(q.Layer, "TOOL_PATH_") {
-				n--
+		for _, e := range chain.FromBulges(file.Polylines[i].Points, file.Polylines[i].Bulges, true) {
+			if d := farthest(j.cam.Contour(), chain.Path{e}); math.Abs(d-op.ToolDiameter/2) > 2*j.chord {
+				t.Errorf("%s is %.4f from the contour, the tool's radius is %g", layer, d, op.ToolDiameter/2)
 			}
 		}
-		if n != 0 {
-			t.Errorf("%s: layers of tool paths without a program", name)
+	}
+	for _, q := range file.Polylines {
+		if strings.HasPrefix(q.Layer, "TOOL_PATH_") {
+			n--
 		}
+	}
+	if n != 0 {
+		t.Error("there are layers of tool paths without a program")
 	}
 }

@@ -52,9 +52,8 @@ func (g *drawing) len(v float64) string { return num(v, g.decimals()) }
 func (g *drawing) angle(e Event) {
 	text := num(plane.Wrap360(e.From), 3) + "°"
 	u := outward(e.Start)
-	a := g.v.at(e.Start)
 	w := wish{
-		at: pt{a.x + tickLength*u.X, a.y - tickLength*u.Y}, away: math.Atan2(-u.Y, u.X),
+		at: g.tickEnd(e), away: math.Atan2(-u.Y, u.X),
 		w: widthOf(text, calloutSize, true), h: calloutSize * 1.15, near: 1, far: 14,
 		direct: true, rowsAtEdge: calloutSize * 0.55,
 	}

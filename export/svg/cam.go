@@ -171,13 +171,24 @@ func outward(p plane.Point) plane.Vector {
 	return p.Sub(plane.Point{}).Unit()
 }
 
-// ticks draws a radial tick where each event begins.
+// ticks draws a radial tick where each event begins; in a groove it runs on to the outer wall.
 func (g *drawing) ticks() {
 	g.c.doing("event ticks")
 	for _, e := range g.d.Events {
 		a, u := g.v.at(e.Start), outward(e.Start)
-		g.stroke(pt{a.x - 2*u.X, a.y + 2*u.Y}, pt{a.x + tickLength*u.X, a.y - tickLength*u.Y}, pen{width: 0.25})
+		g.stroke(pt{a.x - 2*u.X, a.y + 2*u.Y}, g.tickEnd(e), pen{width: 0.25})
 	}
+}
+
+// tickEnd is the outer end of an event's tick on the sheet.
+func (g *drawing) tickEnd(e Event) pt {
+	u, from := outward(e.Start), e.Start
+	if len(g.d.Contours) > 1 {
+		wall := nearestPolar(points(g.d.Contours[1]), e.Start.PolarAngle())
+		from = plane.Point{}.Add(u.Scale(math.Max(wall.Radius(), e.Start.Radius())))
+	}
+	a := g.v.at(from)
+	return pt{a.x + tickLength*u.X, a.y - tickLength*u.Y}
 }
 
 // zeroMark draws the stamped mark just inside the contour at cam angle 0.

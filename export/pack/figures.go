@@ -37,10 +37,10 @@ const turnStep = 0.5
 
 // turn is the moving figure of the sheet; a contour that cannot be written does not move.
 func (j *job) turn() *sheet.Turn {
-	if j.outline == nil || j.drum() {
+	if j.outline == nil {
 		return nil
 	}
-	w, rest := j.cam.Omega(), j.cam.AtRest()
+	rest := j.cam.AtRest()
 	t := &sheet.Turn{Clockwise: j.spec.Camshaft.Clockwise, Contour: j.shape(j.cam.Contour()), Center: j.cam.HasCenter(), Roller: j.cam.Follower().Radius(),
 		Datum: rest.X, Offset: rest.Y, Step: turnStep}
 	arm, face := j.linkageAtRest()
@@ -49,6 +49,13 @@ func (j *job) turn() *sheet.Turn {
 	}
 	if j.cam.Swings() {
 		t.Pivot, t.Below = j.spec.Follower.PivotDistance, j.spec.Follower.Below
+	}
+	if b, ok := j.cam.Barrel(); ok {
+		t.Developed = &sheet.Developed{PerDegree: b.Sense() * b.OuterRadius * math.Pi / 180, Length: j.spec.Cam.Length}
+		t.Datum, t.Offset = 0, j.spec.Cam.TrackPosition
+		t.Outer = j.shape(j.cam.OuterWall())
+		j.turnSeries(t)
+		return t
 	}
 	if j.cam.Grooved() {
 		t.Outer, t.Outside = j.shape(j.cam.OuterWall()), j.spec.Cam.OutsideDiameter
@@ -60,9 +67,16 @@ func (j *job) turn() *sheet.Turn {
 	t.Tools = j.toolPaths()
 	zone, at := j.cam.Cycle().Zone(0)
 	t.Zero = j.cam.Contour().At(zone, at).P
+	j.turnSeries(t)
+	return t
+}
+
+// turnSeries samples the motion, and where the contour is touched.
+func (j *job) turnSeries(t *sheet.Turn) {
+	w := j.cam.Omega()
 	for k := range int(360/turnStep) + 1 {
 		zone, at := j.cam.Cycle().Zone(float64(k) * turnStep)
-		polar := j.cam.Contour().At(zone, at).P.PolarAngle()
+		polar := j.polarOfPoint(j.cam.Contour().At(zone, at).P)
 		if k > 0 {
 			last := t.Polar[k-1]
 			polar = last + plane.Wrap360(polar-last+180) - 180
@@ -71,7 +85,6 @@ func (j *job) turn() *sheet.Turn {
 		l := j.cam.LiftAt(float64(k) * turnStep)
 		t.Lift, t.Velocity, t.Acceleration = append(t.Lift, l.S), append(t.Velocity, l.V*w), append(t.Acceleration, l.A*w*w)
 	}
-	return t
 }
 
 // hub is the bore with its keyway as one closed path, empty without a bore.

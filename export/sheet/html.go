@@ -77,6 +77,7 @@ func functions(r Report) template.FuncMap {
 		"bound":    func(g Gate) string { return map[string]string{">=": "≥", "<=": "≤"}[g.bound()] },
 		"count":    count,
 		"half":     func(v float64) float64 { return v / 2 },
+		"minus":    func(v float64) float64 { return 0 - v },
 		"sum":      func(a, b int) int { return a + b },
 		"failing":  r.failing,
 		"hash":     r.hash,

@@ -31,12 +31,25 @@ type Turn struct {
 	Pivot     float64      // X of the pivot of a swinging follower, whose lifts are degrees; 0 for one that slides
 	Below     bool         // a swinging follower below the center line
 
+	// Developed is set for a barrel: Contour and Outer are then its open walls in the developed plane, which
+	// moves along X under the follower, and the follower's center moves along Y from Offset on; Datum is 0.
+	Developed *Developed
+
 	// Lift, Velocity and Acceleration at cam angles 0, Step, 2 Step, ... 360 degrees,
 	// velocity and acceleration per second and second squared; Polar is the polar angle of the contour point
 	// that is touched, degrees, without jumps.
 	Step                                float64
 	Lift, Velocity, Acceleration, Polar []float64
 }
+
+// Developed is the development of a barrel.
+type Developed struct {
+	PerDegree float64 // length along X a degree of cam angle, signed
+	Length    float64 // of the barrel, along Y from 0
+}
+
+// period is the length of the development along X.
+func (d Developed) period() float64 { return 360 * math.Abs(d.PerDegree) }
 
 // Bar is a line of the follower, cam frame at lift 0, Y up.
 type Bar struct{ From, To plane.Point }
@@ -55,6 +68,7 @@ type turnView struct {
 	OuterPath      template.HTMLAttr
 	HubPath        template.HTMLAttr
 	ZeroPath       template.HTMLAttr
+	Copies         []float64 // X of the copies of a development, one after the other
 	ToolPaths      []template.HTMLAttr
 	Rounds         []round
 	CenterY        float64 // of the roller, Y down
@@ -71,6 +85,9 @@ func (t *Turn) look() (*turnView, error) {
 	}
 	if err := t.check(); err != nil {
 		return nil, err
+	}
+	if t.Developed != nil {
+		return t.develop()
 	}
 	far, lift := t.Outside/2, slices.Max(t.Lift)
 	for _, p := range append([]chain.Path{t.Contour, t.Outer}, t.Tools...) {
@@ -144,6 +161,9 @@ func pathAttr(p chain.Path) (template.HTMLAttr, error) {
 		return "", nil
 	}
 	d, err := pathData(p)
+	if p[0].From == p[len(p)-1].To {
+		d += " Z"
+	}
 	return template.HTMLAttr(`d="` + d + `"`), err
 }
 
@@ -184,7 +204,7 @@ func pathData(p chain.Path) (string, error) {
 			return "", err
 		}
 	}
-	return b.String() + " Z", nil
+	return b.String(), nil
 }
 
 // Numbers rounds a series for the page: six figures are more than a screen shows.

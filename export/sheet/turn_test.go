@@ -83,3 +83,34 @@ func TestMovingFigureRefused(t *testing.T) {
 		}
 	}
 }
+
+// A barrel's development moves along X: its walls are open, have copies a turn apart on either side, and the
+// window is one turn wide.
+func TestMovingDevelopment(t *testing.T) {
+	turn := eccentricTurn()
+	wall := func(y float64) chain.Path {
+		return chain.Path{{Kind: chain.Line, From: plane.Point{Y: y}, To: plane.Point{X: -90, Y: y}}}
+	}
+	turn.Contour, turn.Outer, turn.Offset, turn.Developed = wall(20), wall(40), 30, &Developed{PerDegree: -0.25, Length: 70}
+	f := figures()
+	f.Turn = turn
+	out, err := HTML(sampleReport(), f)
+	if err != nil {
+		t.Fatal(err)
+	}
+	elements(t, out)
+	page := string(out)
+	for _, want := range []string{`viewBox="-45 -74.2 90 78.4"`, `data-developed="-0.25"`, `id="turn-contour" d="M 0 -20 L -90 -20"`, `d="M 0 -40 L -90 -40"`,
+		`translate(-180 0)`, `translate(0 0)`, `translate(180 0)`, `cx="0" cy="-30" r="10"`} {
+		if !strings.Contains(page, want) {
+			t.Errorf("the page lacks %s", want)
+		}
+	}
+	if strings.Count(page, `id="turn-contour"`) != 1 {
+		t.Error("the measured wall stands in the page more than once")
+	}
+	turn.Outer[0].To.Y = math.NaN()
+	if _, err := HTML(sampleReport(), f); err == nil {
+		t.Error("a wall that is not a number was accepted")
+	}
+}

@@ -6,6 +6,7 @@ import (
 	"encoding/json"
 	"os"
 	"path/filepath"
+	"strings"
 	"testing"
 )
 
@@ -40,8 +41,10 @@ func TestPlaceExchanges(t *testing.T) {
 	if err := os.MkdirAll(old, 0o755); err != nil {
 		t.Fatal(err)
 	}
-	if err := os.WriteFile(filepath.Join(old, "older.nc"), []byte("older"), 0o644); err != nil {
-		t.Fatal(err)
+	for _, name := range []string{"older.nc", manifestName} {
+		if err := os.WriteFile(filepath.Join(old, name), []byte("older"), 0o644); err != nil {
+			t.Fatal(err)
+		}
 	}
 	if err := p.Place(dir); err != nil {
 		t.Fatal(err)
@@ -103,5 +106,48 @@ func TestPlaceWholeOrNot(t *testing.T) {
 	}
 	if got := entries(t, dir); len(got) != 1 || len(entries(t, way)) != 0 {
 		t.Errorf("left behind: %v, and %v in the older pack", got, entries(t, way))
+	}
+}
+
+// A folder of the part's name that is no pack keeps what it holds; a draft replaces drafts
+// alone.
+func TestPlaceKeepsOtherFolders(t *testing.T) {
+	dir := t.TempDir()
+	p := whole("new", 3)
+	p.draft = []File{{p.Part + ".svg", []byte("drawing")}}
+	mine := filepath.Join(dir, p.Part, "letters.txt")
+	if err := os.MkdirAll(filepath.Dir(mine), 0o755); err != nil {
+		t.Fatal(err)
+	}
+	if err := os.WriteFile(mine, []byte("mine"), 0o644); err != nil {
+		t.Fatal(err)
+	}
+	if err := p.Place(dir); err == nil || !strings.Contains(err.Error(), "letters.txt") {
+		t.Errorf("error %v", err)
+	}
+	if data, err := os.ReadFile(mine); err != nil || string(data) != "mine" || len(entries(t, dir)) != 1 {
+		t.Errorf("%q, %v, %v", data, err, entries(t, dir))
+	}
+	for range 2 {
+		if err := p.PlaceDraft(dir); err != nil {
+			t.Error(err)
+		}
+	}
+	q := whole("new", 3)
+	q.Part += "-draft"
+	if err := q.Place(dir); err == nil {
+		t.Error("a pack replaced a draft of another part")
+	}
+	if err := os.RemoveAll(filepath.Join(dir, q.Part)); err != nil {
+		t.Fatal(err)
+	}
+	if err := q.Place(dir); err != nil {
+		t.Fatal(err)
+	}
+	if err := p.PlaceDraft(dir); err == nil {
+		t.Error("a draft replaced a pack")
+	}
+	if got := packIn(t, filepath.Join(dir, q.Part)); got != "new" {
+		t.Errorf("the pack is %q", got)
 	}
 }

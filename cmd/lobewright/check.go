@@ -17,6 +17,7 @@ func checkCommand() *cli.Command {
 		Flags: append([]cli.Flag{
 			&cli.StringFlag{Name: "o", Usage: "folder that receives drawing, charts and sheet, marked NOT RELEASED"},
 			&cli.BoolFlag{Name: "json", Usage: "print the report of each spec as JSON"},
+			tablesFlag(),
 		}, drawingFlags()...),
 		Action: func(c *cli.Context) error {
 			return eachSpec(c, func(w printer, s *spec.Spec) (sheet.Outcome, error) { return check(c, w, s) })

@@ -2,7 +2,6 @@ package main
 
 import (
 	"fmt"
-	"io"
 	"math"
 	"os"
 
@@ -23,6 +22,7 @@ func proveoutCommand() *cli.Command {
 			&cli.IntFlag{Name: "operation", Usage: "operation of the spec, from 1 (default: the program's O number)"},
 			&cli.Float64Flag{Name: "tool-diameter", Usage: "diameter of the cutter in the machine, in the spec's units (default: the spec's)"},
 			&cli.BoolFlag{Name: "json", Usage: "print JSON"},
+			tablesFlag(),
 		},
 		Action: proveout,
 	}
@@ -36,7 +36,7 @@ func proveout(c *cli.Context) error {
 	if c.IsSet("tool-diameter") && !(d > 0 && !math.IsInf(d, 0)) {
 		return failure{statusInput, fmt.Errorf("lobewright proveout: found --tool-diameter %v; allowed: a length above 0", d)}
 	}
-	s, err := readSpec(c.Args().Get(0))
+	s, err := readSpec(c, c.Args().Get(0))
 	if err != nil {
 		return failure{statusInput, err}
 	}
@@ -72,7 +72,7 @@ func readProgram(file string) ([]byte, error) {
 		return nil, fmt.Errorf("cannot read the program: %w", err)
 	}
 	defer f.Close()
-	data, err := io.ReadAll(io.LimitReader(f, programLimit))
+	data, err := readAtMost(f, programLimit)
 	if err != nil {
 		return nil, fmt.Errorf("cannot read the program: %w", err)
 	}

@@ -56,7 +56,7 @@ func at(p sheet.ProveOut, messages string, line int) bool {
 			return true
 		}
 	}
-	return strings.Contains(messages, fmt.Sprintf("line %d,", line))
+	return strings.Contains(messages, fmt.Sprintf("edited.nc:%d:", line))
 }
 
 var (

@@ -2,7 +2,6 @@ package main
 
 import (
 	"fmt"
-	"io"
 	"os"
 	"path/filepath"
 	"slices"
@@ -12,7 +11,6 @@ import (
 
 	"lobewright/export/pack"
 	"lobewright/export/sheet"
-	"lobewright/synth"
 	"lobewright/synth/spec"
 )
 
@@ -26,6 +24,7 @@ func releaseCommand() *cli.Command {
 			&cli.StringFlag{Name: "dxf", Value: "2000", Usage: "DXF version: 2000 or r12"},
 			&cli.BoolFlag{Name: "json", Usage: "print the report of each spec as JSON"},
 			&cli.BoolFlag{Name: "watch", Usage: "release again whenever a spec changes, until interrupted"},
+			tablesFlag(),
 		}, drawingFlags()...),
 		Action: func(c *cli.Context) error {
 			once := func() error {
@@ -37,40 +36,6 @@ func releaseCommand() *cli.Command {
 			return once()
 		},
 	}
-}
-
-// fileLimit is the largest file read, bytes: a spec's own limit is lower, a table's as
-// high.
-const fileLimit = 4 << 20
-
-func readSpec(file string) (*spec.Spec, error) {
-	data, err := readFile(file)
-	if err != nil {
-		return nil, fmt.Errorf("cannot read the spec: %w", err)
-	}
-	s, err := spec.Read(file, data, synth.Vocabulary())
-	if err != nil {
-		return nil, err
-	}
-	return s.Load(data, func(name string) ([]byte, error) { return readFile(beside(file, name)) })
-}
-
-// beside is the path of a file that a spec names from its own folder.
-func beside(spec, name string) string {
-	if filepath.IsAbs(name) {
-		return name
-	}
-	return filepath.Join(filepath.Dir(spec), filepath.FromSlash(name))
-}
-
-// readFile reads a file, and no more of it than one byte above the limit.
-func readFile(name string) ([]byte, error) {
-	f, err := os.Open(name)
-	if err != nil {
-		return nil, err
-	}
-	defer f.Close()
-	return io.ReadAll(io.LimitReader(f, fileLimit+1))
 }
 
 func release(c *cli.Context, w printer, s *spec.Spec) (sheet.Outcome, error) {

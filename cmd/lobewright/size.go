@@ -16,12 +16,12 @@ func sizeCommand() *cli.Command {
 		Name:      "size",
 		Usage:     "find the smallest base radius (and a free offset) that meets the limits; change nothing",
 		UsageText: "lobewright size SPEC [--json]\n\nExamples:\n   lobewright size samples/box-pusher.yaml\n   lobewright size samples/box-pusher.yaml --json",
-		Flags:     []cli.Flag{&cli.BoolFlag{Name: "json", Usage: "print JSON"}},
+		Flags:     []cli.Flag{&cli.BoolFlag{Name: "json", Usage: "print JSON"}, tablesFlag()},
 		Action: func(c *cli.Context) error {
 			if c.NArg() != 1 {
 				return failure{statusInput, fmt.Errorf("lobewright size: found %d arguments; allowed: one spec", c.NArg())}
 			}
-			s, err := readSpec(c.Args().First())
+			s, err := readSpec(c, c.Args().First())
 			if err != nil {
 				return failure{statusInput, err}
 			}

@@ -42,7 +42,7 @@ func eachSpec(c *cli.Context, job func(printer, *spec.Spec) (sheet.Outcome, erro
 	makers := map[string]string{} // part to the first spec that makes it
 	color := colored(c.App.Writer)
 	for i, file := range files {
-		s, err := readSpec(file)
+		s, err := readSpec(c, file)
 		if err == nil && c.String("o") != "" {
 			if first, twice := makers[s.Part]; twice {
 				err = fmt.Errorf("%s: found the part %s, which %s makes too; allowed: one spec a part in a folder", file, s.Part, first)

@@ -23,7 +23,7 @@ func watch(c *cli.Context, job func() error) error {
 	tick := time.NewTicker(watchEvery)
 	defer tick.Stop()
 	for {
-		if now := fingerprint(files); now != seen {
+		if now := fingerprint(files, c.String("tables")); now != seen {
 			seen = now
 			err := job()
 			var f failure
@@ -45,7 +45,7 @@ func watch(c *cli.Context, job func() error) error {
 
 // fingerprint changes when the bytes of a spec or of a file it names change, or when
 // one comes or goes.
-func fingerprint(files []string) string {
+func fingerprint(files []string, tables string) string {
 	h := sha256.New()
 	add := func(data []byte, err error) {
 		fmt.Fprintf(h, "%d %v\n", len(data), err != nil)
@@ -56,7 +56,7 @@ func fingerprint(files []string) string {
 		add(data, err)
 		s, err := spec.Read(f, data, synth.Vocabulary())
 		if err == nil && s.Motion.Table != nil {
-			add(readFile(beside(f, s.Motion.Table.File)))
+			add(readTable(f, s.Motion.Table.File, tables))
 		}
 	}
 	return string(h.Sum(nil))

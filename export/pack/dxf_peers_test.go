@@ -7,7 +7,6 @@ import (
 	"compress/zlib"
 	"context"
 	"encoding/json"
-	"fmt"
 	"io"
 	"math"
 	"os"
@@ -341,7 +340,7 @@ func cutStrokes(t *testing.T, pdf []byte) [][]plane.Point {
 		numbers = numbers[:0]
 	}
 	if len(strokes) == 0 {
-		t.Fatal(fmt.Sprintf("no stroke of contour or bore on a page of %d bytes", len(page)))
+		t.Fatalf("no stroke of contour or bore on a page of %d bytes", len(page))
 	}
 	return strokes
 }

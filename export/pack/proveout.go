@@ -1,6 +1,7 @@
 package pack
 
 import (
+	"errors"
 	"fmt"
 	"math"
 
@@ -23,15 +24,26 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 		return sheet.ProveOut{}, err
 	}
 	back, err := read.Parse(data)
+	var at *read.Error
+	if errors.As(err, &at) {
+		return sheet.ProveOut{}, fmt.Errorf("%s:%d:%d: found %s; %s", file, at.Line, at.Column, at.Found, at.Allowed)
+	}
 	if err != nil {
 		return sheet.ProveOut{}, fmt.Errorf("%s: %w", file, err)
 	}
 	if operation == 0 {
-		operation = numbered(s, back.Number)
+		operation = operationNumbered(s, back.Number)
 	}
 	if operation < 1 || operation > len(s.Operations) {
-		return sheet.ProveOut{}, fmt.Errorf("%s: found program number O%d; allowed: those of the %d operations of %s; say which one with --operation",
-			file, back.Number, len(s.Operations), s.File)
+		found := "no program number"
+		if back.Number >= 0 {
+			found = fmt.Sprintf("program number O%d", back.Number)
+		}
+		if operation > 0 {
+			found = fmt.Sprintf("operation number %d", operation)
+		}
+		return sheet.ProveOut{}, fmt.Errorf("%s: found %s; allowed: those of the %d operations of %s; say which one with --operation",
+			file, found, len(s.Operations), s.File)
 	}
 	j := &job{spec: s, cam: cam, tight: 1}
 	j.allocate()
@@ -56,8 +68,8 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 		Process: s.Operations[i].Process, ToolDiameter: diameter, Chord: j.chord}), nil
 }
 
-// numbered returns the operation, from 1, whose program number is n; 0 when there is none.
-func numbered(s *spec.Spec, n int) int {
+// operationNumbered returns the operation, from 1, whose program number is n; 0 when there is none.
+func operationNumbered(s *spec.Spec, n int) int {
 	for i, o := range s.Operations {
 		if o.Program == n || o.Program == 0 && i+1 == n {
 			return i + 1

@@ -9,19 +9,23 @@ import (
 // Parse reads a program. The error is an *Error: the first fault of the file.
 func Parse(data []byte) (*Program, error) {
 	if len(data) > maxSize {
-		return nil, &Error{1, 1, fmt.Sprintf("%d bytes", len(data)), fmt.Sprintf("a program has at most %d", maxSize)}
+		return nil, &Error{1, 1, fmt.Sprintf("more than %d bytes", maxSize), "a program has at most that many"}
 	}
 	r := &reader{p: &Program{Number: -1, Bytes: len(data)}}
 	r.state = State{D: -1, H: -1, Tool: -1, Speed: -1}
 	r.pending = -1
-	lines := bytes.Split(data, []byte{'\n'})
-	for i, raw := range lines {
-		text := strings.TrimSuffix(string(raw), "\r")
-		if err := r.line(text, i+1); err != nil {
+	lines := 0
+	for rest, more := data, true; more; {
+		var raw []byte
+		raw, rest, more = bytes.Cut(rest, []byte{'\n'})
+		if lines++; lines > maxLines {
+			return nil, &Error{lines, 1, "one line more", fmt.Sprintf("a program has at most %d lines", maxLines)}
+		}
+		if err := r.line(strings.TrimSuffix(string(raw[:min(len(raw), maxLine+2)]), "\r"), lines); err != nil {
 			return nil, err
 		}
 	}
-	if err := r.finish(len(lines)); err != nil {
+	if err := r.finish(lines); err != nil {
 		return nil, err
 	}
 	return r.p, nil
@@ -52,7 +56,7 @@ type reader struct {
 // line reads one line of the file.
 func (r *reader) line(text string, no int) error {
 	if len(text) > maxLine {
-		return &Error{no, maxLine + 1, fmt.Sprintf("a line of %d characters", len(text)), fmt.Sprintf("lines have at most %d", maxLine)}
+		return &Error{no, maxLine + 1, fmt.Sprintf("a line of more than %d characters", maxLine), "a line has at most that many"}
 	}
 	r.p.Longest = max(r.p.Longest, len(text))
 	if i := unprintable(text); i >= 0 {

@@ -2,6 +2,7 @@ package read
 
 import (
 	"fmt"
+	"strconv"
 	"strings"
 )
 
@@ -22,6 +23,9 @@ const (
 	// maxLine is the longest line taken, the limit of NISTIR 6556 3.2.
 	maxLine = 256
 	maxSize = 64 << 20 // bytes of a program
+	// maxLines keeps a hostile program of short lines from filling the memory: a line
+	// becomes a Move of some 250 bytes.
+	maxLines = 1_000_000
 )
 
 // scan cuts one line into words and comments. A comment in parentheses is one
@@ -70,7 +74,14 @@ func scanWord(line string, i, no int) (word, int, error) {
 	w.text = string(w.letter) + line[start:j]
 	value, fault := parseNumber(line[start:j])
 	if fault != "" {
-		return w, j, &Error{no, start + 1, fmt.Sprintf("%q after %c", line[start:j], w.letter), fault}
+		if start == j { // no number at all: say what stands in its place
+			j = min(j+1, len(line))
+		}
+		found := "nothing"
+		if start < j {
+			found = strconv.Quote(line[start:j])
+		}
+		return w, j, &Error{no, start + 1, fmt.Sprintf("%s after %c", found, w.letter), fault}
 	}
 	w.value = value
 	return w, j, nil

@@ -229,7 +229,7 @@ func TestSizeLimit(t *testing.T) {
 	fill := func(n int) string { return smallest + strings.Repeat("#", n-len(smallest)-1) + "\n" }
 	mustRead(t, fill(mostBytes))
 	_, err := Read("big.yaml", []byte(fill(mostBytes+1)), vocabulary())
-	if err == nil || err.Error() != "big.yaml:1:1: found a file of 1048577 bytes; allowed: at most 1048576 bytes; a spec holds one cam" {
+	if err == nil || err.Error() != "big.yaml:1:1: found a file of more than 1048576 bytes; allowed: at most 1048576 bytes; a spec holds one cam" {
 		t.Error(err)
 	}
 }

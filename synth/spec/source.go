@@ -36,7 +36,7 @@ func parse(file string, data []byte) (root *yaml.Node, faults Faults) {
 		return nil, Faults{{File: file, Line: p.Line, Column: p.Column, Found: found, Allowed: allowed, Advice: advice}}
 	}
 	if len(data) > mostBytes {
-		return at(Place{1, 1}, fmt.Sprintf("a file of %d bytes", len(data)), fmt.Sprintf("at most %d bytes", mostBytes), "a spec holds one cam")
+		return at(Place{1, 1}, fmt.Sprintf("a file of more than %d bytes", mostBytes), fmt.Sprintf("at most %d bytes", mostBytes), "a spec holds one cam")
 	}
 	data = withoutMark(data)
 	if bad := invalidUTF8(data); bad >= 0 {

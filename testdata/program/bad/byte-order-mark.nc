@@ -1,0 +1,6 @@
+#= @: found byte 0xef; programs are printable ASCII
+▸﻿%
+O1
+N10 G21 G17 G90 G40 G49 G80 G94 G54
+M30
+%

@@ -1,0 +1,8 @@
+#= @: found X2; the center of an arc is not one of its ends
+%
+O1
+N10 G21 G17 G90 G40 G49 G80 G94 G54
+G0 X1 Y1
+G2 ▸X2 Y2 I0 J0
+M30
+%

@@ -1,0 +1,2 @@
+#= @: found the end of the file; a program ends with M2, M30 or %
+▸

@@ -1,0 +1,7 @@
+#= @: found F-5; a feed is above 0
+%
+O1
+N10 G21 G17 G90 G40 G49 G80 G94 G54
+▸F-5
+M30
+%

@@ -1,0 +1,5 @@
+#= @: found no blocks; a program has at least one
+%
+(nothing)
+%
+▸

@@ -24,8 +24,8 @@ const (
 	maxLine = 256
 	maxSize = 64 << 20 // bytes of a program
 	// maxLines keeps a hostile program of short lines from filling the memory: a line
-	// becomes a Move of some 250 bytes.
-	maxLines = 1_000_000
+	// becomes a Move of some 250 bytes, and may become a fault of some 500.
+	maxLines = 200_000
 )
 
 // scan cuts one line into words and comments. A comment in parentheses is one

@@ -21,6 +21,10 @@ func (f Fault) Error() string {
 	return fmt.Sprintf("%d:%d: found %s; allowed: %s; %s", f.Line, f.Column, f.Found, f.Allowed, f.Advice)
 }
 
+// mostLine is the longest line taken, bytes: the place of a column is counted from the
+// line's start for every column, which on a line of megabytes would take hours.
+const mostLine = 4096
+
 // MostFaults is how many faults Read reports of one text.
 const MostFaults = 20
 
@@ -45,6 +49,10 @@ func Read(text []byte, smoothing float64) (Table, []Fault) {
 	for k, line := range lines {
 		if !utf8.ValidString(line) || strings.ContainsRune(line, 0) {
 			r.fault(k+1, 1, "bytes that are no UTF-8 text", "plain text", "save the table as CSV, encoded as UTF-8")
+			return Table{}, r.faults
+		}
+		if len(line) > mostLine {
+			r.fault(k+1, 1, fmt.Sprintf("a line of more than %d bytes", mostLine), "a row of a few numbers", "leave out the columns after the lift")
 			return Table{}, r.faults
 		}
 	}

@@ -116,6 +116,7 @@ func TestReadFaults(t *testing.T) {
 		"no separator":    {text("deg mm", body(36, " ")...), 1, 1, `one column: "deg mm"`, "semicolon or tab", "header"},
 		"empty":           {nil, 1, 1, "an empty line", "header", "such as"},
 		"not text":        {[]byte("deg,mm\n0,\xff\n"), 2, 1, "no UTF-8", "plain text", "UTF-8"},
+		"long line":       {spoiled("30,1" + strings.Repeat(",0", 2050)), 5, 1, "a line of more than 4096 bytes", "a few numbers", "leave out"},
 		"sixteen bits":    {[]byte("d\x00,\x00m\x00\n"), 1, 1, "no UTF-8", "plain text", "UTF-8"},
 	} {
 		_, faults := smooth.Read(c.in, 0.002)

@@ -158,6 +158,10 @@ func readKeys[T any](r *reader, w where, t table[T], kind string, into *T) map[s
 			f.read(r, w.child(key, w.val.Content[i+1]), into)
 			continue
 		}
+		if r.count > mostFaults { // it is not listed, so nothing about it is looked for
+			r.count++
+			continue
+		}
 		if instead := t.unknown(r, w, key, kind); instead != "" {
 			given[instead] = true
 			r.unread = append(r.unread, join(w.path, instead))

@@ -345,11 +345,15 @@ func (j *job) motionChart(head svg.Head) svg.MotionChart {
 		c.Radius.Limits = []svg.Limit{{Value: *r}}
 	}
 	radii := contour.Radii()
-	if !math.IsInf(radii.Convex, 1) {
-		c.Radius.Peaks = append(c.Radius.Peaks, svg.Sample{CamAngle: plane.Wrap360(radii.ConvexAt), Value: radii.Convex})
-	}
-	if !math.IsInf(radii.Concave, 1) {
-		c.Radius.Peaks = append(c.Radius.Peaks, svg.Sample{CamAngle: plane.Wrap360(radii.ConcaveAt), Value: -radii.Concave})
+	const cusp = 1e-9 // of the base radius: a contour that turns on the spot, but for rounding
+	for _, r := range []struct{ value, sign, at float64 }{{radii.Convex, 1, radii.ConvexAt}, {radii.Concave, -1, radii.ConcaveAt}} {
+		switch {
+		case math.IsInf(r.value, 1):
+		case r.value < cusp*j.spec.Cam.BaseRadius:
+			c.Radius.Peaks = append(c.Radius.Peaks, svg.Sample{CamAngle: plane.Wrap360(r.at)})
+		default:
+			c.Radius.Peaks = append(c.Radius.Peaks, svg.Sample{CamAngle: plane.Wrap360(r.at), Value: r.sign * r.value})
+		}
 	}
 	return c
 }

@@ -95,30 +95,32 @@ func (j *job) reported(r run) *sheet.Follower {
 	return f
 }
 
-// accelerationRuns is the acceleration error for the deviation chart.
-func (j *job) accelerationRuns(r run) []svg.Run {
+// errorRuns are the follower's errors in lift and in acceleration for the deviation chart.
+func (j *job) errorRuns(r run) (lift, acceleration []svg.Run) {
 	w := j.cam.Omega()
-	var runs []svg.Run
-	var one svg.Run
-	for _, s := range r.samples {
-		p := svg.Sample{CamAngle: plane.Wrap360(s.At), Value: s.Acceleration * w * w}
-		if n := len(one); n > 0 && p.CamAngle < one[n-1].CamAngle {
-			runs, one = append(runs, one), nil
+	var s, a svg.Run
+	flush := func() {
+		if len(s) > 0 {
+			lift, acceleration, s, a = append(lift, s), append(acceleration, a), nil, nil
 		}
-		one = append(one, p)
 	}
-	if len(one) > 0 {
-		runs = append(runs, one)
+	for _, p := range r.samples {
+		at := plane.Wrap360(p.At)
+		if n := len(s); n > 0 && at < s[n-1].CamAngle {
+			flush()
+		}
+		s, a = append(s, svg.Sample{CamAngle: at, Value: p.Lift}), append(a, svg.Sample{CamAngle: at, Value: p.Acceleration * w * w})
 	}
-	if len(runs) > 1 {
-		runs = append(runs[1:], runs[0])
+	flush()
+	if len(lift) > 1 {
+		lift, acceleration = append(lift[1:], lift[0]), append(acceleration[1:], acceleration[0])
 	}
-	return runs
+	return lift, acceleration
 }
 
 func (j *job) deviationChart(head svg.Head) svg.DeviationChart {
 	w, u := j.cam.Omega(), j.cam.LiftUnit()
-	c := svg.DeviationChart{Head: head, Chord: j.chord, DesignPeak: j.cam.Peaks().A * w * w, AccelerationUnit: u + "/s²", Events: j.events()}
+	c := svg.DeviationChart{Head: head, Chord: j.chord, DesignPeak: j.cam.Peaks().A * w * w, AccelerationUnit: u + "/s²", LiftUnit: u, Events: j.events()}
 	shown := []written{j.outline.paths[0]}
 	for _, p := range j.programs {
 		if p.finish != nil {
@@ -130,7 +132,7 @@ func (j *job) deviationChart(head svg.Head) svg.DeviationChart {
 		d := svg.PathDeviation{Name: p.file + ", " + p.curve, Runs: j.trace(p.exact, p.path), Bound: p.deviation.Bound,
 			Blocks: fmt.Sprintf("%d arcs, %d lines", arcs, lines)}
 		if r, ok := j.follows[p.file+p.curve]; ok {
-			d.AccelerationError = j.accelerationRuns(r)
+			d.LiftError, d.AccelerationError = j.errorRuns(r)
 		}
 		c.Paths = append(c.Paths, d)
 	}

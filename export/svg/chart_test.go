@@ -42,7 +42,7 @@ func (s sampleCam) motion() MotionChart {
 }
 
 func (s sampleCam) deviation(paths int) DeviationChart {
-	d := DeviationChart{Head: s.head(), Chord: 0.002 * s.k, DesignPeak: 11600 * s.k, AccelerationUnit: "mm/s²", Events: s.events()}
+	d := DeviationChart{Head: s.head(), Chord: 0.002 * s.k, DesignPeak: 11600 * s.k, AccelerationUnit: "mm/s²", LiftUnit: "mm", Events: s.events()}
 	for n := 0; n < paths; n++ {
 		p := PathDeviation{Name: "stick-lift.dxf, contour", Bound: 0.00193 * s.k, Blocks: "2 lines, 46 arcs"}
 		if n > 0 {
@@ -58,6 +58,9 @@ func (s sampleCam) deviation(paths int) DeviationChart {
 		p.Runs = [][]DeviationSample{run}
 		if n != 1 {
 			p.AccelerationError = []Run{acc}
+		}
+		if n != 2 {
+			p.LiftError = []Run{{{0, 0}, {120, 0.0017 * s.k}, {240, -0.0018 * s.k}, {360, 0}}}
 		}
 		d.Paths = append(d.Paths, p)
 	}
@@ -112,6 +115,24 @@ func TestChartTextsKeepApart(t *testing.T) {
 			show(t, name, out)
 			checkTexts(t, out)
 		})
+	}
+}
+
+// The lift error has its panel with its greatest and least value, in thousandths of a degree for a swinging follower.
+func TestLiftError(t *testing.T) {
+	d := mmCam(5, true).deviation(1)
+	for unit, want := range map[string]string{
+		"mm":  "Follower lift error, µm (most 1.7 at 120°, least −1.8 at 240°)",
+		"deg": "Follower lift error, 10⁻³ deg (most 1.7 at 120°, least −1.8 at 240°)",
+	} {
+		d.LiftUnit = unit
+		out, err := Deviation(d)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if !has(checkTexts(t, out), want) {
+			t.Errorf("%s: the chart lacks %q", unit, want)
+		}
 	}
 }
 

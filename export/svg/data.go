@@ -165,9 +165,9 @@ type PathDeviation struct {
 	Runs   [][]DeviationSample // in order of cam angle
 	Bound  float64             // length: certified upper bound of the deviation's size
 	Blocks string              // "48 arcs, 2 lines" or empty
-	// AccelerationError is the follower's acceleration on the written path less that
-	// of the design, length/s² (degrees/s² for a swinging follower); empty leaves the panel out.
-	AccelerationError []Run
+	// LiftError and AccelerationError are the follower's lift and acceleration on the written path less those
+	// of the design, length and length/s² (degrees for a swinging follower); empty leaves the panel out.
+	LiftError, AccelerationError []Run
 }
 
 // DeviationChart is the deviation of the written paths around the cam.
@@ -176,6 +176,7 @@ type DeviationChart struct {
 	Chord            float64 // length: the zone is -Chord to +Chord
 	DesignPeak       float64 // peak acceleration of the design, in AccelerationUnit
 	AccelerationUnit string  // "mm/s²"
+	LiftUnit         string  // "mm", "in" or "deg"
 	Paths            []PathDeviation
 	Events           []Event // boundaries are drawn at From; Start is not used
 }

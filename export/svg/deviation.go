@@ -11,6 +11,7 @@ import (
 const (
 	devHeight = 34.0 // unrolled deviation
 	accHeight = 24.0 // acceleration error
+	liftPanel = 16.0 // lift error
 	ringSide  = 50.0 // polar trace
 	ringMean  = 15.0 // radius of zero deviation
 	ringSwing = 7.0  // radius of the largest value drawn
@@ -21,8 +22,8 @@ const (
 
 // Deviation draws the deviation of every written path around the cam: unrolled over
 // cam angle against the zone and the certified bound, as an exaggerated trace
-// around the axis, and below it the follower's acceleration error as a share of
-// the design's peak. The error names what is missing or not finite.
+// around the axis, and below it the follower's errors in lift and in acceleration, this
+// as a share of the design's peak. The error names what is missing or not finite.
 func Deviation(d DeviationChart) ([]byte, error) {
 	if err := d.check(); err != nil {
 		return nil, err
@@ -48,6 +49,9 @@ func Deviation(d DeviationChart) ([]byte, error) {
 
 func (p PathDeviation) height() float64 {
 	h := titleRoom + legendRow + devHeight + 5
+	if len(p.LiftError) > 0 {
+		h += titleRoom + liftPanel + 5
+	}
 	if len(p.AccelerationError) > 0 {
 		h += titleRoom + accHeight + 5
 	}
@@ -79,6 +83,9 @@ func (d DeviationChart) check() error {
 			return fmt.Errorf("svg: %s: the bound is %v; it must be at least 0 and finite", name, p.Bound)
 		}
 		if err := checkRuns(name+", acceleration error", p.AccelerationError); err != nil && len(p.AccelerationError) > 0 {
+			return err
+		}
+		if err := checkRuns(name+", lift error", p.LiftError); err != nil && len(p.LiftError) > 0 {
 			return err
 		}
 		for _, r := range p.Runs {
@@ -141,11 +148,19 @@ func (d DeviationChart) block(c *canvas, p PathDeviation, y float64) {
 	}
 	a.series(runs, pen{width: 0.4, color: blue}, nil)
 	trace{c: c, m: pt{chartWidth - chartMargin - ringSide/2, y + ringSide/2}, top: top / f}.draw(p, d.Chord)
-	if len(p.AccelerationError) == 0 {
-		angleTitle(c, a.b)
-	} else {
-		d.acceleration(c, p, box{a.b.x0, a.b.y1 + 5 + titleRoom, right, a.b.y1 + 5 + titleRoom + accHeight})
+	last := a.b
+	below := func(height float64) box {
+		top := last.y1 + 5 + titleRoom
+		last = box{last.x0, top, last.x1, top + height}
+		return last
 	}
+	if len(p.LiftError) > 0 {
+		d.lift(c, p, below(liftPanel))
+	}
+	if len(p.AccelerationError) > 0 {
+		d.acceleration(c, p, below(accHeight))
+	}
+	angleTitle(c, last)
 }
 
 // level draws a horizontal line across the panel.
@@ -224,6 +239,30 @@ func anchorOf(u plane.Vector) string {
 	return "middle"
 }
 
+// lift draws the follower's lift error.
+func (d DeviationChart) lift(c *canvas, p PathDeviation, b box) {
+	f, unit := d.small()
+	if d.LiftUnit == "deg" {
+		f, unit = 1e3, "10⁻³ deg"
+	}
+	runs := make([]Run, len(p.LiftError))
+	for i, r := range p.LiftError {
+		for _, s := range r {
+			runs[i] = append(runs[i], Sample{s.CamAngle, s.Value * f})
+		}
+	}
+	least, greatest, _ := extremes(runs)
+	lo, hi := ranged(least.Value, greatest.Value)
+	scale, prefix := factor(math.Max(-lo, hi))
+	a := axes{c: c, b: b, lo: lo, hi: hi, unit: scale}
+	title := "Follower lift error, " + prefix + unit + " (most " + found(Sample{greatest.CamAngle, greatest.Value / scale}) +
+		", least " + found(Sample{least.CamAngle, least.Value / scale}) + ")"
+	text, size := fitted(title, b.width()+shareRoom, titleSize, 1.6, false)
+	c.text(pt{b.x0, b.y0 - 1.6}, text, font{size: size})
+	a.frame(d.Events, true)
+	a.series(runs, pen{width: 0.35, color: blue}, nil)
+}
+
 // acceleration draws the follower's acceleration error, with its share of the
 // design's peak on the right.
 func (d DeviationChart) acceleration(c *canvas, p PathDeviation, b box) {
@@ -242,7 +281,6 @@ func (d DeviationChart) acceleration(c *canvas, p PathDeviation, b box) {
 	if d.DesignPeak > 0 {
 		a.shares(d.DesignPeak)
 	}
-	angleTitle(c, b)
 }
 
 // angleTitle names the angle axis under a panel.

@@ -96,6 +96,7 @@ func deviationSpoilers() map[string]func(*DeviationChart, float64) {
 		"the design's peak":  func(d *DeviationChart, v float64) { d.DesignPeak = v },
 		"contour":            func(d *DeviationChart, v float64) { d.Paths[0].Runs[0][9].Value = v },
 		"polar angle":        func(d *DeviationChart, v float64) { d.Paths[0].Runs[0][9].Polar = v },
+		"lift error":         func(d *DeviationChart, v float64) { d.Paths[0].LiftError[0][2].Value = v },
 		"acceleration error": func(d *DeviationChart, v float64) { d.Paths[0].AccelerationError[0][2].Value = v },
 	}
 }

@@ -122,10 +122,7 @@ func (j *job) drawingData(head svg.Head) svg.DrawingData {
 	if j.opt.ToolPaths {
 		d.ToolPaths = j.toolPaths()
 	}
-	if r := s.Follower.FaceRadius; r > 0 {
-		d.RollerText = "FACE R" + fmt.Sprintf("%g", r)
-	}
-	if j.cam.HasPitchCurve() {
+	if j.cam.HasPitchCurve() && s.Follower.FaceRadius == 0 {
 		d.PitchCurve, d.RollerDiameter, d.Roller = j.shape(j.cam.Pitch()), 2*j.cam.Follower().Radius(), j.cam.AtRest()
 	}
 	if j.cam.Grooved() {

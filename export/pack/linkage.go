@@ -2,10 +2,12 @@ package pack
 
 import (
 	"fmt"
+	"math"
 
 	"lobewright/export/svg"
 	"lobewright/synth/follower"
 	"lobewright/synth/plane"
+	"lobewright/tolerance/chain"
 )
 
 // linkageAtRest returns the lines of the follower's arm, from the pivot on, and of its face at lift 0, cam frame; none for a
@@ -31,6 +33,9 @@ func (j *job) linkageAtRest() (arm, face [][2]plane.Point) {
 
 // linkageData is what the drawing shows of it: the arm as one line from the pivot.
 func (j *job) linkageData() *svg.Linkage {
+	if path, text := j.headAtRest(); path != nil {
+		return &svg.Linkage{Outline: path, FaceText: text}
+	}
 	arm, face := j.linkageAtRest()
 	if len(arm)+len(face) == 0 || j.drum() {
 		return nil
@@ -55,6 +60,24 @@ func (j *job) linkageData() *svg.Linkage {
 		l.FaceText = fmt.Sprintf("FACE AT LIFT 0, %.6g FROM THE PIVOT", f.FaceOffset)
 	}
 	return l
+}
+
+// headAtRest is what touches the cam at lift 0 where that is no roller and no line, and what it is called:
+// a mushroom's face within its head, a knife's edge with a piece of its flanks. Else nothing.
+func (j *job) headAtRest() (chain.Path, string) {
+	f, at := j.spec.Follower, j.cam.AtRest()
+	switch f.Kind {
+	case "translating-mushroom":
+		half := f.HeadDiameter / 2
+		back := math.Sqrt(math.Max(0, f.FaceRadius*f.FaceRadius-half*half))
+		low, high := at.Add(plane.Vector{X: -back, Y: -half}), at.Add(plane.Vector{X: -back, Y: half})
+		return chain.Path{{Kind: chain.Arc, From: low, To: high, Center: at}}, fmt.Sprintf("FACE R%.6g, HEAD Ø%.6g, AT LIFT 0", f.FaceRadius, f.HeadDiameter)
+	case "translating-knife":
+		long := j.spec.Cam.BaseRadius / 5
+		low, high := at.Add(plane.Vector{X: long, Y: -long / 3}), at.Add(plane.Vector{X: long, Y: long / 3})
+		return chain.Path{{Kind: chain.Line, From: low, To: at}, {Kind: chain.Line, From: at, To: high}}, "KNIFE EDGE AT LIFT 0"
+	}
+	return nil, ""
 }
 
 // trails reports whether a swinging follower's arm trails: at lift 0 the cam's surface runs from the pivot towards

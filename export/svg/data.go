@@ -68,8 +68,9 @@ type Linkage struct {
 	Pivots             bool        // there is a pivot
 	Pivot              plane.Point // fixed
 	Arm, Face          [2]plane.Point
-	PivotText, ArmText string // labels: "PIVOT, 88 FROM THE AXIS", "ARM 70, TRAILING"
-	FaceText           string // "FACE 30 WIDE AT LIFT 0"
+	Outline            chain.Path // a face that is no line: a mushroom's arc, a knife's edge; else empty
+	PivotText, ArmText string     // labels: "PIVOT, 88 FROM THE AXIS", "ARM 70, TRAILING"
+	FaceText           string     // of the face or the outline: "FACE 30 WIDE AT LIFT 0"
 }
 
 // Bore is the hole about the camshaft axis: datum A.

@@ -3,6 +3,7 @@ package svg
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"lobewright/synth/plane"
 )
@@ -125,7 +126,11 @@ func (d DrawingData) checkLists() error {
 		}
 	}
 	if l := d.Linkage; l != nil {
-		for _, p := range []plane.Point{l.Pivot, l.Arm[0], l.Arm[1], l.Face[0], l.Face[1]} {
+		all := []plane.Point{l.Pivot, l.Arm[0], l.Arm[1], l.Face[0], l.Face[1]}
+		for _, e := range l.Outline {
+			all = append(all, e.From, e.To, e.Center)
+		}
+		for _, p := range all {
 			if !finitePoint(p) {
 				return fmt.Errorf("svg: drawing: the follower's arm or face has a coordinate that is not finite")
 			}
@@ -182,8 +187,10 @@ func (g *drawing) extent() box {
 		}
 	}
 	if l := g.d.Linkage; l != nil {
-		for _, p := range append(l.Arm[:], l.Face[:]...) {
-			add(p, 0)
+		for _, p := range slices.Concat(l.Arm[:], l.Face[:], points(l.Outline)) {
+			if p != (plane.Point{}) {
+				add(p, 0)
+			}
 		}
 		if l.Pivots {
 			add(l.Pivot, 0)

@@ -20,6 +20,8 @@ func (g *drawing) linkage() {
 	}
 	bar(l.Arm, pen{width: 0.35, color: blue})
 	bar(l.Face, pen{width: 0.7, color: blue})
+	g.c.path(g.v.track(l.Outline, false), pen{width: 0.7, color: blue})
+	g.mark(points(l.Outline), g.l.stroke)
 	if l.Pivots {
 		g.c.doing("pivot")
 		const r = 1.2 // mm on the sheet
@@ -47,6 +49,9 @@ func (g *drawing) linkageCallouts() []callout {
 	}
 	if l.Face[0] != l.Face[1] {
 		cs = append(cs, callout{lines: []string{l.FaceText}, at: along(l.Face, 0.85), away: 45})
+	}
+	if n := len(l.Outline); n > 0 {
+		cs = append(cs, callout{lines: []string{l.FaceText}, at: l.Outline[n-1].To, away: 45})
 	}
 	return cs
 }

@@ -32,7 +32,7 @@ func (j *job) tryDrumOutline(eps float64) (*outline, error) {
 	var paths [3]chain.Path
 	for i, c := range []*synth.Curve{j.cam.Contour(), j.cam.OuterWall(), j.cam.Pitch()} {
 		var err error
-		if paths[i], err = fit.Arcs(c, eps, fit.Options{}); err != nil {
+		if paths[i], err = fit.Arcs(c, eps, j.rough.options()); err != nil {
 			return nil, err
 		}
 	}

@@ -23,7 +23,7 @@ func (j *job) drumPart(i int, eps float64) gcode.Drum {
 		Radius: s.Cam.Radius, Length: s.Cam.Length, Depth: s.Cam.GrooveDepth, Width: j.cam.GrooveWidth(), Begins: j.begins(),
 		Axis: func(p gcode.DrumPass, z float64) gcode.Curve { return axis(p, z) },
 		Path: func(p gcode.DrumPass) (chain.Path, error) {
-			path, err := fit.Lines(axis(p, s.Cam.Radius), eps)
+			path, err := fit.Lines(axis(p, s.Cam.Radius), eps, j.rough.options())
 			if err != nil {
 				return nil, fmt.Errorf("pass at %d, stock %g: %w", p.Side, p.Stock, err)
 			}

@@ -16,6 +16,7 @@ import (
 type run struct {
 	err     follow.Error
 	samples []follow.Sample
+	lines   bool // more lines than arcs: the acceleration on it is wrong at any tolerance
 }
 
 // linkage is the follower as something to be run over a path.
@@ -82,7 +83,8 @@ func (j *job) follower(w written) (run, error) {
 	if err != nil {
 		return run{}, fmt.Errorf("%s, %s: %w", w.file, w.curve, err)
 	}
-	return run{e, samples}, nil
+	lines, arcs := counts(w.path)
+	return run{e, samples, lines > arcs}, nil
 }
 
 // reported turns a run into the report's figures, per second at the camshaft's speed.
@@ -178,17 +180,10 @@ func (j *job) followerGates(e follow.Error) {
 	if t.Acceleration != nil {
 		share := e.Acceleration / j.cam.Peaks().A
 		j.add("follower-acceleration", share, *t.Acceleration, "", e.AccelerationAt,
-			"largest acceleration error of the follower on any written path, as a share of the design's peak; blocks were added down to the smallest tolerance the grid allows; take more decimals or accept a larger share")
+			"largest acceleration error of the follower on any written path, as a share of the design's peak; blocks were added where it is felt for as long as that helped; take arcs, more decimals, or accept a larger share")
 	}
 	if t.VelocityStep != nil {
 		j.add("velocity-step", e.VelocityStep*w, *t.VelocityStep, j.cam.LiftUnit()+"/s", e.VelocityStepAt,
 			"largest velocity step of the follower at a joint of any written path; take arcs instead of lines, or more decimals")
 	}
-}
-
-// tooRough reports whether the follower's limits ask for more blocks.
-func (j *job) tooRough(e follow.Error) bool {
-	t, w := j.spec.Tolerance, j.cam.Omega()
-	return t.Acceleration != nil && e.Acceleration > *t.Acceleration*j.cam.Peaks().A ||
-		t.VelocityStep != nil && e.VelocityStep*w > math.Abs(*t.VelocityStep)
 }

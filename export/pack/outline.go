@@ -44,7 +44,7 @@ type written struct {
 // pitchFit fits the pitch curve with arcs once for each tolerance; its parallels are
 // parallel chains with the same deviation.
 func (j *job) pitchFit(eps float64) (chain.Path, error) {
-	return j.fits.get(eps, func() (chain.Path, error) { return fit.Arcs(j.cam.Pitch(), eps, fit.Options{}) })
+	return j.fits.get(eps, func() (chain.Path, error) { return fit.Arcs(j.cam.Pitch(), eps, j.rough.options()) })
 }
 
 // fits keeps what was fitted, for programs that are written at the same time. A path is

@@ -4,7 +4,6 @@
 package pack
 
 import (
-	"fmt"
 	"math"
 
 	"lobewright/export/sheet"
@@ -13,6 +12,7 @@ import (
 	"lobewright/synth/plane"
 	"lobewright/synth/spec"
 	"lobewright/tolerance"
+	"lobewright/tolerance/follow"
 )
 
 // Options are what the command line adds to the spec.
@@ -51,7 +51,7 @@ type job struct {
 	cam      *synth.Cam
 	opt      Options
 	chord    float64
-	tight    float64 // share of the chord tolerance that paths are fitted to
+	rough    rough // where the follower feels the path too much, and shorter blocks are taken
 	gates    []gate.Gate
 	findings []gate.Finding
 	outline  *outline
@@ -83,22 +83,14 @@ func work(s *spec.Spec, o Options) (*Pack, *job, error) {
 	return p, j, err
 }
 
-// finer is by how much the fit is tightened when the follower's errors ask for more
-// blocks: arcs lose acceleration error as the cube root of the tolerance, so
-// this is a quarter of it a step. finest ends it.
-const (
-	finer  = 0.42
-	finest = 1e-3
-)
-
-// writeSmoothEnough writes everything, and again with a tighter fit as long as the
-// follower's limits (tolerance.acceleration, tolerance.velocity_step) ask for it
-// and the grid has room.
+// writeSmoothEnough writes everything, and again with shorter blocks where the follower feels
+// them as long as its limits (tolerance.acceleration, tolerance.velocity_step) ask for it and that helps.
 func (j *job) writeSmoothEnough() {
 	before := len(j.gates)
-	first := 0
-	for j.tight = 1; ; j.tight *= finer {
-		j.gates, j.outline, j.programs = j.gates[:before], nil, nil
+	var first, worst follow.Error
+	blocks := 0
+	for {
+		j.gates, j.outline, j.programs, j.fits = j.gates[:before], nil, nil, fits{}
 		programs := j.startPrograms()
 		err := j.writeOutline()
 		tried := programs()
@@ -107,22 +99,18 @@ func (j *job) writeSmoothEnough() {
 			return
 		}
 		j.addPrograms(tried)
-		worst := j.runFollower()
-		n := len(j.outline.paths[0].path)
-		if j.tight == 1 {
-			first = n
+		worst = j.runFollower()
+		if blocks == 0 {
+			blocks, first = len(j.outline.paths[0].path), worst
 		}
-		if !j.tooRough(worst) || j.tight*finer < finest || j.fitTo(finer, j.spec.Control.Decimals) == 0 {
-			if n > first {
-				j.findings = append(j.findings, gate.Finding{ID: "blocks-added", CamAngle: math.NaN(),
-					Text: fmt.Sprintf("the contour takes %d blocks instead of %d, because the follower's error limits ask for more than the chord tolerance does", n, first)})
-			}
-			j.findings = append(j.findings, j.unknown...)
-			j.followerGates(worst)
-			j.drawToolPaths()
-			return
+		if !j.refine(worst) {
+			break
 		}
 	}
+	j.tellRefined(blocks, first, worst)
+	j.findings = append(j.findings, j.unknown...)
+	j.followerGates(worst)
+	j.drawToolPaths()
 }
 
 // allocate settles the chord tolerance and holds the budget against the profile zone.
@@ -185,7 +173,7 @@ func attempts() []float64 { return []float64{0.99, 0.85, 0.7, 0.5, 0.35} }
 
 // fitTo returns the tolerance of one attempt for a grid, 0 when the grid eats it up.
 func (j *job) fitTo(share float64, decimals int) float64 {
-	return math.Max(0, share*(j.chord*j.tight-gridShare*math.Pow10(-decimals)))
+	return math.Max(0, share*(j.chord-gridShare*math.Pow10(-decimals)))
 }
 
 func (j *job) polar(t float64) float64 {

@@ -93,7 +93,7 @@ func (j *job) bestProgram(i int) (program, error) {
 	for _, share := range attempts() {
 		eps := j.fitTo(share, j.spec.Control.Decimals)
 		if eps == 0 {
-			eps = j.chord * j.tight * share // the grid alone is too coarse: show by how much
+			eps = j.chord * share // the grid alone is too coarse: show by how much
 		}
 		p, err := j.tryProgram(i, eps)
 		if err != nil {
@@ -237,7 +237,7 @@ func (j *job) operation(i int, eps float64) gcode.Operation {
 		op.StartHole = gcode.StartHole{Radius: o.StartHole.Radius, At: o.StartHole.At}
 	}
 	if o.Moves == "lines" {
-		op.Path = func(offset float64) (chain.Path, error) { return fit.Lines(j.toolPath(offset), eps) }
+		op.Path = func(offset float64) (chain.Path, error) { return fit.Lines(j.toolPath(offset), eps, j.rough.options()) }
 		return op
 	}
 	pitch, err := j.pitchFit(eps)

@@ -45,7 +45,7 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 		return sheet.ProveOut{}, fmt.Errorf("%s: found %s; allowed: those of the %d operations of %s; say which one with --operation",
 			file, found, len(s.Operations), s.File)
 	}
-	j := &job{spec: s, cam: cam, tight: 1}
+	j := &job{spec: s, cam: cam}
 	j.allocate()
 	i := operation - 1
 	op := j.operation(i, j.chord)

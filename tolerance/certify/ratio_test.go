@@ -89,7 +89,7 @@ func searched(c curve, p chain.Path, n int) float64 {
 // fitted is a fitted path off any grid.
 func fitted(tb testing.TB, c framed, eps float64, kind chain.Kind) chain.Path {
 	tb.Helper()
-	p, err := fit.Lines(c, eps)
+	p, err := fit.Lines(c, eps, fit.Options{})
 	if kind == chain.Arc {
 		p, err = fit.Arcs(c, eps, fit.Options{})
 	}

@@ -50,8 +50,22 @@ import (
 // changes of k'), none left to the greedy; 0.69 of the classical count at 1 µm; 10 ms in the median,
 // 10 to 50 ms for a cam at 1 µm, 0.2 to 0.6 s at 1 nm.
 
-// Options says how Arcs works. There is nothing to choose yet: the zero value is right.
-type Options struct{}
+// Options says how a curve is fitted; the zero value is right for a plain tolerance.
+type Options struct {
+	// Share is the part of eps, above 0 and at most 1, that the path may take at parameter t (degrees;
+	// closed curves: also asked a turn on or back, where it must be the same). Arcs and lines
+	// become shorter only where it asks for it, as the cube or the square root of the share. Nil is 1 everywhere. It may
+	// step; it is looked at in samples, so what is shorter than an element may be missed.
+	Share func(t float64) float64
+}
+
+// at returns the share at t.
+func (o Options) at(t float64) float64 {
+	if o.Share == nil {
+		return 1
+	}
+	return o.Share(t)
+}
 
 // Arcs returns a path of arcs (and lines where the curve is straight), closed when the curve is, with
 // continuous tangent, within eps (a length) of the curve everywhere by the estimate of
@@ -62,13 +76,13 @@ type Options struct{}
 // holds the stretch each element stands for, the first from the joint nearest to the start of the first
 // piece (at it, where a joint lies there), the last to 360 on from that. Errors: eps not a
 // length, a curve that is not one turn or has no finite curvature.
-func Arcs(c Curve, eps float64, _ Options) (chain.Path, error) {
+func Arcs(c Curve, eps float64, o Options) (chain.Path, error) {
 	pieces, err := validate(c, eps)
 	if err != nil {
 		return nil, err
 	}
 	most := mostBent(c, pieces)
-	return assemble(c, pieces, func(st stretch) (chain.Path, error) { return st.fit(eps, most) })
+	return assemble(c, pieces, func(st stretch) (chain.Path, error) { return st.fit(eps, most, o) })
 }
 
 // assemble fits all stretches of the curve and joins them with the dwells.

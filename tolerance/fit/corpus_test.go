@@ -227,7 +227,7 @@ func TestCorpusLines(t *testing.T) {
 	total, theory := 0.0, 0.0
 	for i := range uint64(specimens) {
 		s := generate(seed, i)
-		p, err := Lines(s.c, s.eps)
+		p, err := Lines(s.c, s.eps, Options{})
 		if err != nil {
 			t.Fatalf("seed %d %s: %v", seed, s.name, err)
 		}

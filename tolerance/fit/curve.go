@@ -44,6 +44,7 @@ type part struct {
 // run is a stretch of parts that follow each other.
 type run struct {
 	curve   Curve
+	options Options
 	parts   []part
 	samples []sample // growing t; at a part's boundary both sides
 	pins    []int    // indices into samples: where the curvature or tangent jumps, or the curve starts; the right side

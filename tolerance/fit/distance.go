@@ -6,7 +6,7 @@ import (
 	"lobewright/synth/plane"
 )
 
-// distance returns the largest distance of the curve from the chain: at the samples, and between
+// distance returns the largest distance of the curve from the chain, over the share of eps allowed there: at the samples, and between
 // them by cubics with the values and slopes at both. It is infinite when the curvature of an arc lies further
 // than swing outside the curve's along it and its neighbors: no parallel could be taken
 // of such a path.
@@ -38,9 +38,9 @@ func (f *fitter) distance(th thread, swing float64) float64 {
 		ranges[l] = ranges[l].with(s.K)
 		d, m := legs[l].gap(s.P, s.T)
 		if i > f.lo && m0*m < 0 {
-			worst = math.Max(worst, math.Abs(crest(d0, m0, d, m, f.s[i]-f.s[i-1])))
+			worst = math.Max(worst, math.Abs(crest(d0, m0, d, m, f.s[i]-f.s[i-1]))*math.Max(f.inv[i-1], f.inv[i]))
 		}
-		worst = math.Max(worst, math.Abs(d))
+		worst = math.Max(worst, math.Abs(d)*f.inv[i])
 		if i < f.hi {
 			f.real[i] = d
 		}

@@ -13,7 +13,7 @@ type fitter struct {
 	q      spline    // the present spline
 	w      []float64 // weight of each sample
 	lo, hi int       // the samples that count: all, or of a closed stretch one turn from x[0]
-	e      []float64 // q-goal at those, or the dwell's circle minus that beyond the outer knots
+	e      []float64 // (q-goal)·inv at those, or with the dwell's circle for q beyond the outer knots
 	peak   []float64 // largest |e| on each arc
 	out    [2]float64
 	max    float64
@@ -190,6 +190,7 @@ func (f *fitter) measure(q *spline) {
 			u := (f.s[i] - start) * inv
 			c := 1 - u
 			e := c*(c*v0+u*v1) + u*u*v2 - f.goal[i]
+			e *= f.inv[i]
 			f.e[i] = e
 			if e = math.Abs(e); !(e <= worst) {
 				worst = e
@@ -210,7 +211,7 @@ func (f *fitter) outside(from, to int, circle func(s float64) (q, slope float64)
 	worst := 0.0
 	for i := from; i < to; i++ {
 		q, _ := circle(f.s[i])
-		f.e[i] = q - f.goal[i]
+		f.e[i] = (q - f.goal[i]) * f.inv[i]
 		worst = math.Max(worst, math.Abs(f.e[i]))
 	}
 	return worst

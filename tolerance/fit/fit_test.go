@@ -166,7 +166,7 @@ func TestLines(t *testing.T) {
 			if name == "inch" {
 				eps /= 20
 			}
-			p, err := Lines(c, eps)
+			p, err := Lines(c, eps, Options{})
 			if err != nil {
 				t.Errorf("%s, %g um: %v", name, um, err)
 				continue
@@ -227,7 +227,7 @@ func TestRefuses(t *testing.T) {
 		if p, err := Arcs(c, 0.01, Options{}); err == nil {
 			t.Errorf("%s: arcs %v, no error", name, p)
 		}
-		if p, err := Lines(c, 0.01); err == nil {
+		if p, err := Lines(c, 0.01, Options{}); err == nil {
 			t.Errorf("%s: lines %v, no error", name, p)
 		}
 	}
@@ -264,7 +264,7 @@ func TestTheory(t *testing.T) {
 func BenchmarkLines(b *testing.B) {
 	c := cyc345(1, 0)
 	for b.Loop() {
-		if _, err := Lines(c, 0.002); err != nil {
+		if _, err := Lines(c, 0.002, Options{}); err != nil {
 			b.Fatal(err)
 		}
 	}

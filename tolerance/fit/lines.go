@@ -49,15 +49,16 @@ func vertexAt(f plane.Frame, t, s, off float64) vertex {
 // Lines returns a path of lines, closed when the curve is, within eps (a length) of the curve by the estimate
 // of dense samples, vertices up to eps off the curve. It runs with growing parameter;
 // Source as in Arcs. A corner of the curve gets a vertex of its own, and so do the ends of a straight piece. Errors as for Arcs.
-func Lines(c Curve, eps float64) (chain.Path, error) {
+func Lines(c Curve, eps float64, o Options) (chain.Path, error) {
 	pieces, err := validate(c, eps)
 	if err != nil {
 		return nil, err
 	}
-	r, err := newRun(c, partsOf(pieces), linesPer(eps), samplesPerLine)
+	r, err := newRun(c, partsOf(pieces), linesPer(eps), samplesPerLine*o.denser(pieces))
 	if err != nil {
 		return nil, err
 	}
+	r.options = o
 	eps *= lineShare
 	start := r.firstVertex(eps)
 	vs := []vertex{start}
@@ -80,9 +81,21 @@ func (r *run) firstVertex(eps float64) vertex {
 	off := 0.0
 	a, b := offsets(first.Frame, eps), offsets(last.Frame, eps)
 	if !isOpen(r.curve) && len(a) == 1 && len(b) == 1 && a[0] == b[0] && math.Abs(first.T.Cross(last.T)) < kinkAngle {
-		off = a[0] * eps
+		off = a[0] * eps * r.options.at(first.t)
 	}
 	return vertexAt(first.Frame, first.t, 0, off)
+}
+
+// denser is by how much samples lie closer for the least share of eps, from a look at every degree or so of
+// the pieces.
+func (o Options) denser(pieces []plane.Piece) float64 {
+	least := 1.0
+	for _, p := range pieces {
+		for j := range surveyed {
+			least = math.Min(least, o.at(at(p, j, surveyed)))
+		}
+	}
+	return 1 / math.Sqrt(least)
 }
 
 // corners returns the pins where the tangent jumps, and the ends of straight pieces.
@@ -116,7 +129,8 @@ func (r *run) chords(vs []vertex, end vertex, eps float64) ([]vertex, error) {
 // furthestVertex returns the next vertex of those whose chord from a is good.
 func (r *run) furthestVertex(a, end vertex, eps float64) (vertex, bool) {
 	f := r.frame(a.t)
-	guess := math.Min(1/linesPer(eps)(f), math.Cbrt(lineConstant*eps/math.Abs(f.DK)))
+	here := eps * r.options.at(a.t)
+	guess := math.Min(1/linesPer(here)(f), math.Cbrt(lineConstant*here/math.Abs(f.DK)))
 	if !(guess > 0) {
 		guess = end.s - a.s
 	}
@@ -128,9 +142,9 @@ func (r *run) furthestVertex(a, end vertex, eps float64) (vertex, bool) {
 		if t <= a.t || t >= end.t {
 			return false
 		}
-		g := r.frame(t)
-		for _, off := range offsets(g, eps) {
-			b := vertexAt(g, t, s, off*eps)
+		g, there := r.frame(t), eps*r.options.at(t)
+		for _, off := range offsets(g, there) {
+			b := vertexAt(g, t, s, off*there)
 			if r.straight(a, b, eps) {
 				good = true
 				if !found || s > best.s {
@@ -161,18 +175,19 @@ func (r *run) furthestVertex(a, end vertex, eps float64) (vertex, bool) {
 func (r *run) straight(a, b vertex, eps float64) bool {
 	v := b.p.Sub(a.p)
 	n := v.Left().Scale(1 / v.Norm())
-	limit := eps * (1 + 1e-9) // the vertices themselves are eps off
-	d0, m0, s0 := 0.0, 0.0, 0.0
+	d0, m0, s0, limit0 := 0.0, 0.0, 0.0, 0.0
 	lo, hi := r.after(a.t), r.after(b.t)
 	for i := lo; i < hi; i++ {
 		f := &r.samples[i]
 		d, m := f.P.Sub(a.p).Dot(n), f.T.Dot(n)
+		limit := eps * (1 + 1e-9) * r.options.at(f.t)  // the vertices themselves are eps off
 		if !(math.Abs(d) <= limit && f.T.Dot(v) > 0) { // also when a and b coincide
 			return false
 		}
-		if m0*m < 0 && i > lo && math.Abs(crest(d0, m0, d, m, f.s-s0)) > limit {
+		if m0*m < 0 && i > lo && math.Abs(crest(d0, m0, d, m, f.s-s0)) > math.Min(limit, limit0) {
 			return false
 		}
+		limit0 = limit
 		d0, m0, s0 = d, m, f.s
 	}
 	return true

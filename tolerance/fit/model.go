@@ -13,19 +13,21 @@ import (
 // the chain itself and correcting the goal (search.go).
 type model struct {
 	stretch
-	ss     []sample  // growing t and s; both sides of the parts' boundaries
-	s      []float64 // arc length of each sample, 0 at the stretch's start
-	f, df  []float64 // F and F' there
-	ds     []float64 // the length around it
-	u      []float64 // N* up to it, and a little more for flat places
-	k0     float64
-	length float64
-	count  float64   // N*
-	steps  []float64 // arc lengths inside the stretch where the curvature jumps, growing
-	anchor float64   // arc length where the curve starts when that is inside the stretch, else NaN
-	jumpA  bool      // the curvature jumps at the left border; closed: at the curve's start
-	jumpB  bool      // the curvature jumps at the right border
-	period int       // closed: number of samples of one turn
+	options Options
+	ss      []sample  // growing t and s; both sides of the parts' boundaries
+	s       []float64 // arc length of each sample, 0 at the stretch's start
+	f, df   []float64 // F and F' there
+	ds      []float64 // the length around it, times the square of inv: its plain weight in least squares
+	inv     []float64 // 1 over the share of eps allowed there
+	u       []float64 // N* up to it, and a little more for flat places
+	k0      float64
+	length  float64
+	count   float64   // N*
+	steps   []float64 // arc lengths inside the stretch where the curvature jumps, growing
+	anchor  float64   // arc length where the curve starts when that is inside the stretch, else NaN
+	jumpA   bool      // the curvature jumps at the left border; closed: at the curve's start
+	jumpB   bool      // the curvature jumps at the right border
+	period  int       // closed: number of samples of one turn
 }
 
 const (
@@ -33,9 +35,10 @@ const (
 	marginShare = 0.26 // closed: of a turn, what is repeated on either side of it
 )
 
-// newModel samples the stretch for a deviation eps; most is the curve's largest curvature.
-func newModel(st stretch, eps, most float64) (*model, error) {
-	m := &model{stretch: st, anchor: math.NaN()}
+// newModel samples the stretch for a deviation eps and the shares of it that are allowed; most is the curve's
+// largest curvature.
+func newModel(st stretch, eps, most float64, o Options) (*model, error) {
+	m := &model{stretch: st, options: o, anchor: math.NaN()}
 	if err := m.sample(eps, most); err != nil {
 		return nil, err
 	}
@@ -48,7 +51,7 @@ func newModel(st stretch, eps, most float64) (*model, error) {
 	n := len(m.s)
 	m.ds = make([]float64, n)
 	for i := range m.ds {
-		m.ds[i] = (m.s[min(i+1, n-1)] - m.s[max(i-1, 0)]) / 2
+		m.ds[i] = (m.s[min(i+1, n-1)] - m.s[max(i-1, 0)]) / 2 * m.inv[i] * m.inv[i]
 	}
 	return m, nil
 }
@@ -88,16 +91,25 @@ func (m *model) integrate() {
 
 // tally fills u and the count.
 func (m *model) tally(eps float64) {
-	density := arcsPer(eps)
-	m.u = make([]float64, len(m.s))
-	for i := 1; i < len(m.s); i++ {
-		m.u[i] = m.u[i-1] + (m.s[i]-m.s[i-1])*(density(m.ss[i-1].Frame)+density(m.ss[i].Frame))/2
+	density := m.arcsPer(eps)
+	m.u, m.inv = make([]float64, len(m.s)), make([]float64, len(m.s))
+	for i := range m.s {
+		m.inv[i] = 1 / m.options.at(m.ss[i].t)
+		if i > 0 {
+			m.u[i] = m.u[i-1] + (m.s[i]-m.s[i-1])*(density(m.ss[i-1])+density(m.ss[i]))/2
+		}
 	}
 	m.count = m.u[len(m.u)-1]
 	flat := flatTally * math.Max(m.count, 1) / m.length
 	for i := range m.u {
 		m.u[i] += flat * m.s[i]
 	}
+}
+
+// arcsPer says how many arcs a unit of length takes at a sample.
+func (m *model) arcsPer(eps float64) func(sample) float64 {
+	density := arcsPer(eps)
+	return func(s sample) float64 { return density(s.Frame) / math.Cbrt(m.options.at(s.t)) }
 }
 
 // mark finds the jumps and the anchor.
@@ -123,13 +135,13 @@ func (m *model) repeat() {
 	n := len(m.ss) - 1 // the last is the first again
 	m.period = n
 	old := *m
-	m.ss, m.s, m.f, m.df, m.u = nil, nil, nil, nil, nil
+	m.ss, m.s, m.f, m.df, m.u, m.inv = nil, nil, nil, nil, nil, nil
 	take := func(from, to int, turns float64) {
 		for i := from; i < to; i++ {
 			q := old.ss[i]
 			q.s, q.t = q.s+turns*m.length, q.t+turns*turnDegrees
 			m.ss, m.s, m.f, m.df = append(m.ss, q), append(m.s, q.s), append(m.f, old.f[i]), append(m.df, old.df[i])
-			m.u = append(m.u, old.u[i]+turns*old.u[n])
+			m.u, m.inv = append(m.u, old.u[i]+turns*old.u[n]), append(m.inv, old.inv[i])
 		}
 	}
 	take(sort.SearchFloat64s(old.s, (1-marginShare)*m.length), n, -1)

@@ -89,7 +89,7 @@ func TestOpenArcs(t *testing.T) {
 			if free, limit := len(p)-lines, 1.03*n+2+6.0/2; float64(free) > limit {
 				t.Errorf("%d arcs, limit %.2f", free, limit)
 			}
-			q, err := Lines(c, eps)
+			q, err := Lines(c, eps, Options{})
 			if err != nil {
 				t.Fatal(err)
 			}

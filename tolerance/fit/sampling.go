@@ -23,15 +23,15 @@ const (
 // grader fills the samples of a stretch in.
 type grader struct {
 	*model
-	density per     // arcs to a length
-	scale   float64 // samples to an arc
-	flat    float64 // arcs to a length for flat places
+	density func(sample) float64 // arcs to a length
+	scale   float64              // samples to an arc
+	flat    float64              // arcs to a length for flat places
 	survey  [][]sample
 }
 
 // sample fills ss.
 func (m *model) sample(eps, most float64) error {
-	g := grader{model: m, density: arcsPer(eps), survey: make([][]sample, len(m.parts))}
+	g := grader{model: m, density: m.arcsPer(eps), survey: make([][]sample, len(m.parts))}
 	count, length := 0.0, 0.0
 	for i, p := range m.parts {
 		ss := make([]sample, partIntervals+1)
@@ -57,7 +57,7 @@ func (m *model) sample(eps, most float64) error {
 	return nil
 }
 
-func (g *grader) mean(a, b sample) float64 { return (g.density(a.Frame) + g.density(b.Frame)) / 2 }
+func (g *grader) mean(a, b sample) float64 { return (g.density(a) + g.density(b)) / 2 }
 
 // feltFrom returns √(2·eps/|dk|), the length over which the jump dk of the curvature before part
 // i is felt, 0 when there is none.

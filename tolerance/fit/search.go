@@ -2,6 +2,7 @@ package fit
 
 import (
 	"math"
+	"slices"
 
 	"lobewright/tolerance/chain"
 )
@@ -23,8 +24,8 @@ const (
 )
 
 // fit fits one stretch with the fewest arcs it finds; most is the curve's largest curvature.
-func (st stretch) fit(eps, most float64) (chain.Path, error) {
-	m, err := newModel(st, eps, most)
+func (st stretch) fit(eps, most float64, o Options) (chain.Path, error) {
+	m, err := newModel(st, eps, most, o)
 	if err != nil {
 		return nil, err
 	}
@@ -32,7 +33,7 @@ func (st stretch) fit(eps, most float64) (chain.Path, error) {
 	least := st.least()
 	th, ok := f.fewest(max(int(m.count)-1, least), least, eps)
 	if !ok {
-		return st.tilted(eps)
+		return st.tilted(eps / slices.Max(m.inv))
 	}
 	return f.preferStart(th, eps).path(), nil
 }
@@ -127,7 +128,7 @@ func (f *fitter) correct() {
 	f.measure(&f.q)
 	for i := f.lo; i < f.hi; i++ {
 		// the curve lies real to the left of the chain, so the chain runs -real beside the curve
-		f.goal[i] += f.e[i] + f.real[i]
+		f.goal[i] += f.e[i]/f.inv[i] + f.real[i]
 	}
 	if f.closed {
 		for i := range f.goal {

@@ -26,6 +26,7 @@ type Error struct {
 type Sample struct {
 	At                           float64 // cam angle, degrees, t0 <= At < t0+360
 	Lift, Velocity, Acceleration float64 // length, per rad, per rad²
+	Element                      int     // which of the path's elements it is on, counted with growing cam angle; those shorter than rounding are passed over
 }
 
 const (
@@ -72,6 +73,7 @@ func Compare(r Follower, pitch chain.Path, lift Lift, t0 float64, junctions ...f
 	}
 	c := comparison{follower: r, lift: lift, t0: t0}
 	for i, s := range path {
+		c.element = i
 		for _, part := range parts(s, junctions) {
 			c.over(s, part[0], part[1])
 		}
@@ -148,6 +150,7 @@ type comparison struct {
 	lift     Lift
 	t0       float64
 	samples  []Sample
+	element  int // the present one
 	most     Error
 }
 
@@ -165,7 +168,7 @@ func (c *comparison) sample(s stretch, t float64) Sample {
 	at := c.wrap(t)
 	lift, v, a, _ := c.follower.at(s, t)
 	ds, dv, da := c.lift(at)
-	return Sample{at, lift - ds, v - dv, a - da}
+	return Sample{at, lift - ds, v - dv, a - da, c.element}
 }
 
 // over samples [lo, hi] of a stretch.

@@ -4,7 +4,6 @@ package tolerance
 
 import (
 	"fmt"
-	"math"
 )
 
 // Kind says how a share combines with the others.
@@ -15,11 +14,19 @@ const (
 	Variable Kind = "variable" // scatters from part to part: shares combine by root sum of squares
 )
 
-// Share is one source of error, as a half width normal to the contour, length.
+// Share is one source of error.
 type Share struct {
 	Source    string
-	HalfWidth float64
+	HalfWidth float64 // on the contour, normal to it, length; 0 for an error that is not the contour's, as the roller's
 	Kind      Kind
+	Wave      Wave
+	Normal    float64 // normal to what the follower runs on, length: HalfWidth for errors of the contour
+	Angle     float64 // of a share that is Shifted: the angle, radians
+}
+
+// OnContour is a share whose error is the contour's.
+func OnContour(source string, halfWidth float64, kind Kind, wave Wave) Share {
+	return Share{Source: source, HalfWidth: halfWidth, Kind: kind, Wave: wave, Normal: halfWidth}
 }
 
 // Rule says which of the three sums is held against the profile zone.
@@ -35,28 +42,19 @@ const (
 // combine statistically; all three sums are shown (H. A. Rothbart, ed., Cam Design
 // Handbook, McGraw-Hill 2004, p. 293).
 type Budget struct {
-	Shares                       []Share
-	WorstCase, RSS, FixedPlusRSS float64
-	Limit                        float64 // half the profile zone
-	Rule                         Rule
+	Shares []Share
+	Totals
+	Limit float64 // half the profile zone
+	Rule  Rule
 }
 
 // Sum adds the shares up against half the profile zone.
 func Sum(shares []Share, profile float64, rule Rule) Budget {
-	b := Budget{Shares: shares, Limit: profile / 2, Rule: rule}
-	fixed, squares, all := 0.0, 0.0, 0.0
-	for _, s := range shares {
-		b.WorstCase += s.HalfWidth
-		all += s.HalfWidth * s.HalfWidth
-		if s.Kind == Fixed {
-			fixed += s.HalfWidth
-		} else {
-			squares += s.HalfWidth * s.HalfWidth
-		}
+	widths := make([]float64, len(shares))
+	for i, s := range shares {
+		widths[i] = s.HalfWidth
 	}
-	b.RSS = math.Sqrt(all)
-	b.FixedPlusRSS = fixed + math.Sqrt(squares)
-	return b
+	return Budget{Shares: shares, Totals: Add(shares, widths), Limit: profile / 2, Rule: rule}
 }
 
 // Value returns the sum that the rule holds against the limit.
@@ -83,7 +81,7 @@ const largestChordShare = 0.1
 func Chord(others []Share, profile float64, rule Rule) (float64, error) {
 	top := largestChordShare * profile
 	fits := func(chord float64) bool {
-		return Sum(append([]Share{{"chord", chord, Fixed}}, others...), profile, rule).Pass()
+		return Sum(append([]Share{OnContour("chord", chord, Fixed, Blocks)}, others...), profile, rule).Pass()
 	}
 	if fits(top) {
 		return top, nil

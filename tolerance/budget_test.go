@@ -9,7 +9,7 @@ import (
 
 // A 3-4-5 triangle and a fixed share, added by hand.
 func TestSum(t *testing.T) {
-	b := tolerance.Sum([]tolerance.Share{{"chord", 0.002, tolerance.Fixed}, {"positioning", 0.003, tolerance.Variable}, {"runout", 0.004, tolerance.Variable}}, 0.020, tolerance.FixedPlusRSS)
+	b := tolerance.Sum([]tolerance.Share{tolerance.OnContour("chord", 0.002, tolerance.Fixed, tolerance.Turn), tolerance.OnContour("positioning", 0.003, tolerance.Variable, tolerance.Turn), tolerance.OnContour("runout", 0.004, tolerance.Variable, tolerance.Turn)}, 0.020, tolerance.FixedPlusRSS)
 	for _, c := range []struct {
 		name      string
 		got, want float64
@@ -29,7 +29,7 @@ func TestSum(t *testing.T) {
 }
 
 func TestChord(t *testing.T) {
-	machine := []tolerance.Share{{"positioning", 0.006, tolerance.Variable}, {"runout", 0.008, tolerance.Variable}}
+	machine := []tolerance.Share{tolerance.OnContour("positioning", 0.006, tolerance.Variable, tolerance.Turn), tolerance.OnContour("runout", 0.008, tolerance.Variable, tolerance.Turn)}
 	for _, c := range []struct {
 		profile float64
 		rule    tolerance.Rule

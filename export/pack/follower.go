@@ -164,6 +164,7 @@ func (j *job) runFollower() follow.Error {
 			continue
 		}
 		j.follows[w.file+w.curve] = r
+		worst.Lift = math.Max(worst.Lift, r.err.Lift)
 		if r.err.Acceleration > worst.Acceleration {
 			worst.Acceleration, worst.AccelerationAt = r.err.Acceleration, r.err.AccelerationAt
 		}

@@ -59,6 +59,7 @@ type job struct {
 	unknown  []gate.Finding // paths the follower cannot be run over
 	follows  map[string]run // what the follower does, by file and curve
 	budget   tolerance.Budget
+	felt     follow.Error // by the follower on the written paths: the largest of each error
 	fits     fits
 }
 
@@ -107,49 +108,11 @@ func (j *job) writeSmoothEnough() {
 			break
 		}
 	}
+	j.felt = worst
 	j.tellRefined(blocks, first, worst)
 	j.findings = append(j.findings, j.unknown...)
 	j.followerGates(worst)
 	j.drawToolPaths()
-}
-
-// allocate settles the chord tolerance and holds the budget against the profile zone.
-func (j *job) allocate() {
-	t := j.spec.Tolerance
-	rule := tolerance.Rule(t.Combine)
-	others := j.otherShares()
-	j.chord = t.Chord
-	if j.chord == 0 {
-		chord, err := tolerance.Chord(others, t.Profile, rule)
-		if err != nil || chord == 0 {
-			chord = t.Profile / 10 // the budget gate says that this does not fit
-		}
-		j.chord = chord
-	}
-	j.budget = tolerance.Sum(append([]tolerance.Share{{Source: "chord", HalfWidth: j.chord, Kind: tolerance.Fixed}}, others...), t.Profile, rule)
-	j.gates = append(j.gates, gate.Gate{
-		ID: "budget", Value: j.budget.Value(), Limit: j.budget.Limit, Unit: j.spec.Units.Short(),
-		CamAngle: math.NaN(), Polar: math.NaN(), Pass: j.budget.Pass(),
-		Text: "sum of the errors (" + string(rule) + ") against half the profile zone; reduce chord, take a better machine or a wider zone",
-	})
-}
-
-// otherShares are all errors but the chord's. The certified deviation already
-// holds the rounding of what is printed; the grid share is the half count by which
-// a control may round the points it interpolates.
-func (j *job) otherShares() []tolerance.Share {
-	shares := []tolerance.Share{{Source: "grid", HalfWidth: math.Pow10(-j.spec.Control.Decimals) / 2, Kind: tolerance.Fixed}}
-	if x := j.wallShift(); x > 0 {
-		shares = append(shares, tolerance.Share{Source: "shift", HalfWidth: x, Kind: tolerance.Fixed})
-	}
-	if m := j.spec.Tolerance.MachineTool; m != nil {
-		shares = append(shares,
-			tolerance.Share{Source: "resolution", HalfWidth: m.Resolution, Kind: tolerance.Variable},
-			tolerance.Share{Source: "positioning", HalfWidth: m.Positioning, Kind: tolerance.Variable},
-			tolerance.Share{Source: "runout", HalfWidth: m.Runout, Kind: tolerance.Variable},
-			tolerance.Share{Source: "tool", HalfWidth: m.Tool, Kind: tolerance.Variable})
-	}
-	return shares
 }
 
 // cuttable reports whether there is a contour to write: an undercut one is not

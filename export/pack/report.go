@@ -188,14 +188,6 @@ func (j *job) motionFacts() sheet.Motion {
 	return m
 }
 
-func (j *job) budgetFacts() sheet.Budget {
-	b := sheet.Budget{WorstCase: j.budget.WorstCase, RSS: j.budget.RSS, FixedPlusRSS: j.budget.FixedPlusRSS, Combine: string(j.budget.Rule), Limit: j.budget.Limit}
-	for _, s := range j.budget.Shares {
-		b.Shares = append(b.Shares, sheet.Share{Source: s.Source, HalfWidth: s.HalfWidth, Kind: string(s.Kind)})
-	}
-	return b
-}
-
 // deviationFacts turns left and right of travel with growing cam angle into outside and inside.
 func (j *job) deviationFacts(d certify.Deviation) sheet.Deviation {
 	out, in := d.Left, d.Right

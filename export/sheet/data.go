@@ -211,6 +211,19 @@ type Share struct {
 	Source    string  `json:"source"`
 	HalfWidth float64 `json:"half_width"` // length, plus or minus on the contour
 	Kind      string  `json:"kind"`       // "fixed" or "variable"
+
+	// What it makes of the follower's motion, largest absolute values around the turn.
+	Wave              string  `json:"wave"`               // how the error lies around the cam: "blocks", "turn", "parallel" or "shifted"
+	Lift              float64 `json:"lift"`               // lift unit
+	Acceleration      float64 `json:"acceleration"`       // per s²
+	AccelerationShare float64 `json:"acceleration_share"` // of the design's peak
+}
+
+// Totals are the three sums of one kind of figure.
+type Totals struct {
+	WorstCase    float64 `json:"worst_case"`
+	RSS          float64 `json:"rss"`
+	FixedPlusRSS float64 `json:"fixed_plus_rss"`
 }
 
 // Budget is the sum of the errors in three ways against profile/2.
@@ -219,7 +232,9 @@ type Budget struct {
 	WorstCase    float64 `json:"worst_case"`
 	RSS          float64 `json:"rss"`
 	FixedPlusRSS float64 `json:"fixed_plus_rss"`
-	Combine      string  `json:"combine"` // the one that is gated: "fixed+rss", "worst" or "rss"
+	Lift         Totals  `json:"lift"`         // of the shares' lift errors
+	Acceleration Totals  `json:"acceleration"` // of the shares' acceleration errors, per s²
+	Combine      string  `json:"combine"`      // the one that is gated: "fixed+rss", "worst" or "rss"
 	Limit        float64 `json:"limit"`
 }
 

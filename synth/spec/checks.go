@@ -47,6 +47,9 @@ func (r *reader) checkBody(s *Spec) {
 	if b := c.Bore; b != nil && b.Keyway != nil && r.ok("cam.bore.diameter", "cam.bore.keyway.width") && b.Keyway.Width >= b.Diameter {
 		r.faultAt("cam.bore.keyway.width", Fault{Found: figure(b.Keyway.Width), Allowed: "a keyway narrower than the bore, whose diameter is " + figure(b.Diameter)})
 	}
+	if t := s.Tolerance; t.Roller > 0 && s.Follower.RollerDiameter == 0 && r.ok("follower", "tolerance.roller") {
+		r.faultAt("tolerance.roller", Fault{Found: figure(t.Roller), Allowed: "the error of a roller: the follower " + s.Follower.Kind + " has none", Advice: "take the key out"})
+	}
 	prime := c.BaseRadius + s.Follower.RollerDiameter/2 + s.Follower.FaceRadius
 	if c.Kind != barrelCam && r.ok("follower", "cam.base_radius") && math.Abs(s.Follower.Offset) >= prime {
 		r.faultAt("follower.offset", Fault{Found: figure(s.Follower.Offset),

@@ -184,6 +184,8 @@ func toleranceTable() table[Tolerance] {
 		percentField(),
 		optional("velocity_step", "largest step of the follower's velocity on the written path, length/s", rate("s"), func(t *Tolerance) **float64 { return &t.VelocityStep }),
 		maybe("machine_tool", "errors of the machine tool, each plus or minus on the contour", machineTable(), func(t *Tolerance) **MachineTool { return &t.MachineTool }),
+		number("phase", "setting of the cam against its angular datum, plus or minus, degrees, default 0", span{noun: "an angle in degrees", lo: 0, hi: 10}, func(t *Tolerance) *float64 { return &t.Phase }),
+		number("roller", "error of the roller's diameter, plus or minus, length, default 0", orNoLength(), func(t *Tolerance) *float64 { return &t.Roller }),
 		choice("combine", "how the errors add up, default fixed+rss: chord and grid add, the others combine statistically", []string{"fixed+rss", "worst", "rss"}, nil,
 			func(t *Tolerance, w string) { t.Combine = w }),
 	}}

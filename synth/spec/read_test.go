@@ -110,7 +110,7 @@ func TestStarterOptionalKeys(t *testing.T) {
 	if diff := cmp.Diff(Limits{30, &back, &radius, &v, &a, &j, &wall}, s.Limits); diff != "" {
 		t.Errorf("limits (-want +got):\n%s", diff)
 	}
-	tolerance := Tolerance{0.02, 0.002, &share, &step, &MachineTool{0.0005, 0.003, 0.002, 0.002}, "fixed+rss", s.Tolerance.Place}
+	tolerance := Tolerance{0.02, 0.002, &share, &step, &MachineTool{0.0005, 0.003, 0.002, 0.002}, 0.01, 0.005, "fixed+rss", s.Tolerance.Place}
 	if diff := cmp.Diff(tolerance, s.Tolerance); diff != "" {
 		t.Errorf("tolerance (-want +got):\n%s", diff)
 	}

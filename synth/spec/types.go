@@ -201,7 +201,9 @@ type Tolerance struct {
 	Acceleration *float64 // share of the design's peak, 0.1 for 10%
 	VelocityStep *float64 // length/s
 	MachineTool  *MachineTool
-	Combine      string // "fixed+rss", "worst" or "rss"; default "fixed+rss"
+	Phase        float64 // degrees, plus or minus: setting of the cam against its angular datum
+	Roller       float64 // length, plus or minus: error of the roller's diameter
+	Combine      string  // "fixed+rss", "worst" or "rss"; default "fixed+rss"
 	Place        Place
 }
 

@@ -179,7 +179,8 @@ func (c hostile) run(t *testing.T, release []string) {
 	if !ok || used.Maxrss > mostKiB {
 		t.Errorf("%d KiB of memory", used.Maxrss)
 	}
-	if cpu := cmd.ProcessState.UserTime() + cmd.ProcessState.SystemTime(); cpu > 2*time.Second {
+	// A wheel that is off its hinges, not a stopwatch: alone each takes less than 2 s, and a busy machine doubles that.
+	if cpu := cmd.ProcessState.UserTime() + cmd.ProcessState.SystemTime(); cpu > 6*time.Second {
 		t.Errorf("%v of processor time", cpu)
 	}
 	if after, err := os.ReadDir(dir); err != nil || len(after) != len(before) {

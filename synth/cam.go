@@ -5,6 +5,7 @@ package synth
 
 import (
 	"math"
+	"sync"
 
 	"lobewright/synth/follower"
 	"lobewright/synth/motion"
@@ -20,6 +21,13 @@ type Cam struct {
 	zones    []motion.Zone
 	lift     lift
 	follower follower.Kind
+	made     *curves // nil: none are kept
+}
+
+// curves keeps the parallels that were asked for: their pieces take longer to compare than a point takes to evaluate.
+type curves struct {
+	lock sync.Mutex
+	of   map[float64]*Curve // by distance to the left of the pitch curve
 }
 
 // lift is the completed motion as series in the cam angle in degrees, by zone.
@@ -84,7 +92,7 @@ func Build(s *spec.Spec) (*Cam, error) {
 		m.cycle = m.cycle.Opened()
 	}
 	zones := m.cycle.Zones()
-	return &Cam{spec: s, completed: m, zones: zones, lift: zoneLift(zones), follower: f}, nil
+	return &Cam{spec: s, completed: m, zones: zones, lift: zoneLift(zones), follower: f, made: &curves{of: map[float64]*Curve{}}}, nil
 }
 
 // Cycle returns the completed motion.

@@ -105,8 +105,23 @@ const (
 	rateJump      = 1e-7 // of the rate's size, one more derivative lost
 )
 
-// curve builds the parallel of the pitch curve at a distance to the left of travel.
+// curve returns the parallel of the pitch curve at a distance to the left of travel.
 func (c *Cam) curve(left float64) *Curve {
+	if c.made == nil {
+		return c.build(left)
+	}
+	c.made.lock.Lock()
+	defer c.made.lock.Unlock()
+	p := c.made.of[left]
+	if p == nil {
+		p = c.build(left)
+		c.made.of[left] = p
+	}
+	return p
+}
+
+// build makes the parallel of the pitch curve.
+func (c *Cam) build(left float64) *Curve {
 	zones := c.zones
 	p := &Curve{cam: c, left: left, pieces: make([]plane.Piece, len(zones))}
 	for i, z := range zones {

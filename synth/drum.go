@@ -109,7 +109,7 @@ func (c *Cam) ToolAxis(t DrumTool) *Curve {
 	if t.Side != 0 && t.Radius < c.inset() {
 		left = float64(t.Side) * c.outward() * c.inset()
 	}
-	p := c.curve(left)
+	p := c.build(left)
 	p.tool = &t
 	for i := 1; i < len(p.pieces); i++ {
 		p.pieces[i].Jump = jump(p.At(i-1, p.pieces[i-1].To), p.At(i, p.pieces[i].From), c.size())

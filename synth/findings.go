@@ -106,7 +106,7 @@ func (c *Cam) harmfulOffset() *gate.Finding {
 	if err != nil {
 		return nil
 	}
-	without.follower = f
+	without.follower, without.made = f, nil
 	have, none := worst(c), worst(&without)
 	if have <= none {
 		return nil

@@ -180,7 +180,7 @@ func (z *sizer) settle(out *Sizing) error {
 // the motion depends on.
 func (c *Cam) with(s *spec.Spec) (*Cam, error) {
 	out := *c
-	out.spec = s
+	out.spec, out.made = s, &curves{of: map[float64]*Curve{}}
 	var err error
 	out.follower, err = newFollower(s)
 	return &out, err

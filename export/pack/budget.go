@@ -87,9 +87,9 @@ func (j *job) answers() []tolerance.Answer {
 		tiny = 1e-4 // of the prime radius: the error that is tried
 		wide = 0.25 // degrees between values whose differences are taken
 	)
-	n := tiny * j.size()
+	n, pitch := tiny*j.size(), j.cam.Pitch()
 	gain := func(zone int, t float64) float64 {
-		f := j.cam.Pitch().At(zone, t)
+		f := pitch.At(zone, t)
 		up, down := f, f
 		up.P, down.P = f.P.Add(f.T.Left().Scale(n)), f.P.Add(f.T.Left().Scale(-n))
 		up.K, down.K = f.K/(1-n*f.K), f.K/(1+n*f.K)

@@ -84,7 +84,10 @@ func (j *job) footNear(c *synth.Curve, p plane.Point, deg float64) float64 {
 		f := c.At(zone, t)
 		zone, t = j.cam.Cycle().Zone(deg + h)
 		speed := c.At(zone, t).P.Dist(f.P) / h
-		deg += p.Sub(f.P).Dot(f.T) / speed
+		step := p.Sub(f.P).Dot(f.T) / speed
+		if deg += step; math.Abs(step) < h {
+			break // the next step is the square of this one
+		}
 	}
 	return deg
 }

@@ -157,11 +157,11 @@ func (t *summary) paths() {
 
 func (t *summary) blocks(lines, arcs int, theory *float64, floor *int) {
 	t.row("blocks", fmt.Sprintf("%d (%d lines, %d arcs)", lines+arcs, lines, arcs))
-	least := "not computed"
-	if floor != nil {
-		least = fmt.Sprint(*floor)
+	if floor == nil {
+		t.row("in theory", maybe(theory, largeFigures))
+		return
 	}
-	t.row("theory, proven floor", maybe(theory, largeFigures)+", "+least)
+	t.row("proven floor", fmt.Sprintf("no chain of lines and arcs within %g %s has fewer than %d (in theory about %s)", t.r.Tolerance.Chord, t.r.short(), *floor, maybe(theory, largeFigures)))
 }
 
 func (t *summary) deviation(d Deviation) {

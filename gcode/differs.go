@@ -54,7 +54,8 @@ type said struct {
 	x, y, z int64
 	r       int64
 	knownR  bool
-	knownXY bool
+	knownX  bool
+	knownY  bool
 	knownZ  bool
 	moves   []read.Move
 	misc    []read.Misc
@@ -124,7 +125,7 @@ func (s *said) move(b Block) {
 	if !b.X.On && !b.Y.On && !b.Z.On && !b.R.On {
 		return
 	}
-	m := read.Move{State: s.state, HasXY: b.X.On || b.Y.On, HasZ: b.Z.On, KnownXY: s.knownXY, KnownZ: s.knownZ,
+	m := read.Move{State: s.state, HasXY: b.X.On || b.Y.On, HasZ: b.Z.On, KnownXY: s.knownX && s.knownY, KnownZ: s.knownZ,
 		From: s.point(s.x, s.y), FromZ: s.value(s.z), HasR: b.R.On, KnownR: s.knownR, FromR: s.degrees(s.r)}
 	if m.Tool < 0 {
 		m.Tool = s.pending
@@ -146,7 +147,7 @@ func (s *said) move(b Block) {
 			*a.at = a.word.V
 		}
 	}
-	s.knownXY, s.knownZ = s.knownXY || m.HasXY, s.knownZ || m.HasZ
+	s.knownX, s.knownY, s.knownZ = s.knownX || b.X.On, s.knownY || b.Y.On, s.knownZ || m.HasZ
 	m.To, m.ToZ, m.ToR = s.point(s.x, s.y), s.value(s.z), s.degrees(s.r)
 	s.knownR = s.knownR || b.R.On
 	s.moves = append(s.moves, m)

@@ -265,7 +265,7 @@ func (p drumPlan) move(from, to station, z0, z1 int64, feed float64, first bool)
 	if z1 != z0 {
 		b.Z = count(z1)
 	}
-	b.F = count(max(1, counts(p.grid, feed/p.length(from, to, z0, z1))))
+	b.F = count(max(1, counts(p.grid, inverseTime(feed, p.length(from, to, z0, z1), p.m.InverseSeconds))))
 	p.add(b)
 }
 

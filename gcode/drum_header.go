@@ -49,7 +49,7 @@ func (p drumPlan) header() []string {
 			h = append(h, "SHIFTED BY THE ROTARY AXIS. THE TOOL STAYS ON CENTER")
 		}
 	}
-	h = append(h, "FEED "+m.text(op.Feed)+" AT THE OUTER RADIUS, IN INVERSE TIME G93: F IS ONE OVER THE MINUTES OF EACH MOVE")
+	h = append(h, "FEED "+m.text(op.Feed)+" AT THE OUTER RADIUS, IN INVERSE TIME G93: "+inverseText(m))
 	if last := op.Stock[len(op.Stock)-1]; last > 0 {
 		h = append(h, "NOT FINISHED. "+m.text(last)+" IS LEFT ON THE WALLS")
 	}

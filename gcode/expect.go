@@ -24,7 +24,9 @@ type Expect struct {
 	Eps          float64 // length: largest deviation of a cut, either way
 	CamClockwise bool
 	Curve        func(offset float64) Curve
-	Rotary       byte // letter of the rotary axis; 0 when there is none
+	Rotary       byte    // letter of the rotary axis; 0 when there is none
+	Turning      Turning // of a plate on a rotary and a radial axis
+	Grinds       bool    // a wheel, else a cutter
 	Compensation Compensation
 	Registers    []Register // what the D registers hold
 	Feed         float64    // length/min as written; 0 for none
@@ -83,6 +85,9 @@ func Expected(part Part, op Operation, m Machine, eps float64) Expect {
 		}
 	}
 	x.Clockwise, x.Radius, x.Tool, x.Speed = op.clockwise(), op.radius(), op.Tool, op.speed()
+	if op.Rotary != 0 && op.Process == Mill {
+		x.Rotary, x.Grinds, x.Turning = op.Rotary, op.Grinds, Turning{way: turningOf(part.CamClockwise, m), Speed: m.RotarySpeed, Rate: m.RotaryRate, Seconds: m.InverseSeconds, band: part.slideBand()}
+	}
 	x.PlungeFeed, x.SafeZ = written(op.PlungeFeed), written(m.SafeZ)
 	x.BlankDiameter, x.ClampRadius = part.BlankDiameter, part.ClampRadius
 	return x

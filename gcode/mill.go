@@ -44,6 +44,9 @@ func Plan(part Part, op Operation, m Machine) (Program, error) {
 	case Slot:
 		return planSlot(part, op, m)
 	}
+	if op.Rotary != 0 {
+		return planPolar(part, op, m)
+	}
 	return planMill(part, op, m)
 }
 

@@ -107,9 +107,15 @@ type Operation struct {
 	Breakthrough float64 // length the tool goes below the part; 0 for 1 mm or 0.04 inch
 	ContourFeed  bool    // Feed is held at the contour, else at the tool's center
 
-	// Barrel: letter of the rotary axis, and whether a narrow tool is shifted by it alone.
+	// Rotary is the letter of the rotary axis; 0 when there is none. A barrel: whether a narrow tool is shifted by it alone.
 	Rotary      byte
 	RotaryShift bool
+
+	// Spirals returns, of a plate that is milled or ground on a rotary and a radial axis, lines near the tool center's path
+	// parallel to the contour at offset, in the plane where X is the polar angle in radians times scale and Y the distance from the camshaft
+	// axis: one turn, in the direction of growing cam angle, every element with its Source.
+	Spirals func(offset float64) (path chain.Path, scale float64, err error)
+	Grinds  bool // a wheel, else a cutter
 
 	// Wire.
 	WireDiameter float64   // length
@@ -191,6 +197,8 @@ type Machine struct {
 	RotaryDecimals int     // 0 to 9, of degrees
 	RotaryTable    bool    // growing rotary words turn the work, else the tool about it, counterclockwise seen on the marked face
 	RotarySpeed    float64 // largest speed of the rotary axis, degrees/min; 0 when not limited
+	RotaryRate     float64 // largest acceleration of the rotary axis, degrees/s²; 0 when not limited
+	InverseSeconds bool    // F under G93 is the seconds of the move, else one over its minutes
 }
 
 func (m Machine) grid() chain.Grid { return chain.Grid{Decimals: m.Decimals} }

@@ -34,13 +34,27 @@ func Verify(p *read.Program, x Expect) (Result, error) {
 	if p == nil || x.Curve == nil || len(x.Cuts) == 0 || !(x.Eps > 0) {
 		return Result{}, fmt.Errorf("verify: a program, a curve, cuts and a positive Eps are needed")
 	}
+	if x.Rotary != 0 && x.Process == Mill {
+		return verifyPolar(p, x)
+	}
+	v := newVerifier(p, x)
+	v.run()
+	return v.res, nil
+}
+
+func newVerifier(p *read.Program, x Expect) *verifier {
 	contour := x.Curve(0)
-	v := &verifier{p: p, x: x, body: certify.Prepare(contour), outline: newOutline(contour), cleared: map[question]answer{}}
+	v := &verifier{p: p, x: x, body: certify.Prepare(contour), outline: newOutline(contour), cleared: map[question]answer{}, band: nearShare * x.Radius}
 	v.res.Clearance = math.Inf(1)
+	return v
+}
+
+// run holds everything in turn.
+func (v *verifier) run() {
 	v.count()
 	v.words()
 	v.mismatches()
-	switch x.Process {
+	switch v.x.Process {
 	case Wire:
 		v.wire()
 	case Slot:
@@ -49,9 +63,13 @@ func Verify(p *read.Program, x Expect) (Result, error) {
 		v.mill()
 	}
 	v.worst()
+	v.sort()
+}
+
+// sort brings the failures into the order of the file.
+func (v *verifier) sort() {
 	v.number()
 	sort.SliceStable(v.res.Failures, func(i, j int) bool { return v.res.Failures[i].Line < v.res.Failures[j].Line })
-	return v.res, nil
 }
 
 // verifier collects the verdicts on one program.
@@ -62,6 +80,7 @@ type verifier struct {
 	outline outline
 	cleared map[question]answer
 	both    []*certify.Body // the walls of a groove
+	band    float64         // length: a milled move this near to its cut's distance is part of it
 	res     Result
 }
 

@@ -26,6 +26,7 @@ type DrumExpect struct {
 	Room                 func(stock float64) float64
 	RotaryTable          bool
 	RotarySpeed          float64 // degrees/min; 0 when not limited
+	Seconds              bool    // F under G93 is seconds
 	OffCenter            bool
 }
 
@@ -33,7 +34,7 @@ type DrumExpect struct {
 // exact path at every depth.
 func ExpectedDrum(d Drum, op Operation, m Machine, eps float64) DrumExpect {
 	g := m.grid()
-	x := DrumExpect{Axis: d.Axis, Sense: d.sense(), Radius: d.Radius, Depth: d.Depth, RotaryTable: m.RotaryTable, RotarySpeed: m.RotarySpeed,
+	x := DrumExpect{Axis: d.Axis, Sense: d.sense(), Radius: d.Radius, Depth: d.Depth, RotaryTable: m.RotaryTable, RotarySpeed: m.RotarySpeed, Seconds: m.InverseSeconds,
 		Room: func(stock float64) float64 { return d.room(op, stock) }, OffCenter: !d.fills(op) && !op.RotaryShift}
 	x.Expect = Expect{Process: Slot, Number: op.programNumber(), Fluid: op.Coolant > 0, Inch: d.Inch, Eps: eps, CamClockwise: d.CamClockwise, Compensation: op.Compensation, Rotary: op.Rotary,
 		Feed: gridValue(g, op.Feed), FeedStep: g.Step(), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch, Radius: op.radius(), Tool: op.Tool, Speed: op.speed(),
@@ -167,12 +168,12 @@ func (v *drumVerifier) feed(m read.Move) {
 	if m.ToZ != m.FromZ {
 		asked = v.x.PlungeFeed
 	}
-	want := asked / v.length(m)
+	want := inverseTime(asked, v.length(m), v.x.Seconds)
 	const rounding = 1e-9
 	if math.Abs(m.Feed-want) > v.x.FeedStep+rounding*want {
 		v.fail("feed", m.Feed, want, nan(), m.LineNo, "F%g, expected F%.6g for this move at %g a minute", m.Feed, want, asked)
 	}
-	if speed := math.Abs(m.ToR-m.FromR) * m.Feed; v.x.RotarySpeed > 0 && speed > v.x.RotarySpeed {
+	if speed := math.Abs(m.ToR-m.FromR) / minutes(m.Feed, v.x.Seconds); v.x.RotarySpeed > 0 && speed > v.x.RotarySpeed {
 		v.fail("rotary-speed", speed, v.x.RotarySpeed, nan(), m.LineNo, "the rotary axis runs at %.6g degrees/min, it may at %.6g; take a lower feed", speed, v.x.RotarySpeed)
 	}
 	if m.Comp != read.Off {
@@ -348,17 +349,17 @@ func (v *drumVerifier) tally() {
 	if v.p.Inch {
 		rapid = RapidInch
 	}
-	minutes := 0.0
+	total := 0.0
 	for _, m := range v.p.Moves {
 		length := v.length(m)
 		switch {
 		case !m.KnownXY || !m.KnownZ || !m.KnownR:
 		case m.Kind == read.Rapid:
-			minutes += length / rapid
+			total += length / rapid
 		case m.Inverse && m.Feed > 0:
-			minutes += 1 / m.Feed
+			total += minutes(m.Feed, v.x.Seconds)
 		case m.Feed > 0:
-			minutes += length / m.Feed
+			total += length / m.Feed
 		}
 		if m.Kind != read.Rapid {
 			r.PathLength += length
@@ -371,7 +372,7 @@ func (v *drumVerifier) tally() {
 	if math.IsInf(r.ShortestMove, 1) {
 		r.ShortestMove = 0
 	}
-	r.Seconds = 60 * minutes
+	r.Seconds = 60 * total
 	if v.x.MaxBlocks > 0 && r.Blocks > v.x.MaxBlocks {
 		v.fail("block-count", float64(r.Blocks), float64(v.x.MaxBlocks), nan(), 0, "%d blocks, the control takes %d; allow a larger chord tolerance", r.Blocks, v.x.MaxBlocks)
 	}

@@ -127,7 +127,7 @@ func (v *verifier) millCut(group []read.Move, k int) {
 			v.fail("feed", m.Feed, want, nan(), m.LineNo, "the cut is fed at F%g, expected F%.6g", m.Feed, want)
 		}
 	}
-	r.first, r.last = v.followed(group, r.cut.Stock, nearShare*v.x.Radius)
+	r.first, r.last = v.followed(group, r.cut.Stock, v.band)
 	tool := r.cut.Offset - v.x.Eps
 	if r.first == r.last {
 		v.fail("coverage", 0, 360, nan(), line, "no move of this cut follows the contour at %.6g", r.cut.Offset)
@@ -156,16 +156,20 @@ func (v *verifier) around(c CutResult, r run) {
 }
 
 // followed returns the moves from the first to the last that keep about the distance
-// from the contour.
+// from the contour. What a line of the file says in several moves does so as a whole or not at all.
 func (v *verifier) followed(group []read.Move, distance, band float64) (first, last int) {
-	for i, m := range group {
-		if !v.near(m, distance, band) {
-			continue
+	for i := 0; i < len(group); {
+		next, near := i, true
+		for ; next < len(group) && group[next].LineNo == group[i].LineNo; next++ {
+			near = near && v.near(group[next], distance, band)
 		}
-		if last == 0 {
-			first = i
+		if near {
+			if last == 0 {
+				first = i
+			}
+			last = next
 		}
-		last = i + 1
+		i = next
 	}
 	return first, last
 }

@@ -49,7 +49,7 @@ func Vocabulary() spec.Vocabulary {
 		Laws:      motion.Names(),
 		Followers: followers(),
 		Cams:      []string{"plate", "groove", "barrel"},
-		Processes: []string{"mill", "wire"},
+		Processes: []string{"mill", "grind", "wire"},
 		ShareLaws: []string{"modified-constant-velocity"},
 
 		SymmetricLaws: motion.SymmetricNames(),

@@ -83,7 +83,7 @@ func (j *job) follower(w written) (run, error) {
 	if err != nil {
 		return run{}, fmt.Errorf("%s, %s: %w", w.file, w.curve, err)
 	}
-	lines, arcs := counts(w.path)
+	lines, arcs := w.blocks()
 	return run{e, samples, lines > arcs}, nil
 }
 
@@ -130,7 +130,7 @@ func (j *job) deviationChart(head svg.Head) svg.DeviationChart {
 		}
 	}
 	for _, p := range shown {
-		lines, arcs := counts(p.path)
+		lines, arcs := p.blocks()
 		d := svg.PathDeviation{Name: p.file + ", " + p.curve, Runs: j.trace(p.exact, p.path), Bound: p.deviation.Bound,
 			Blocks: fmt.Sprintf("%d arcs, %d lines", arcs, lines)}
 		if r, ok := j.follows[p.file+p.curve]; ok {

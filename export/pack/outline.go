@@ -38,6 +38,7 @@ type written struct {
 	deviation   certify.Deviation
 	theory      float64
 	floor       *int    // proven least number of arcs and lines within the chord tolerance; nil when none could be computed
+	spirals     int     // above 0: the path stands for so many moves of a rotary and a radial axis
 	toPitch     float64 // distance from path to pitch curve, to the left of its travel, length
 }
 

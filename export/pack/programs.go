@@ -36,6 +36,9 @@ func (p program) process() gcode.Process {
 	if p.expect.Process == gcode.Slot {
 		return gcode.Mill
 	}
+	if p.expect.Grinds {
+		return "grind"
+	}
 	return p.expect.Process
 }
 
@@ -156,15 +159,21 @@ func (j *job) proveProgram(p program, data []byte) (program, error) {
 	if p.result, err = gcode.Verify(back, p.expect); err != nil {
 		return p, fmt.Errorf("%s: %w", p.name, err)
 	}
-	kind := chain.Arc
-	if j.spec.Operations[p.index].Moves == "lines" {
-		kind = chain.Line
-	}
 	exact := j.toolPath(p.result.FinishOffset)
-	p.theory = fit.Theory(exact, j.chord, kind)
+	switch o := j.spec.Operations[p.index]; {
+	case o.Axes == "polar":
+		p.theory = j.leastSpirals(exact)
+	case o.Moves == "lines":
+		p.theory = fit.Theory(exact, j.chord, chain.Line)
+	default:
+		p.theory = fit.Theory(exact, j.chord, chain.Arc)
+	}
 	if loop, ok := oneTurn(p.result.Finish, math.Pow10(-j.spec.Control.Decimals)); ok {
 		p.finish = &written{file: p.name, curve: "last pass", exact: exact, path: loop, deviation: p.result.Deviation,
-			theory: p.theory, floor: j.floor(exact), toPitch: -exact.Left()}
+			theory: p.theory, toPitch: -exact.Left()}
+		if p.finish.spirals = p.spirals(); p.finish.spirals == 0 {
+			p.finish.floor = j.floor(exact)
+		}
 	}
 	return p, nil
 }
@@ -198,7 +207,8 @@ func (j *job) machine() gcode.Machine {
 	c := j.spec.Control
 	return gcode.Machine{Decimals: c.Decimals, AbsoluteArcs: c.AbsoluteArcs, ArcMismatch: c.ArcMismatch,
 		BlockNumbers: c.BlockNumbers, MaxBlocks: c.MaxBlocks, SafeZ: c.SafeZ,
-		RotaryDecimals: c.RotaryDecimals, RotaryTable: c.RotarySense == "table", RotarySpeed: c.RotarySpeed}
+		RotaryDecimals: c.RotaryDecimals, RotaryTable: c.RotarySense == "table", RotarySpeed: c.RotarySpeed,
+		RotaryRate: c.RotaryAcceleration, InverseSeconds: c.InverseSeconds}
 }
 
 func (j *job) part(op gcode.Operation, i int) gcode.Part {
@@ -235,6 +245,10 @@ func (j *job) operation(i int, eps float64) gcode.Operation {
 	}
 	if o.StartHole != nil {
 		op.StartHole = gcode.StartHole{Radius: o.StartHole.Radius, At: o.StartHole.At}
+	}
+	if o.Axes == "polar" {
+		j.polarAxes(&op, o, eps)
+		return op
 	}
 	if o.Moves == "lines" {
 		op.Path = func(offset float64) (chain.Path, error) { return fit.Lines(j.toolPath(offset), eps, j.rough.options()) }
@@ -312,7 +326,7 @@ func (j *job) programGates(p program) []gate.Gate {
 			continue
 		}
 		kinds[f.ID] = len(gates)
-		gates = append(gates, gate.Gate{ID: f.ID, Of: p.short(), Value: f.Value, Limit: f.Limit, Unit: u, AtLeast: f.Value < f.Limit, CamAngle: f.CamAngle, Polar: j.polarOf(f.CamAngle),
+		gates = append(gates, gate.Gate{ID: f.ID, Of: p.short(), Value: f.Value, Limit: f.Limit, Unit: failureUnit(f.ID, u), AtLeast: f.Value < f.Limit, CamAngle: f.CamAngle, Polar: j.polarOf(f.CamAngle),
 			Text: fmt.Sprintf("%s, line %d: %s", p.name, f.Line, f.Text)})
 	}
 	for i, n := range more {
@@ -323,6 +337,21 @@ func (j *job) programGates(p program) []gate.Gate {
 			Text: fmt.Sprintf("least margin of approaches, leads, plunges and rapids in %s to the finished contour, bore and clamp (line %d)", p.name, r.ClearanceLine)})
 	}
 	return gates
+}
+
+// failureUnit is the unit of a failure's value and limit; length is the part's.
+func failureUnit(id, length string) string {
+	switch id {
+	case "lead", "coverage":
+		return "deg"
+	case "rotary-speed":
+		return "deg/min"
+	case "rotary-acceleration":
+		return "deg/s²"
+	case "words", "feed":
+		return ""
+	}
+	return length
 }
 
 // judged reports whether a failure is already told by a gate of its own: a path that

@@ -198,6 +198,14 @@ func (j *job) deviationFacts(d certify.Deviation) sheet.Deviation {
 	return sheet.Deviation{Bound: math.Min(d.Bound, math.MaxFloat64), Outside: out, Inside: -in, CamAngle: sheet.Maybe(plane.Wrap360(d.At))}
 }
 
+// blocks counts what the path was written in: a move of two axes of different kinds is a line.
+func (w written) blocks() (lines, arcs int) {
+	if w.spirals > 0 {
+		return w.spirals, 0
+	}
+	return counts(w.path)
+}
+
 func counts(p chain.Path) (lines, arcs int) {
 	for _, e := range p {
 		if e.Kind == chain.Arc {
@@ -210,7 +218,7 @@ func counts(p chain.Path) (lines, arcs int) {
 }
 
 func (j *job) pathFacts(w written) sheet.Path {
-	lines, arcs := counts(w.path)
+	lines, arcs := w.blocks()
 	p := sheet.Path{File: w.file, Curve: w.curve, Lines: lines, Arcs: arcs, Theory: w.theory, SegmentsFloor: w.floor, Deviation: j.deviationFacts(w.deviation)}
 	if r, ok := j.follows[w.file+w.curve]; ok {
 		p.Follower = j.reported(r)
@@ -231,7 +239,20 @@ func (j *job) operationFacts(p program) sheet.Operation {
 	set := func(name, format string, args ...any) {
 		o.Setup = append(o.Setup, sheet.Fact{Name: name, Text: fmt.Sprintf(format, args...)})
 	}
-	set("Work zero", "X0 Y0 camshaft axis, angular datum at its polar angle, seen on the marked face; Z0 top of the blank")
+	carries := "turns the tool counterclockwise about the work"
+	if j.spec.Control.RotarySense == "table" {
+		carries = "turns the table with the work counterclockwise"
+	}
+	switch op.Axes {
+	case "polar":
+		set("Work zero", "X0 camshaft axis, X plus outwards through the tool; Z0 top of the blank; the radial axis goes through the camshaft axis")
+		set("Rotary axis", "%s0 with polar angle 0 under the tool; growing %s %s, seen on the marked face: the other sense is a mirrored cam", op.RotaryAxis, op.RotaryAxis, carries)
+	case "cylinder":
+		set("Work zero", "axial 0 datum end, plus towards the marked face; Z0 outer radius; the tool's axis radial")
+		set("Rotary axis", "%s0 with polar angle 0 under the tool; growing %s %s, seen on the marked face: the other sense is a mirrored cam", op.RotaryAxis, op.RotaryAxis, carries)
+	default:
+		set("Work zero", "X0 Y0 camshaft axis, angular datum at its polar angle, seen on the marked face; Z0 top of the blank")
+	}
 	set("Turning direction", "the camshaft turns %s", j.rotation())
 	if op.Process == "wire" {
 		o.NotFinished = false
@@ -240,7 +261,11 @@ func (j *job) operationFacts(p program) sheet.Operation {
 		set("Tab", "%g %s wide at polar angle %g°; clamp the part at the stop before it is cut", op.Tab.Width, u, op.Tab.At)
 	} else {
 		o.NotFinished = op.Stock[len(op.Stock)-1] > 0
-		set("Tool", "T%d, diameter %g %s, %g rpm, feed %g %s/min, plunge %g %s/min", op.Tool, op.ToolDiameter, u, op.SpindleSpeed, op.Feed, u, op.PlungeFeed, u)
+		tool := "Tool"
+		if op.Process == "grind" {
+			tool = "Wheel"
+		}
+		set(tool, "T%d, diameter %g %s, %g rpm, feed %g %s/min, plunge %g %s/min", op.Tool, op.ToolDiameter, u, op.SpindleSpeed, op.Feed, u, op.PlungeFeed, u)
 		set("Start", "cam angle %.4g°", j.startAt(op))
 	}
 	if b := j.spec.Blank; b != nil {

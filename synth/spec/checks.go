@@ -19,7 +19,7 @@ func (r *reader) check(s *Spec) {
 		r.checkPasses(path, s, &s.Operations[i])
 		r.checkNumber(path, s, i)
 		switch op := &s.Operations[i]; op.Process {
-		case "mill":
+		case "mill", "grind":
 			r.checkStock(path+".stock", op.Stock)
 		case "wire":
 			r.checkWire(path, s, op)
@@ -115,14 +115,18 @@ func (r *reader) checkNumber(path string, s *Spec, i int) {
 	}
 }
 
-// checkAxes: a barrel is milled on a rotary axis and one along it, whose sense must be told; other
-// cams are cut in the plane.
+// checkAxes: a barrel is milled on a rotary axis and one along it, a plate may be on a rotary and a radial one; the sense of either must be
+// told. Other cams are cut in the plane.
 func (r *reader) checkAxes(path string, s *Spec, op *Operation) {
 	drum := s.Cam.Kind == barrelCam
 	if op.Axes == "" {
-		op.Axes = "xy"
-		if drum {
+		switch {
+		case drum:
 			op.Axes = "cylinder"
+		case op.Process == "grind":
+			op.Axes = "polar"
+		default:
+			op.Axes = "xy"
 		}
 	}
 	if !r.ok("cam.kind", path+".process", path+".axes") {
@@ -134,10 +138,49 @@ func (r *reader) checkAxes(path string, s *Spec, op *Operation) {
 	case drum && op.Axes != "cylinder":
 		r.faultAt(path+".axes", Fault{Found: op.Axes + " on a barrel", Allowed: "cylinder"})
 	case !drum && op.Axes == "cylinder":
-		r.faultAt(path+".axes", Fault{Found: "cylinder on a cam of kind " + s.Cam.Kind, Allowed: "xy"})
-	case drum && s.Control.RotarySense == "" && r.ok("control", "control.rotary_sense"):
+		r.faultAt(path+".axes", Fault{Found: "cylinder on a cam of kind " + s.Cam.Kind, Allowed: allowedAxes(s, op)})
+	case op.Process == "grind" && s.Cam.Kind != plateCam:
+		r.faultAtKey(path, Fault{Found: "grind on a cam of kind " + s.Cam.Kind, Allowed: "grind on a plate"})
+	case op.Axes == "polar" && allowedAxes(s, op) == "xy":
+		r.faultAt(path+".axes", Fault{Found: "polar for " + op.Process + " on a cam of kind " + s.Cam.Kind, Allowed: "xy"})
+	case op.Process == "grind" && op.Axes != "polar":
+		r.faultAt(path+".axes", Fault{Found: op.Axes + " for grind", Allowed: "polar"})
+	case op.Axes != "xy" && s.Control.RotarySense == "" && r.ok("control", "control.rotary_sense"):
 		r.faultAtKey(path, Fault{Found: "a rotary axis whose sense is not told", Allowed: "control: {rotary_sense: tool} or {rotary_sense: table}",
 			Advice: "the wrong one is a mirrored cam, so there is no default: look at which way the table turns for a growing word"})
+	}
+	r.checkRotary(path, op)
+}
+
+// allowedAxes are those an operation may have on a cam that is no barrel.
+func allowedAxes(s *Spec, op *Operation) string {
+	switch {
+	case op.Process == "grind":
+		return "polar"
+	case op.Process == "mill" && s.Cam.Kind == plateCam:
+		return "xy or polar"
+	}
+	return "xy"
+}
+
+// checkRotary: the letter's default, and what a rotary axis cannot do.
+func (r *reader) checkRotary(path string, op *Operation) {
+	switch {
+	case op.RotaryAxis == "" && op.Axes == "polar":
+		op.RotaryAxis = "C"
+	case op.RotaryAxis == "":
+		op.RotaryAxis = "A"
+	case op.Axes == "cylinder" && op.RotaryAxis == "C":
+		r.faultAt(path+".rotary_axis", Fault{Found: "C on axes cylinder", Allowed: "A or B, which have a linear axis along them"})
+	}
+	if op.Axes != "polar" {
+		return
+	}
+	if op.Compensation != "path" && r.ok(path+".compensation") {
+		r.faultAt(path+".compensation", Fault{Found: op.Compensation + " on axes polar", Allowed: "path: a control compensates in its plane, and a rotary and a radial axis have none"})
+	}
+	if op.FeedAt == "contour" && r.ok(path+".feed_at") {
+		r.faultAt(path+".feed_at", Fault{Found: "contour on axes polar", Allowed: "center, or none: on axes polar the feed is held at the contour in any case", Advice: "take the key out"})
 	}
 }
 

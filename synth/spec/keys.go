@@ -218,31 +218,31 @@ func blankTable() table[Blank] {
 }
 
 func operationTable(v Vocabulary) table[Operation] {
-	const mill, wire = "mill", "wire"
-	fresh := Operation{RotaryAxis: "A", Shift: "parallel", Tool: 1, Compensation: "path", Direction: "climb", Moves: "arcs"}
+	const mill, wire, grind = "mill", "wire", "grind"
+	fresh := Operation{Shift: "parallel", Tool: 1, Compensation: "path", Direction: "climb", Moves: "arcs"}
 	return table[Operation]{what: "an operation", fresh: fresh, place: func(o *Operation, p Place) { o.Place = p },
 		kinds: v.Processes, name: "process", kind: byKey("process", v.Processes, everyProcess()),
 		fields: []field[Operation]{
 			kindKey("process", "how the contour is cut", v.Processes, func(o *Operation, w string) { o.Process = w }),
-			choice("axes", "axes of the machine: xy, or cylinder (a rotary axis and one along it, for barrels); default xy, for a barrel cylinder", []string{"xy", "cylinder"}, everyAxes(), func(o *Operation, w string) { o.Axes = w }),
-			choice("rotary_axis", "letter of the rotary axis on axes cylinder, default A (with X along it, Y across); B has Y along it and X across", []string{"A", "B"}, nil, func(o *Operation, w string) { o.RotaryAxis = w }).of(mill),
+			choice("axes", "axes of the machine: xy; polar (a rotary axis and a radial one, for plates); cylinder (a rotary axis and one along it, for barrels); default xy, of grind polar, of a barrel cylinder", everyAxes(), everyAxes(), func(o *Operation, w string) { o.Axes = w }),
+			choice("rotary_axis", "letter of the rotary axis: on axes polar default C; on axes cylinder default A (with X along it, Y across), or B with Y along it and X across", []string{"A", "B", "C"}, nil, func(o *Operation, w string) { o.RotaryAxis = w }).of(mill, grind),
 			choice("shift", "how a tool narrower than a barrel's groove is moved to its walls, default parallel: by the axial axis and one across it; rotary: by the axial and the rotary axis", []string{"parallel", "rotary"}, nil, func(o *Operation, w string) { o.Shift = w }).of(mill),
-			integer("tool", "tool number, default 1", 1, 9999, func(o *Operation) *int { return &o.Tool }).of(mill),
-			number("tool_diameter", "diameter of the cutter, length", length(), func(o *Operation) *float64 { return &o.ToolDiameter }).of(mill).required(),
-			number("spindle_speed", "spindle speed in rpm", rpm(), func(o *Operation) *float64 { return &o.SpindleSpeed }).of(mill).required(),
-			number("feed", "feed along the contour, length/min", perMinute(), func(o *Operation) *float64 { return &o.Feed }).of(mill).required(),
+			integer("tool", "tool number, default 1", 1, 9999, func(o *Operation) *int { return &o.Tool }).of(mill, grind),
+			number("tool_diameter", "diameter of the cutter or the wheel, length", length(), func(o *Operation) *float64 { return &o.ToolDiameter }).of(mill, grind).required(),
+			number("spindle_speed", "spindle speed in rpm", rpm(), func(o *Operation) *float64 { return &o.SpindleSpeed }).of(mill, grind).required(),
+			number("feed", "feed along the contour, length/min", perMinute(), func(o *Operation) *float64 { return &o.Feed }).of(mill, grind).required(),
 			number("feed", "feed along the contour, length/min; left out: the generator sets it, and the program has no F word", perMinute(), func(o *Operation) *float64 { return &o.Feed }).of(wire),
-			number("plunge_feed", "feed down into the blank, length/min", perMinute(), func(o *Operation) *float64 { return &o.PlungeFeed }).of(mill).required(),
+			number("plunge_feed", "feed down into the blank, length/min", perMinute(), func(o *Operation) *float64 { return &o.PlungeFeed }).of(mill, grind).required(),
 			number("step_down", "depth of a cut, length; left out: the full thickness at once", length(), func(o *Operation) *float64 { return &o.StepDown }).of(mill),
-			numbers("stock", "material left on the contour after each pass, length, not growing, last pass last", orNoLength(), func(o *Operation) *[]float64 { return &o.Stock }).of(mill).required(),
-			choice("direction", "direction of cutting, default climb", []string{"climb", "conventional"}, nil, func(o *Operation, w string) { o.Direction = w }).of(mill),
+			numbers("stock", "material left on the contour after each pass, length, not growing, last pass last", orNoLength(), func(o *Operation) *[]float64 { return &o.Stock }).of(mill, grind).required(),
+			choice("direction", "direction of cutting, default climb", []string{"climb", "conventional"}, nil, func(o *Operation, w string) { o.Direction = w }).of(mill, grind),
 			number("step_over", "widest cut of the passes that first take the blank down to the first stock, as a share of the tool's diameter; left out: no such passes", span{noun: "a share", lo: 0.02, hi: 1}, func(o *Operation) *float64 { return &o.StepOver }).of(mill),
-			integer("spring_passes", "how often the last pass is run again, default 0", 0, 9, func(o *Operation) *int { return &o.Spring }).of(mill),
-			number("overlap", "how far a pass runs past its start, degrees of cam angle, default 4", span{noun: "degrees", lo: 0.5, hi: 90}, func(o *Operation) *float64 { return &o.Overlap }).of(mill),
-			number("breakthrough", "how far the tool goes below the part, length, default 1 mm or 0.04 inch", length(), func(o *Operation) *float64 { return &o.Breakthrough }).of(mill),
+			integer("spring_passes", "how often the last pass is run again, default 0", 0, 9, func(o *Operation) *int { return &o.Spring }).of(mill, grind),
+			number("overlap", "how far a pass runs past its start, degrees of cam angle, default 4", span{noun: "degrees", lo: 0.5, hi: 90}, func(o *Operation) *float64 { return &o.Overlap }).of(mill, grind),
+			number("breakthrough", "how far the tool goes below the part, length, default 1 mm or 0.04 inch", length(), func(o *Operation) *float64 { return &o.Breakthrough }).of(mill, grind),
 			number("flute_length", "length of the cutting edges, held against the depth of the cut; left out: not checked", length(), func(o *Operation) *float64 { return &o.FluteLength }).of(mill),
 			choice("feed_at", "where the feed is held, default center: contour scales F on arcs by the radii of tool center and contour", []string{"center", "contour"}, nil, func(o *Operation, w string) { o.FeedAt = w }).of(mill),
-			choice("coolant", "coolant while cutting, default none: flood M8, mist M7", []string{"flood", "mist", "none"}, nil, func(o *Operation, w string) { o.Coolant = w }).of(mill),
+			choice("coolant", "coolant while cutting, default none: flood M8, mist M7", []string{"flood", "mist", "none"}, nil, func(o *Operation, w string) { o.Coolant = w }).of(mill, grind),
 			integer("program_number", "program number, the O word, default the operation's place in the list", 1, 9999, func(o *Operation) *int { return &o.Program }),
 			number("wire_diameter", "diameter of the wire, length", length(), func(o *Operation) *float64 { return &o.WireDiameter }).of(wire).required(),
 			numbers("offsets", "wire center to contour for each pass, length, falling, at least the wire's radius", length(), func(o *Operation) *[]float64 { return &o.Offsets }).of(wire).required(),
@@ -251,7 +251,7 @@ func operationTable(v Vocabulary) table[Operation] {
 			choice("compensation", "path: tool-center path written; wear: the same with G41/G42 and a small offset; control: contour written; default path", []string{"path", "wear", "control"}, nil,
 				func(o *Operation, w string) { o.Compensation = w }),
 			optional("start_at_cam_angle", "cam angle where the contour is entered, degrees; left out: middle of the longest low dwell, or where curvature changes least (a wire begins beside its tab)", camAngle(),
-				func(o *Operation) **float64 { return &o.StartAt }).of(mill),
+				func(o *Operation) **float64 { return &o.StartAt }).of(mill, grind),
 			choice("moves", "what the path is made of, default arcs (with lines)", []string{"arcs", "lines"}, nil, func(o *Operation, w string) { o.Moves = w }),
 		}}
 }
@@ -280,9 +280,11 @@ func controlTable() table[Control] {
 				func(c *Control) *float64 { return &c.ArcMismatch }),
 			flag("block_numbers", "number the blocks, default true", func(c *Control) *bool { return &c.BlockNumbers }),
 			integer("max_blocks", "most blocks of a program; left out: no limit", 1, 100_000_000, func(c *Control) *int { return &c.MaxBlocks }),
-			choice("rotary_sense", "what a growing rotary word turns counterclockwise, seen on the marked face: the tool about the work, or the table with the work; needed for axes cylinder, no default", []string{"tool", "table"}, nil,
+			choice("rotary_sense", "what a growing rotary word turns counterclockwise, seen on the marked face: the tool about the work, or the table with the work; needed for axes polar and cylinder, no default", []string{"tool", "table"}, nil,
 				func(c *Control, w string) { c.RotarySense = w }),
 			integer("rotary_decimals", "decimals of rotary words, default 3", 2, 6, func(c *Control) *int { return &c.RotaryDecimals }),
+			number("rotary_acceleration", "largest acceleration of the rotary axis, degrees/s2; left out: no limit", span{noun: "degrees/s2", lo: 0, hi: mostRate, above: true}, func(c *Control) *float64 { return &c.RotaryAcceleration }),
+			choice("inverse_time", "what F is under G93, default per_minute: one over the minutes of a move; seconds: its seconds", []string{"per_minute", "seconds"}, nil, func(c *Control, w string) { c.InverseSeconds = w == "seconds" }),
 			number("rotary_speed", "largest speed of the rotary axis, degrees/min; left out: no limit", span{noun: "degrees/min", lo: 0, hi: mostRate, above: true}, func(c *Control) *float64 { return &c.RotarySpeed }),
 			number("safe_z", "height of rapid moves above the top of the blank, length, default 5 mm or 0.2 inch", length(), func(c *Control) *float64 { return &c.SafeZ }),
 		}}

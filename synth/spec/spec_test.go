@@ -21,7 +21,7 @@ func vocabulary() Vocabulary {
 		HalfLaws:      []HalfLaw{{"simple-harmonic", math.Pi / 2}, {"cycloidal", 2}},
 		Followers:     everyFollower(),
 		Cams:          []string{"plate", "groove", "barrel"},
-		Processes:     []string{"mill", "wire"},
+		Processes:     []string{"mill", "grind", "wire"},
 		EndSpeeds: func(l Law) (start, end float64) {
 			switch l.Name {
 			case "constant-velocity":

@@ -227,7 +227,7 @@ type Blank struct {
 // Operation is one program.
 type Operation struct {
 	Process string // "mill", "grind" or "wire"
-	Axes    string // "xy" or "cylinder"; default "xy", of a barrel "cylinder"
+	Axes    string // "xy", "polar" or "cylinder"; default "xy", of grind "polar", of a barrel "cylinder"
 
 	Tool         int     // tool number, default 1
 	ToolDiameter float64 // length, mill and grind
@@ -239,7 +239,7 @@ type Operation struct {
 	Compensation string   // "path", "wear" or "control"; default "path"
 	Direction    string   // "climb" or "conventional"; default "climb"
 	StartAt      *float64 // start_at_cam_angle, degrees; nil for the default place
-	RotaryAxis   string   // letter of the rotary axis on axes cylinder; default "A"
+	RotaryAxis   string   // letter of the rotary axis; default "C" on axes polar, "A" on axes cylinder
 	Shift        string   // of a narrow tool in a barrel's groove: "parallel" or "rotary"; default "parallel"
 	Moves        string   // "arcs" or "lines"; default "arcs"
 	StepOver     float64  // share of the tool's diameter, of passes from the blank to the first stock; 0 when there are none
@@ -283,5 +283,8 @@ type Control struct {
 	RotarySense    string  // "tool" or "table"; empty when not given
 	RotaryDecimals int     // of degrees; default 3
 	RotarySpeed    float64 // degrees/min; 0 when not limited
-	Place          Place
+
+	RotaryAcceleration float64 // degrees/s²; 0 when not limited
+	InverseSeconds     bool    // F under G93 is seconds, else one over minutes
+	Place              Place
 }

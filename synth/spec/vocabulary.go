@@ -13,7 +13,7 @@ type Vocabulary struct {
 
 	Followers []string // available follower.kind
 	Cams      []string // available cam.kind
-	Processes []string // available operation processes: of "mill" and "wire"
+	Processes []string // available operation processes: of "mill", "grind" and "wire"
 
 	// EndSpeeds returns the velocity of a law at its two ends, per unit of lift
 	// and unit of angle: 0, 0 for a law that starts and ends at rest, 1, 1 for

@@ -30,7 +30,8 @@ func isOpen(c Curve) bool {
 // sample is the curve at one parameter. s is the arc length from the start of the run.
 type sample struct {
 	plane.Frame
-	t, s float64
+	t, s  float64
+	share float64 // of eps; set in runs of lines
 }
 
 // part is a piece of the curve as a run sees it: its parameter is the curve's plus

@@ -59,6 +59,9 @@ func Lines(c Curve, eps float64, o Options) (chain.Path, error) {
 		return nil, err
 	}
 	r.options = o
+	for i := range r.samples {
+		r.samples[i].share = o.at(r.samples[i].t)
+	}
 	eps *= lineShare
 	start := r.firstVertex(eps)
 	vs := []vertex{start}
@@ -180,7 +183,7 @@ func (r *run) straight(a, b vertex, eps float64) bool {
 	for i := lo; i < hi; i++ {
 		f := &r.samples[i]
 		d, m := f.P.Sub(a.p).Dot(n), f.T.Dot(n)
-		limit := eps * (1 + 1e-9) * r.options.at(f.t)  // the vertices themselves are eps off
+		limit := eps * (1 + 1e-9) * f.share            // the vertices themselves are eps off
 		if !(math.Abs(d) <= limit && f.T.Dot(v) > 0) { // also when a and b coincide
 			return false
 		}

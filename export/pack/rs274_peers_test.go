@@ -28,7 +28,7 @@ type canon struct {
 	n           int // block number
 	kind        read.Kind
 	x, y, z     float64
-	a, b        float64 // rotary axes, degrees
+	a, b, c     float64 // rotary axes, degrees
 	cx, cy, rot float64
 }
 
@@ -55,7 +55,7 @@ func canonical(t *testing.T, out []byte) []canon {
 		if m := straight.FindStringSubmatch(line); m != nil {
 			n, _ := strconv.Atoi(m[1])
 			f := numbers(m[3])
-			c := canon{n: n, kind: read.Line, x: f[0], y: f[1], z: f[2], a: f[3], b: f[4]}
+			c := canon{n: n, kind: read.Line, x: f[0], y: f[1], z: f[2], a: f[3], b: f[4], c: f[5]}
 			if m[2] == "TRAVERSE" {
 				c.kind = read.Rapid
 			}
@@ -141,7 +141,7 @@ func compareMotion(t *testing.T, p program, back *read.Program, got []canon) int
 		if c.kind != m.Kind || math.Abs(c.x-m.To.X) > printed || math.Abs(c.y-m.To.Y) > printed || m.KnownZ && math.Abs(c.z-m.ToZ) > printed {
 			t.Fatalf("%s, line %d: we read %v, the interpreter %+v", p.name, m.LineNo, m, c)
 		}
-		if r := map[byte]float64{'A': c.a, 'B': c.b}[back.Rotary]; back.Rotary != 0 && math.Abs(r-m.ToR) > printed {
+		if r := map[byte]float64{'A': c.a, 'B': c.b, 'C': c.c}[back.Rotary]; back.Rotary != 0 && math.Abs(r-m.ToR) > printed {
 			t.Fatalf("%s, line %d: we read %v, the interpreter turns to %g", p.name, m.LineNo, m, r)
 		}
 		if m.Kind == read.Arc && (math.Abs(c.cx-m.Center.X) > printed || math.Abs(c.cy-m.Center.Y) > printed || (c.rot > 0) != m.CCW) {

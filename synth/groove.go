@@ -26,14 +26,39 @@ func (c *Cam) grooveGates() []gate.Gate {
 		Pass: floor > 0 && floor >= limit, Text: "material under the groove: take a thicker body or a shallower groove"}}
 }
 
+// LargestTool is the largest cutter, wheel or wire that touches the contour everywhere; in a groove, that fits it everywhere.
+type LargestTool struct {
+	Diameter float64 // length; +Inf when any does
+	CamAngle float64 // degrees, where it would not reach; NaN when any does, and in a groove of its own width
+	Larger   float64 // diameter of a tool a quarter larger, length
+	Leaves   float64 // what that would leave there at most, length
+	LeavesAt float64 // degrees
+}
+
+// LargestTool returns the largest tool for the cam, and of a plate what a larger one would leave.
+func (c *Cam) LargestTool() LargestTool {
+	none := LargestTool{Diameter: math.Inf(1), CamAngle: math.NaN(), LeavesAt: math.NaN()}
+	if c.Grooved() {
+		half := c.inset()
+		hollow := c.Pitch().LeastDisc(true).Radius + half   // of the inner wall, seen from the groove
+		rounded := c.Pitch().LeastDisc(false).Radius + half // of the outer wall
+		none.Diameter = math.Min(c.GrooveWidth(), 2*math.Min(hollow, rounded))
+		return none
+	}
+	d := c.Contour().LeastDisc(true)
+	if math.IsInf(d.Radius, 1) {
+		return none
+	}
+	const quarterMore = 1.25
+	u := c.Contour().Leaves(quarterMore * d.Radius)
+	return LargestTool{Diameter: 2 * d.Radius, CamAngle: camAngle(d.At), Larger: 2 * quarterMore * d.Radius, Leaves: u.Depth, LeavesAt: camAngle(u.At)}
+}
+
 // slotGates: a groove is milled on its pitch curve, by a tool of its width or a narrower
 // one that then goes along both walls. A narrower tool must fit the inner wall's hollows and
 // the outer wall's.
 func (c *Cam) slotGates() []gate.Gate {
-	width, half := c.GrooveWidth(), c.inset()
-	hollow := c.Pitch().LeastDisc(true).Radius + half    // of the inner wall, seen from the groove
-	rounded := c.Pitch().LeastDisc(false).Radius + half  // of the outer wall
-	most := math.Min(width, 2*math.Min(hollow, rounded)) // largest tool
+	width, most := c.GrooveWidth(), c.LargestTool().Diameter
 	var g []gate.Gate
 	for i, op := range c.spec.Operations {
 		x := gate.Gate{ID: "reach", Of: fmt.Sprintf("%d-%s", i+1, op.Process), Value: op.ToolDiameter, Limit: most, Unit: c.unit(), CamAngle: math.NaN(), Polar: math.NaN(),

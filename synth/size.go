@@ -38,14 +38,16 @@ type Limit struct {
 
 // Sizing is the answer to "how small may this cam be".
 type Sizing struct {
-	BaseRadius float64 // smallest that meets every limit, length
-	Binds      string  // the limit that binds
-	Limits     []Limit // each limit
-	Rows       []SizingRow
-	Excluded   float64 // every base radius from the smallest sensible one to this one is proven to fail, length
-	Floor      float64 // the smallest sensible base radius: the bore's, or what offset or arm ask for, length
-	OffsetFree bool    // the offset was free, and is now BestOffset
-	BestOffset float64 // the offset the answer holds for, length: the spec's, or the one that allows the smallest base radius
+	BaseRadius               float64 // smallest that meets every limit, length
+	Binds                    string  // the limit that binds
+	Limits                   []Limit // each limit
+	Rows                     []SizingRow
+	Excluded                 float64 // every base radius from the smallest sensible one to this one is proven to fail, length
+	Floor                    float64 // the smallest sensible base radius: the bore's, or what offset or arm ask for, length
+	OffsetFree               bool    // the offset was free, and is now BestOffset
+	Scaled                   bool    // pivot and arm grew with the base radius, and are those that follow
+	ArmLength, PivotDistance float64 // length
+	BestOffset               float64 // the offset the answer holds for, length: the spec's, or the one that allows the smallest base radius
 }
 
 // SizingRow is one line of the trade-off.
@@ -59,23 +61,34 @@ type SizingRow struct {
 // largestSize is how many times the lift or the roller no cam is larger than.
 const largestSize = 1e4
 
-// Size finds the smallest base radius that meets the limits of the spec; pivot, arm and
+// Size finds the smallest base radius that meets the limits of the spec, a plate's or a groove's; pivot, arm and
 // face of a swinging follower stay where they are. A free offset becomes the one that allows the
-// smallest. Fails when limits.radius_of_curvature is not given, when the cam is no plate, and
+// smallest. Fails when limits.radius_of_curvature is not given, when the cam is a barrel, and
 // when no radius meets the limits.
-func Size(s *spec.Spec) (Sizing, error) {
+func Size(s *spec.Spec) (Sizing, error) { return size(s, 0) }
+
+// SizeScaled is Size with pivot, arm and face of a swinging follower in the proportion to the base radius that
+// they have in the spec. Fails also when the follower does not swing.
+func SizeScaled(s *spec.Spec) (Sizing, error) {
+	if !s.Follower.Swings() {
+		return Sizing{}, fmt.Errorf("%s:%d:%d: found follower.kind %s; allowed with pivot and arm in proportion: swinging-roller, swinging-flat", s.File, s.Follower.Place.Line, s.Follower.Place.Column, s.Follower.Kind)
+	}
+	return size(s, s.Cam.BaseRadius)
+}
+
+func size(s *spec.Spec, scaled float64) (Sizing, error) {
 	if s.Limits.RadiusOfCurvature == nil {
 		return Sizing{}, fmt.Errorf("%s:1:1: found no limits.radius_of_curvature; to size a cam give the least convex radius of the contour, for example limits: {radius_of_curvature: %g}",
 			s.File, exampleRadius(s))
 	}
-	if s.Cam.Kind != "plate" {
-		return Sizing{}, fmt.Errorf("%s:%d:%d: found cam.kind %s; allowed for sizing: plate", s.File, s.Cam.Place.Line, s.Cam.Place.Column, s.Cam.Kind)
+	if s.Cam.Kind != "plate" && s.Cam.Kind != "groove" {
+		return Sizing{}, fmt.Errorf("%s:%d:%d: found cam.kind %s; allowed for sizing: plate, groove", s.File, s.Cam.Place.Line, s.Cam.Place.Column, s.Cam.Kind)
 	}
 	c, err := startOfSizing(s)
 	if err != nil {
 		return Sizing{}, err
 	}
-	z, ok := newSizer(c, c.samples())
+	z, ok := newSizer(c, c.samples(), scaled)
 	if !ok {
 		return Sizing{}, fmt.Errorf("%s:%d:%d: found follower.kind %s; sizing does not know it", s.File, s.Follower.Place.Line, s.Follower.Place.Column, s.Follower.Kind)
 	}
@@ -132,7 +145,7 @@ func (z *sizer) size() (Sizing, error) {
 	if err := z.settle(&out); err != nil {
 		return out, err
 	}
-	from, to := standing(z.kind)
+	from, to := standing(z.kind, z.scaled)
 	for _, f := range []float64{0.7, 0.8, 0.9, 1, 1.1, 1.25, 1.5, 2} {
 		if r := f * base; r > from && r < to {
 			out.Rows = append(out.Rows, z.row(limits, r))
@@ -147,11 +160,20 @@ func (z *sizer) size() (Sizing, error) {
 func (z *sizer) settle(out *Sizing) error {
 	s := *z.cam.spec
 	s.Cam.BaseRadius = out.BaseRadius
+	if z.scaled > 0 {
+		unit := out.BaseRadius / z.scaled
+		s.Follower.ArmLength, s.Follower.PivotDistance = unit*s.Follower.ArmLength, unit*s.Follower.PivotDistance
+		s.Follower.Face.From, s.Follower.Face.To = unit*s.Follower.Face.From, unit*s.Follower.Face.To
+		out.Scaled, out.ArmLength, out.PivotDistance = true, s.Follower.ArmLength, s.Follower.PivotDistance
+	}
 	c, err := z.cam.with(&s)
 	if err != nil {
 		return err
 	}
 	gates := append([]gate.Gate{c.pressureGate(), *c.radiusGate(), c.undercutGate()}, append(c.kindGates(), c.reachGates()...)...)
+	if c.Grooved() {
+		gates = append(gates, c.grooveGates()[0])
+	}
 	if g := c.returnGate(); g != nil {
 		gates = append(gates, *g)
 	}
@@ -189,7 +211,7 @@ func (c *Cam) with(s *spec.Spec) (*Cam, error) {
 // floor is the smallest base radius that leaves room for the bore and on which the
 // follower can stand.
 func (z *sizer) floor() float64 {
-	from, _ := standing(z.kind)
+	from, _ := standing(z.kind, z.scaled)
 	f := from + sizeSlack*(math.Abs(from)+z.kind.Radius())
 	if b := z.cam.spec.Cam.Bore; b != nil {
 		f = math.Max(f, b.Diameter/2)
@@ -212,7 +234,7 @@ func (z *sizer) scale() float64 {
 }
 
 func (z *sizer) top() float64 {
-	_, to := standing(z.kind)
+	_, to := standing(z.kind, z.scaled)
 	return math.Min(to*(1-sizeSlack), largestSize*math.Max(z.scale(), z.cam.cycle.MaxLift()))
 }
 
@@ -231,7 +253,7 @@ func (z *sizer) row(limits []sizeLimit, base float64) SizingRow {
 		return -float64(x.turn / (x.q * x.q.Sqrt()))
 	})
 	if !face {
-		round = -1/round - z.kind.Radius()
+		round = -1/round - z.cam.inset()
 	}
 	return SizingRow{BaseRadius: base, PressureAngle: 0 - steep, ConvexRadius: round, Pass: z.met(limits, base)}
 }

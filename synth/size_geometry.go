@@ -18,6 +18,7 @@ type seen[T any] struct {
 	turn, q T // of a center: the pitch curve's curvature is turn/q^(3/2), positive convex
 	rho     T // of a face: the contour's radius of curvature, length, positive convex
 	touch   T // of a face: where it is touched, length
+	unit    T // what the linkage has grown by with the base radius: 1 when it stays
 }
 
 // mechanism is a follower seen as a function of the base radius alone, everything else
@@ -26,8 +27,9 @@ type seen[T any] struct {
 type mechanism[T any] func(base T, m moved[T]) seen[T]
 
 // mechanismOf returns the mechanism of a plate cam's follower; ok is false for a kind it
-// does not know.
-func mechanismOf[T taylor.Scalar[T]](k follower.Kind) (mechanism[T], bool) {
+// does not know. With scaled above 0, pivot, arm and face grow with the base radius and are the
+// follower's own at base radius scaled.
+func mechanismOf[T taylor.Scalar[T]](k follower.Kind, scaled float64) (mechanism[T], bool) {
 	switch f := k.(type) {
 	case follower.TranslatingRoller:
 		return onLine[T](f.Line, f.RollerRadius), true
@@ -38,9 +40,9 @@ func mechanismOf[T taylor.Scalar[T]](k follower.Kind) (mechanism[T], bool) {
 	case follower.TranslatingFlat:
 		return underFace[T](), true
 	case follower.SwingingRoller:
-		return onArm[T](f), true
+		return onArm[T](f, scaled), true
 	case follower.SwingingFlat:
-		return underSwing[T](f), true
+		return underSwing[T](f, scaled), true
 	}
 	return nil, false
 }
@@ -56,7 +58,7 @@ func onLine[T taylor.Scalar[T]](l follower.Line, radius float64) mechanism[T] {
 		u := p.Sub(e).Mul(p.Add(e)).Sqrt().Add(m.s)
 		w := m.v.Sub(e)
 		q := u.Mul(u).Add(w.Mul(w))
-		return seen[T]{n: w, d: u, turn: q.Add(w.Mul(m.v)).Sub(u.Mul(m.a)), q: q, rho: base.Of(0), touch: base.Of(0)}
+		return seen[T]{n: w, d: u, turn: q.Add(w.Mul(m.v)).Sub(u.Mul(m.a)), q: q, rho: base.Of(0), touch: base.Of(0), unit: base.Of(1)}
 	}
 }
 
@@ -65,7 +67,7 @@ func onLine[T taylor.Scalar[T]](l follower.Line, radius float64) mechanism[T] {
 func underFace[T taylor.Scalar[T]]() mechanism[T] {
 	return func(base T, m moved[T]) seen[T] {
 		zero := base.Of(0)
-		return seen[T]{n: zero, d: base.Of(1), turn: zero, q: zero, rho: base.Add(m.s).Add(m.a), touch: m.v}
+		return seen[T]{n: zero, d: base.Of(1), turn: zero, q: zero, rho: base.Add(m.s).Add(m.a), touch: m.v, unit: base.Of(1)}
 	}
 }
 
@@ -76,10 +78,11 @@ func underFace[T taylor.Scalar[T]]() mechanism[T] {
 //
 //	cos ψ0 = (C² + L² - Rp²)/(2 C L),  tan a = n/(C sin ψ),  Q = L²q² + C² - 2 C L q cos ψ
 //	curvature = (Q - L C ψ” sin ψ - σ L q ψ' n)/Q^(3/2)
-func onArm[T taylor.Scalar[T]](f follower.SwingingRoller) mechanism[T] {
+func onArm[T taylor.Scalar[T]](f follower.SwingingRoller, scaled float64) mechanism[T] {
 	sigma, l, c := f.Sense()*armSide(f.Above), f.ArmLength, f.PivotDistance
 	return func(base T, m moved[T]) seen[T] {
-		one, arm, pivot := base.Of(1), base.Of(l), base.Of(c)
+		one, unit := base.Of(1), grown(base, scaled)
+		arm, pivot := unit.Scale(l), unit.Scale(c)
 		p := base.Add(base.Of(f.RollerRadius))
 		square, less, more := p.Mul(p), pivot.Sub(arm), pivot.Add(arm)
 		twice := arm.Mul(pivot).Scale(2)
@@ -91,8 +94,16 @@ func onArm[T taylor.Scalar[T]](f follower.SwingingRoller) mechanism[T] {
 		n, d := lq.Sub(pivot.Mul(cos)), pivot.Mul(sin)
 		q := n.Mul(n).Add(d.Mul(d))
 		turn := q.Sub(arm.Mul(d).Mul(m.a)).Sub(lq.Mul(m.v).Mul(n).Scale(sigma))
-		return seen[T]{n: n, d: d, turn: turn, q: q, rho: base.Of(0), touch: base.Of(0)}
+		return seen[T]{n: n, d: d, turn: turn, q: q, rho: base.Of(0), touch: base.Of(0), unit: unit}
 	}
+}
+
+// grown is by what a linkage has grown with the base radius.
+func grown[T taylor.Scalar[T]](base T, scaled float64) T {
+	if scaled > 0 {
+		return base.Scale(1 / scaled)
+	}
+	return base.Of(1)
 }
 
 // underSwing is a face that swings about a pivot at distance C, f off its line. With μ the
@@ -103,10 +114,11 @@ func onArm[T taylor.Scalar[T]](f follower.SwingingRoller) mechanism[T] {
 //	radius of curvature = C cos μ - f + C/q² (ψ” sin μ/q - ψ'² cos μ)
 //
 // It holds for q above 0 only.
-func underSwing[T taylor.Scalar[T]](f follower.SwingingFlat) mechanism[T] {
+func underSwing[T taylor.Scalar[T]](f follower.SwingingFlat, scaled float64) mechanism[T] {
 	sigma, c := f.Sense()*armSide(f.Above), f.PivotDistance
 	return func(base T, m moved[T]) seen[T] {
-		pivot, off := base.Of(c), base.Of(f.FaceOffset)
+		unit, off := grown(base, scaled), base.Of(f.FaceOffset)
+		pivot := unit.Scale(c)
 		foot := base.Add(off)
 		cos0 := foot.Div(pivot)
 		sin0 := pivot.Sub(foot).Mul(pivot.Add(foot)).Sqrt().Div(pivot)
@@ -115,7 +127,7 @@ func underSwing[T taylor.Scalar[T]](f follower.SwingingFlat) mechanism[T] {
 		q := base.Of(1).Sub(m.v.Scale(sigma))
 		bent := m.a.Mul(ps).Div(q).Sub(m.v.Mul(m.v).Mul(pc)).Div(q.Mul(q))
 		zero := base.Of(0)
-		return seen[T]{n: off.Mul(q), d: ps, turn: zero, q: zero, rho: pc.Sub(off).Add(bent), touch: ps.Div(q)}
+		return seen[T]{n: off.Mul(q), d: ps, turn: zero, q: zero, rho: pc.Sub(off).Add(bent), touch: ps.Div(q), unit: unit}
 	}
 }
 
@@ -135,7 +147,10 @@ func outruns(k follower.Kind, v float64) bool {
 
 // standing returns the range of base radii, length, for which the follower can stand on the
 // base circle at all, both ends out.
-func standing(k follower.Kind) (from, to float64) {
+func standing(k follower.Kind, scaled float64) (from, to float64) {
+	if scaled > 0 {
+		return standingScaled(k, scaled)
+	}
 	switch f := k.(type) {
 	case follower.TranslatingRoller:
 		return math.Abs(f.Offset) - f.RollerRadius, math.Inf(1)
@@ -149,6 +164,29 @@ func standing(k follower.Kind) (from, to float64) {
 		return -f.PivotDistance - f.FaceOffset, f.PivotDistance - f.FaceOffset
 	}
 	return 0, math.Inf(1)
+}
+
+// standingScaled is standing where pivot and arm grow with the base radius.
+func standingScaled(k follower.Kind, scaled float64) (from, to float64) {
+	to = math.Inf(1)
+	switch f := k.(type) {
+	case follower.SwingingRoller: // |c-l|·Rb < Rb + r < (c+l)·Rb
+		apart, reach := math.Abs(f.PivotDistance-f.ArmLength)/scaled, (f.PivotDistance+f.ArmLength)/scaled
+		if apart > 1 {
+			to = f.RollerRadius / (apart - 1)
+		}
+		if reach <= 1 {
+			return 0, 0
+		}
+		from = f.RollerRadius / (reach - 1)
+	case follower.SwingingFlat: // -c·Rb < Rb + f < c·Rb
+		c := f.PivotDistance / scaled
+		if c <= 1 && f.FaceOffset >= 0 {
+			return 0, 0
+		}
+		from = math.Max(f.FaceOffset/(c-1), -f.FaceOffset/(c+1))
+	}
+	return from, to
 }
 
 // real is a plain number as a taylor.Scalar: a constant, without derivatives.

@@ -32,6 +32,9 @@ func sizedKinds() map[string]*spec.Spec {
 		s.Operations = []spec.Operation{{Process: "mill", ToolDiameter: 60, Stock: []float64{0}}}
 		s.Limits.PressureAngle = 50
 	}
+	groove := func(s *spec.Spec) {
+		s.Cam.Kind, s.Cam.GrooveDepth, s.Cam.Clearance, s.Cam.OutsideDiameter = "groove", 5, 0.05, 2000
+	}
 	return map[string]*spec.Spec{
 		"roller":       with(spec.Follower{Kind: "translating-roller", RollerDiameter: 20, Offset: 4}, false, nil),
 		"roller, tool": with(spec.Follower{Kind: "translating-roller", RollerDiameter: 20}, false, mill),
@@ -50,7 +53,14 @@ func sizedKinds() map[string]*spec.Spec {
 		"arm below":         with(spec.Follower{Kind: "swinging-roller", RollerDiameter: 20, ArmLength: 80, PivotDistance: 110, Below: true}, true, func(s *spec.Spec) { s.Limits.PressureAngle = 45 }),
 		"face above":        with(spec.Follower{Kind: "swinging-flat", PivotDistance: 120, FaceOffset: 5, Face: spec.Face{From: 40, To: 190}}, true, nil),
 		"face below":        with(spec.Follower{Kind: "swinging-flat", PivotDistance: 110, FaceOffset: -4, Face: spec.Face{From: 40, To: 190}, Below: true}, true, nil),
-		"face, contact":     with(spec.Follower{Kind: "swinging-flat", PivotDistance: 120, FaceOffset: 5, Face: spec.Face{From: 50, To: 112}, Below: true}, true, nil),
+		"groove":            with(spec.Follower{Kind: "translating-roller", RollerDiameter: 20, Offset: 4}, false, groove),
+		"groove, arm":       with(spec.Follower{Kind: "swinging-roller", RollerDiameter: 20, ArmLength: 70, PivotDistance: 95}, true, groove),
+		"groove, hollow": with(spec.Follower{Kind: "translating-roller", RollerDiameter: 90}, false, func(s *spec.Spec) {
+			groove(s)
+			least := 0.5
+			s.Limits.PressureAngle, s.Limits.RadiusOfCurvature = 85, &least
+		}),
+		"face, contact": with(spec.Follower{Kind: "swinging-flat", PivotDistance: 120, FaceOffset: 5, Face: spec.Face{From: 50, To: 112}, Below: true}, true, nil),
 	}
 }
 
@@ -64,6 +74,9 @@ func passes(t *testing.T, s *spec.Spec, base float64, reach bool) bool {
 		return false
 	}
 	gates := append(cam.kindGates(), cam.pressureGate(), *cam.radiusGate())
+	if cam.Grooved() {
+		gates = append(gates, cam.grooveGates()[0])
+	}
 	if g := cam.returnGate(); g != nil {
 		gates = append(gates, *g)
 	}
@@ -110,6 +123,39 @@ func TestSizeIsTight(t *testing.T) {
 		if !binds[id] {
 			t.Errorf("no case is decided by %s", id)
 		}
+	}
+}
+
+// With pivot and arm in proportion the answer passes its gates when they are, and a thousandth less, all in
+// proportion, fails one.
+func TestSizeScaledIsTight(t *testing.T) {
+	kinds := sizedKinds()
+	for _, name := range []string{"arm above", "arm below", "face above", "groove, arm"} {
+		s := kinds[name]
+		if strings.HasPrefix(name, "face") { // smaller ones are undercut in proportion
+			s.Cam.BaseRadius = 95
+		}
+		z, err := SizeScaled(s)
+		if err != nil {
+			t.Errorf("%s: %v", name, err)
+			continue
+		}
+		at := func(base float64) bool {
+			again, unit := *s, base/s.Cam.BaseRadius
+			again.Follower.ArmLength, again.Follower.PivotDistance = unit*s.Follower.ArmLength, unit*s.Follower.PivotDistance
+			again.Follower.Face = spec.Face{From: unit * s.Follower.Face.From, To: unit * s.Follower.Face.To}
+			return passes(t, &again, base, true)
+		}
+		if !z.Scaled || math.Abs(z.PivotDistance-z.BaseRadius/s.Cam.BaseRadius*s.Follower.PivotDistance) > 1e-9 {
+			t.Errorf("%s: pivot distance %v at base radius %v", name, z.PivotDistance, z.BaseRadius)
+		}
+		if !at(z.BaseRadius) || z.Binds != "bore or offset" && at(0.999*z.BaseRadius) {
+			t.Errorf("%s: base radius %v passes: %v; a thousandth less: %v", name, z.BaseRadius, at(z.BaseRadius), at(0.999*z.BaseRadius))
+		}
+		t.Logf("%s: %.6f in proportion, %s binds", name, z.BaseRadius, z.Binds)
+	}
+	if _, err := SizeScaled(kinds["flat"]); err == nil {
+		t.Error("a follower that does not swing has no pivot to scale")
 	}
 }
 
@@ -224,7 +270,7 @@ func TestMechanisms(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		z, ok := newSizer(c, nil)
+		z, ok := newSizer(c, nil, 0)
 		if !ok {
 			t.Fatal("cannot be sized")
 		}

@@ -22,7 +22,8 @@ func always(sizeSample) bool { return true }
 // limits lists what spec and follower limit. Falls count only when their limit is given.
 func (z *sizer) limits() []sizeLimit {
 	l := z.cam.spec.Limits
-	out := []sizeLimit{{"pressure-angle", func(p sizeSample) bool { return p.rises }, pressed[real](l.PressureAngle), pressed[taylor.I](l.PressureAngle)}}
+	grooved := z.cam.Grooved() // then the roller pulls as well as it pushes
+	out := []sizeLimit{{"pressure-angle", func(p sizeSample) bool { return p.rises || grooved && p.falls }, pressed[real](l.PressureAngle), pressed[taylor.I](l.PressureAngle)}}
 	if r := l.PressureAngleReturn; r != nil {
 		out = append(out, sizeLimit{"pressure-angle-return", func(p sizeSample) bool { return p.falls }, pressed[real](*r), pressed[taylor.I](*r)})
 	}
@@ -40,9 +41,12 @@ func (z *sizer) limits() []sizeLimit {
 		least := *l.RadiusOfCurvature
 		return append(out, sizeLimit{"radius-of-curvature", always, roundFace[real](least), roundFace[taylor.I](least)})
 	}
-	r := z.kind.Radius()
+	r := z.cam.inset() // of a groove half its width
 	around := *l.RadiusOfCurvature + r
 	out = append(out, sizeLimit{"radius-of-curvature", always, roundPitch[real](around), roundPitch[taylor.I](around)})
+	if grooved {
+		return append(out, sizeLimit{"undercut-outer", always, hollowPitch[real](r), hollowPitch[taylor.I](r)})
+	}
 	if hollow := z.largestTool() - r; hollow > 0 {
 		out = append(out, sizeLimit{"reach", always, hollowPitch[real](hollow), hollowPitch[taylor.I](hollow)})
 	}
@@ -91,7 +95,7 @@ func headed[T taylor.Scalar[T]](part float64) func(seen[T]) T {
 
 // touched holds the contact within half the face's length of its middle.
 func touched[T taylor.Scalar[T]](half, middle float64) func(seen[T]) T {
-	return func(x seen[T]) T { return x.touch.Of(half).Sub(absolute(x.touch.Sub(x.touch.Of(middle)))) }
+	return func(x seen[T]) T { return x.unit.Scale(half).Sub(absolute(x.touch.Sub(x.unit.Scale(middle)))) }
 }
 
 // swung: the swing must stay below that at which arm or face would lie on or square to

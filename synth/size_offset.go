@@ -112,7 +112,7 @@ func (z *sizer) withOffset(offset float64) (*sizer, error) {
 	if err != nil {
 		return nil, err
 	}
-	out, _ := newSizer(c, z.rows)
+	out, _ := newSizer(c, z.rows, z.scaled)
 	out.rough = z.rough
 	return out, nil
 }

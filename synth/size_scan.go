@@ -17,20 +17,22 @@ type sizeSample struct {
 
 // sizer holds a cam's motion, sampled, and its follower as a function of the base radius.
 type sizer struct {
-	cam   *Cam
-	kind  follower.Kind
-	rows  []sizeSample
-	float mechanism[real]
-	over  mechanism[taylor.I]
-	sides []float64 // margins of one pass, kept for the next
-	rough bool      // leave extremes as the samples have them
+	cam  *Cam
+	kind follower.Kind
+
+	scaled float64 // base radius at which pivot and arm are the spec's, when they grow with it; 0 when they stay
+	rows   []sizeSample
+	float  mechanism[real]
+	over   mechanism[taylor.I]
+	sides  []float64 // margins of one pass, kept for the next
+	rough  bool      // leave extremes as the samples have them
 }
 
 // newSizer returns ok false for a kind of follower that cannot be sized.
-func newSizer(c *Cam, rows []sizeSample) (z *sizer, ok bool) {
-	z = &sizer{cam: c, kind: c.follower, rows: rows, sides: make([]float64, len(rows))}
-	if z.float, ok = mechanismOf[real](c.follower); ok {
-		z.over, ok = mechanismOf[taylor.I](c.follower)
+func newSizer(c *Cam, rows []sizeSample, scaled float64) (z *sizer, ok bool) {
+	z = &sizer{cam: c, kind: c.follower, rows: rows, scaled: scaled, sides: make([]float64, len(rows))}
+	if z.float, ok = mechanismOf[real](c.follower, scaled); ok {
+		z.over, ok = mechanismOf[taylor.I](c.follower, scaled)
 	}
 	return z, ok
 }

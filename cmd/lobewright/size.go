@@ -15,8 +15,9 @@ func sizeCommand() *cli.Command {
 	return &cli.Command{
 		Name:      "size",
 		Usage:     "find the smallest base radius (and a free offset) that meets the limits; change nothing",
-		UsageText: "lobewright size SPEC [--json]\n\nExamples:\n   lobewright size samples/box-pusher.yaml\n   lobewright size samples/box-pusher.yaml --json",
-		Flags:     []cli.Flag{&cli.BoolFlag{Name: "json", Usage: "print JSON"}, tablesFlag()},
+		UsageText: "lobewright size SPEC [--json] [--scale-linkage]\n\nExamples:\n   lobewright size samples/box-pusher.yaml\n   lobewright size samples/box-pusher.yaml --json",
+		Flags: []cli.Flag{&cli.BoolFlag{Name: "json", Usage: "print JSON"},
+			&cli.BoolFlag{Name: "scale-linkage", Usage: "let pivot_distance, arm_length and face of a swinging follower grow with the base radius"}, tablesFlag()},
 		Action: func(c *cli.Context) error {
 			if c.NArg() != 1 {
 				return failure{statusInput, fmt.Errorf("lobewright size: found %d arguments; allowed: one spec", c.NArg())}
@@ -25,7 +26,11 @@ func sizeCommand() *cli.Command {
 			if err != nil {
 				return failure{statusInput, err}
 			}
-			z, err := synth.Size(s)
+			size := synth.Size
+			if c.Bool("scale-linkage") {
+				size = synth.SizeScaled
+			}
+			z, err := size(s)
 			if err != nil {
 				return failure{statusInput, err}
 			}
@@ -54,6 +59,8 @@ type sizeJSON struct {
 	Floor      float64       `json:"smallest_sensible"`
 	Limits     []sizeLimitJS `json:"limits"`
 	Offset     *float64      `json:"best_offset,omitempty"` // only of a free offset; found by search
+	Arm        *float64      `json:"arm_length,omitempty"`  // only with --scale-linkage
+	Pivot      *float64      `json:"pivot_distance,omitempty"`
 	Rows       []sizeRowJS   `json:"trade_off"`
 }
 
@@ -85,6 +92,9 @@ func sizeFacts(s *spec.Spec, z synth.Sizing) sizeJSON {
 	if z.OffsetFree {
 		out.Offset = &z.BestOffset
 	}
+	if z.Scaled {
+		out.Arm, out.Pivot = &z.ArmLength, &z.PivotDistance
+	}
 	for _, r := range z.Rows {
 		out.Rows = append(out.Rows, sizeRowJS(r))
 	}
@@ -96,6 +106,13 @@ func printSize(c *cli.Context, s *spec.Spec, z synth.Sizing) {
 	fmt.Fprintf(w, "%s: smallest base radius %.6g %s (the spec has %g); %s binds\n", s.Part, z.BaseRadius, u, s.Cam.BaseRadius, z.Binds)
 	if z.OffsetFree {
 		fmt.Fprintf(w, "with follower.offset %g %s: of the offsets tried (a scan, then golden section between the best one's neighbors) it allows the smallest base radius\n", z.BestOffset, u)
+	}
+	if z.Scaled {
+		fmt.Fprintf(w, "with pivot and arm in proportion: pivot_distance %.6g %s", z.PivotDistance, u)
+		if z.ArmLength > 0 {
+			fmt.Fprintf(w, ", arm_length %.6g %s", z.ArmLength, u)
+		}
+		fmt.Fprintln(w)
 	}
 	if z.Excluded > z.Floor {
 		if z.Excluded < z.BaseRadius*(1-undecided) {

@@ -6,6 +6,7 @@ import (
 	"encoding/hex"
 	"fmt"
 	"math"
+	"strings"
 	"slices"
 
 	"lobewright/export/sheet"
@@ -253,7 +254,8 @@ func (j *job) operationFacts(p program) sheet.Operation {
 	default:
 		set("Work zero", "X0 Y0 camshaft axis, angular datum at its polar angle, seen on the marked face; Z0 top of the blank")
 	}
-	set("Turning direction", "the camshaft turns %s", j.rotation())
+	set("View", "on the marked face, which is the Z0 face; a part cut from its back is mirrored")
+	set("Turning direction", "the camshaft turns %s, seen so", j.rotation())
 	if op.Process == "wire" {
 		o.NotFinished = false
 		set("Wire", "diameter %g %s", op.WireDiameter, u)
@@ -267,10 +269,24 @@ func (j *job) operationFacts(p program) sheet.Operation {
 		}
 		set(tool, "T%d, diameter %g %s, %g rpm, feed %g %s/min, plunge %g %s/min", op.Tool, op.ToolDiameter, u, op.SpindleSpeed, op.Feed, u, op.PlungeFeed, u)
 		set("Start", "cam angle %.4g°", j.startAt(op))
+		set("Stock", "left on the contour by the passes in turn: %s %s", strings.Trim(fmt.Sprint(j.stocks(p.index)), "[]"), u)
+	}
+	if !j.drum() {
+		big := j.cam.LargestTool()
+		o.LargestTool = sheet.Maybe(big.Diameter)
+		switch {
+		case math.IsInf(big.Diameter, 1):
+			set("Largest tool", "any diameter reaches every flank")
+		case big.Leaves > 0:
+			set("Largest tool", "diameter %.5g %s reaches every flank, bound at cam angle %.1f°; one of %.5g %s would leave %.3g %s at %.1f°", big.Diameter, u, big.CamAngle, big.Larger, u, big.Leaves, u, big.LeavesAt)
+		default:
+			set("Largest tool", "diameter %.5g %s", big.Diameter, u)
+		}
 	}
 	if b := j.spec.Blank; b != nil {
 		set("Blank", "diameter %g %s, clamp inside radius %g %s", b.Diameter, u, b.ClampRadius, u)
 	}
+	set("First part", "check zeros, registers and tool; run dry above the work, single block, low rapid, hand on feed hold; cut soft material; measure it by the inspection table; correct, then release")
 	for _, d := range p.plan.Registers {
 		o.Offsets = append(o.Offsets, sheet.Register{Name: fmt.Sprintf("D%d", d.Number), Value: d.Value, Text: d.Text})
 	}

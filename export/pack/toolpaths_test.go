@@ -8,6 +8,7 @@ import (
 	"testing"
 
 	"lobewright/export/dxf/read"
+	"lobewright/synth/plane"
 	"lobewright/tolerance/chain"
 )
 
@@ -34,7 +35,11 @@ func checkToolPaths(t *testing.T, j *job) {
 		op := j.spec.Operations[p.index]
 		if op.Compensation != "control" {
 			for _, e := range p.finish.path {
-				if !slices.Contains(file.Polylines[i].Points, e.From) {
+				on := func(q plane.Point) bool { return q == e.From }
+				if p.finish.spirals > 0 { // its joints are on a grid of angles and radii
+					on = func(q plane.Point) bool { return q.Dist(e.From) < 1e-6 }
+				}
+				if !slices.ContainsFunc(file.Polylines[i].Points, on) {
 					t.Errorf("joint %v of the program is not on %s", e.From, layer)
 				}
 			}

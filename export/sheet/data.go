@@ -181,6 +181,7 @@ type Operation struct {
 	Deviation   Deviation  `json:"deviation"`
 	Follower    *Follower  `json:"follower"`
 	NotFinished bool       `json:"not_finished"` // stock is left on purpose
+	LargestTool *float64   `json:"largest_tool"` // length, diameter of the largest that reaches everywhere; null when any does
 	Setup       []Fact     `json:"setup"`        // tool, zero, clamping, speed, feed, in words
 	Offsets     []Register `json:"offsets"`      // what the setter enters, one row a register
 	Passes      []Pass     `json:"passes"`

@@ -5,6 +5,7 @@ package tolerance_test
 import (
 	"fmt"
 	"math"
+	"sort"
 	"testing"
 	"time"
 
@@ -115,6 +116,12 @@ func TestPeerGEOS(t *testing.T) {
 	}
 	t.Logf("medians: GEOS takes %.1f times as many blocks as our arcs and %.2f times as many as our lines, is certified to %.2f of the tolerance, takes %.2f times as long as our arcs",
 		median(arcs), median(lines), median(deviation), median(quicker))
+}
+
+// median is the middle of values, the upper of two.
+func median(x []float64) float64 {
+	sort.Float64s(x)
+	return x[len(x)/2]
 }
 
 func geosVersion() string {

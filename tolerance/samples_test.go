@@ -4,7 +4,6 @@ import (
 	"math"
 	"os"
 	"path/filepath"
-	"sort"
 	"strings"
 	"testing"
 	"time"
@@ -59,11 +58,6 @@ func sampleCams(tb testing.TB) []sampleCam {
 		}
 	}
 	return all
-}
-
-func median(x []float64) float64 {
-	sort.Float64s(x)
-	return x[len(x)/2]
 }
 
 // fitted fits a curve and certifies what comes of it.

@@ -6,8 +6,8 @@ import (
 	"encoding/hex"
 	"fmt"
 	"math"
-	"strings"
 	"slices"
+	"strings"
 
 	"lobewright/export/sheet"
 	"lobewright/export/table"

@@ -9,6 +9,7 @@ import (
 	"strings"
 	"testing"
 
+	"lobewright/export/sheet"
 	"lobewright/synth"
 	"lobewright/synth/spec"
 )
@@ -92,6 +93,12 @@ func TestSamplesRelease(t *testing.T) {
 				wall := s.Cam.Kind == "barrel" && strings.HasSuffix(q.Curve, " wall") // no parallel of the roller's path
 				if d := q.Deviation; !(d.Bound <= p.Report.Tolerance.Chord && d.Outside <= d.Bound && -d.Inside <= d.Bound) || (q.Follower == nil) != wall {
 					t.Errorf("%s, %s: deviation %+v, follower %v", q.File, q.Curve, q.Deviation, q.Follower)
+				}
+				if spirals := slices.ContainsFunc(p.Report.Operations, func(o sheet.Operation) bool { return o.File == q.File && o.Axes == "polar" }); spirals {
+					if q.SegmentsFloor != nil || q.Arcs > 0 || float64(q.Lines) > 1.5*q.Theory {
+						t.Errorf("%s, %s: %d spirals, %g in theory, floor %v", q.File, q.Curve, q.Lines, q.Theory, q.SegmentsFloor)
+					}
+					continue
 				}
 				if q.SegmentsFloor == nil || *q.SegmentsFloor < 5 || *q.SegmentsFloor > q.Lines+q.Arcs {
 					t.Errorf("%s, %s: proven floor %v, %d lines and %d arcs", q.File, q.Curve, q.SegmentsFloor, q.Lines, q.Arcs)

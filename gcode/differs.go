@@ -2,6 +2,7 @@ package gcode
 
 import (
 	"fmt"
+	"math"
 
 	"lobewright/gcode/read"
 	"lobewright/synth/plane"
@@ -32,6 +33,14 @@ func Differs(p Program, back *read.Program) error {
 			return fmt.Errorf("read back: line %d makes the move %+v, written %+v", back.Moves[i].LineNo, got, s.moves[i])
 		}
 	}
+	if s.path != back.PathMode || s.blend != back.PathBlend {
+		return fmt.Errorf("read back: path mode G%d with P%g, written G%d with P%g", back.PathMode, back.PathBlend, s.path, s.blend)
+	}
+	for i := range max(len(s.own), len(back.Own)) {
+		if i >= len(s.own) || i >= len(back.Own) || s.own[i].Text != back.Own[i].Text || s.own[i].Before != back.Own[i].Before {
+			return fmt.Errorf("read back: lines of the user's own %v, written %v", back.Own, s.own)
+		}
+	}
 	for i := range max(len(s.misc), len(back.Misc)) {
 		if i >= len(s.misc) || i >= len(back.Misc) {
 			return fmt.Errorf("read back: %d M words, written %d", len(back.Misc), len(s.misc))
@@ -59,6 +68,20 @@ type said struct {
 	knownZ  bool
 	moves   []read.Move
 	misc    []read.Misc
+	own     []read.Own
+	path    int
+	blend   float64
+}
+
+// centerOf is the center of an arc of at most half a turn with a radius.
+func centerOf(from, to plane.Point, radius float64, ccw bool) plane.Point {
+	way := to.Sub(from)
+	half := way.Norm() / 2
+	side := math.Sqrt(math.Max(0, radius*radius-half*half))
+	if !ccw {
+		side = -side
+	}
+	return from.Add(way.Scale(0.5)).Add(way.Unit().Left().Scale(side))
 }
 
 // codes applies the G words that change a move.
@@ -113,6 +136,17 @@ func (s *said) block(b Block) {
 		}
 		s.misc = append(s.misc, read.Misc{Code: m, Before: len(s.moves)})
 	}
+	if b.Own != "" {
+		s.own = append(s.own, read.Own{Text: b.Own, Before: len(s.moves)})
+	}
+	for _, c := range b.G {
+		switch c {
+		case ExactPath:
+			s.path, s.blend = 61, 0
+		case Blend:
+			s.path, s.blend = 64, s.value(b.P.V)
+		}
+	}
 }
 
 func (s *said) value(v int64) float64 { return float64(v) / float64(counts(s.p.Grid, 1)) }
@@ -133,7 +167,9 @@ func (s *said) move(b Block) {
 	if b.Motion == Clockwise || b.Motion == Counterclockwise {
 		m.Kind, m.CCW = read.Arc, b.Motion == Counterclockwise
 		m.Center = s.point(b.I.V, b.J.V)
-		if !s.p.AbsoluteArcs {
+		if b.Round.On {
+			m.Center = centerOf(s.point(s.x, s.y), s.point(b.X.V, b.Y.V), s.value(b.Round.V), m.CCW)
+		} else if !s.p.AbsoluteArcs {
 			m.Center = s.point(s.x+b.I.V, s.y+b.J.V)
 		}
 	} else if b.Motion == Straight {

@@ -137,6 +137,8 @@ func PlanDrum(d Drum, op Operation, m Machine) (Program, error) {
 	p.whole = int64(math.Floor(float64(turn[0].r)/float64(round))) * round
 	e.p.Header = p.header()
 	e.add(Block{G: e.safety()})
+	e.pathMode()
+	e.own(m.Start...)
 	e.add(Block{T: number(op.Tool), M: []int{6}})
 	e.add(Block{S: number(op.speed()), M: op.on()})
 	if err := p.slot(); err != nil {
@@ -149,6 +151,7 @@ func PlanDrum(d Drum, op Operation, m Machine) (Program, error) {
 		}
 	}
 	e.add(Block{M: op.off()})
+	e.own(m.End...)
 	e.add(Block{G: e.safety()})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil

@@ -10,11 +10,12 @@ import (
 type emitter struct {
 	p    *Program
 	grid chain.Grid
+	m    Machine
 }
 
 func newEmitter(part Part, op Operation, m Machine) *emitter {
 	g := m.grid()
-	return &emitter{grid: g, p: &Program{Number: op.programNumber(), Inch: part.Inch, Grid: g, AbsoluteArcs: m.AbsoluteArcs, BlockNumbers: m.BlockNumbers}}
+	return &emitter{grid: g, m: m, p: &Program{Number: op.programNumber(), Inch: part.Inch, Grid: g, AbsoluteArcs: m.AbsoluteArcs, BlockNumbers: m.BlockNumbers, Semicolons: m.Semicolons, LineLength: m.Limits.Line}}
 }
 
 func (e *emitter) add(b Block) { e.p.Blocks = append(e.p.Blocks, b) }
@@ -65,7 +66,11 @@ func (e *emitter) chain(c chain.Chain, on Block, compensated bool) {
 			if s.CCW {
 				b.Motion = Counterclockwise
 			}
-			b.I, b.J = e.center(s)
+			if e.m.RadiusArcs {
+				b.Round = count(rounded(s))
+			} else {
+				b.I, b.J = e.center(s)
+			}
 		}
 		e.add(b)
 	}
@@ -77,6 +82,45 @@ func (e *emitter) center(s chain.Segment) (i, j Count) {
 		return count(s.Center.X), count(s.Center.Y)
 	}
 	return count(s.Center.X - s.From.X), count(s.Center.Y - s.From.Y)
+}
+
+// rounded is the radius of an arc in counts, at least half its chord.
+func rounded(s chain.Segment) int64 {
+	far := func(p chain.Point) float64 { return math.Hypot(float64(p.X-s.Center.X), float64(p.Y-s.Center.Y)) }
+	half := math.Hypot(float64(s.To.X-s.From.X), float64(s.To.Y-s.From.Y)) / 2
+	return max(int64(math.Round((far(s.From)+far(s.To))/2)), int64(math.Ceil(half)))
+}
+
+// own adds lines of the user's own.
+func (e *emitter) own(lines ...string) {
+	for _, l := range lines {
+		if l != "" {
+			e.add(Block{Own: l})
+		}
+	}
+}
+
+// modes adds what follows the first safety block: how arcs are written, the path mode, the user's own start.
+func (e *emitter) modes() {
+	if !e.m.RadiusArcs {
+		e.add(Block{G: []Code{e.arcMode()}})
+	}
+	e.pathMode()
+	e.own(e.m.Start...)
+}
+
+// pathMode adds what the control is to do at corners.
+func (e *emitter) pathMode() {
+	switch e.m.Path {
+	case Exact:
+		e.add(Block{G: []Code{ExactPath}})
+	case Blended:
+		b := Block{G: []Code{Blend}}
+		if e.m.PathBlend > 0 {
+			b.P = e.length(e.m.PathBlend)
+		}
+		e.add(b)
+	}
 }
 
 // arcMode returns the word that says what I and J are.
@@ -103,6 +147,7 @@ func sideCode(s float64) Code {
 }
 
 // snap puts a path with its leads on the grid.
-func snap(p chain.Path, g chain.Grid) (chain.Chain, error) {
-	return chain.Snap(p, g, chain.SnapOptions{})
+func snap(p chain.Path, m Machine) (chain.Chain, error) {
+	g, l := m.grid(), m.Limits
+	return chain.Snap(p, g, chain.SnapOptions{MaxRadius: l.Radius, MinChord: l.Chord / g.Step(), MaxSweep: l.Sweep * math.Pi / 180})
 }

@@ -34,7 +34,11 @@ type Expect struct {
 	ContourFeed  bool       // Feed is held at the contour: on arcs F is another
 	Fluid        bool       // the coolant is on while the tool cuts
 	MaxBlocks    int        // 0 when not limited
-	ArcMismatch  float64    // length
+	Limits       Limits
+	Path         PathMode
+	PathBlend    float64  // length
+	Own          []string // lines of the user's own, in order
+	ArcMismatch  float64  // length
 
 	// Cuts: for a mill every one in order; for a wire one a pass, wanted all
 	// around, in stretches that may come back and forth.
@@ -57,7 +61,7 @@ func Expected(part Part, op Operation, m Machine, eps float64) Expect {
 	g := m.grid()
 	written := func(x float64) float64 { return gridValue(g, x) }
 	x := Expect{Process: op.Process, Number: op.programNumber(), Fluid: op.Coolant > 0, ContourFeed: op.ContourFeed, Inch: part.Inch, Eps: eps, CamClockwise: part.CamClockwise, Curve: part.Curve,
-		Compensation: op.Compensation, Registers: registers(op), Feed: written(op.Feed), FeedStep: g.Step(), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch}
+		Compensation: op.Compensation, Registers: registers(op), Feed: written(op.Feed), FeedStep: g.Step(), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch, Limits: m.Limits, Path: m.Path, PathBlend: written(m.PathBlend), Own: ownLines(op, m)}
 	if op.Process == Wire {
 		for _, o := range op.Offsets {
 			x.Cuts = append(x.Cuts, Cut{Offset: o, Stock: writtenOffset(op.Compensation, o, o)})
@@ -91,6 +95,14 @@ func Expected(part Part, op Operation, m Machine, eps float64) Expect {
 	x.PlungeFeed, x.SafeZ = written(op.PlungeFeed), written(m.SafeZ)
 	x.BlankDiameter, x.ClampRadius = part.BlankDiameter, part.ClampRadius
 	return x
+}
+
+// ownLines are the lines of the user's own in a program that is not wire; those of a wire's passes depend on their order.
+func ownLines(op Operation, m Machine) []string {
+	if op.Process == Wire {
+		return nil
+	}
+	return append(append([]string(nil), m.Start...), m.End...)
 }
 
 // writtenOffset is the offset of the written path from the contour.

@@ -54,6 +54,9 @@ func (m Machine) list(xs []float64) string {
 }
 
 func arcText(m Machine) string {
+	if m.RadiusArcs {
+		return "R RADIUS OF THE ARC, UP TO HALF A TURN"
+	}
 	if m.AbsoluteArcs {
 		return "I J ABSOLUTE ARC CENTERS"
 	}

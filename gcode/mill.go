@@ -55,7 +55,7 @@ func planMill(part Part, op Operation, m Machine) (Program, error) {
 	e.p.Registers = registers(op)
 	e.p.Header = header(part, op, m)
 	e.add(Block{G: e.safety()})
-	e.add(Block{G: []Code{e.arcMode()}})
+	e.modes()
 	e.add(Block{T: number(op.Tool), M: []int{6}})
 	e.add(Block{S: number(op.speed()), M: op.on()})
 	for i := range op.Stock {
@@ -64,6 +64,7 @@ func planMill(part Part, op Operation, m Machine) (Program, error) {
 		}
 	}
 	e.add(Block{M: op.off()})
+	e.own(m.End...)
 	e.add(Block{G: e.safety()})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil
@@ -177,7 +178,7 @@ func millPath(part Part, op Operation, m Machine, i int) (chain.Chain, error) {
 	in, out := leadIn(path, op.side(), leadRadius), leadOut(path, op.side(), leadRadius)
 	far := part.plungeRadius(op, l.path)
 	path = append(append(in.in(in.outside(far, exitShare*r)), path...), out.away(out.straight(exitShare*r))...)
-	return snap(path, m.grid())
+	return snap(path, m)
 }
 
 // around returns a whole turn from cam angle t and overlap degrees more, with

@@ -86,6 +86,13 @@ type StartHole struct {
 	At     float64 // polar angle, degrees
 }
 
+// Slots are lines of the user's own for a wire machine: how to thread and cut the wire, and the generator's conditions for each
+// pass. Empty ones are left to the machine.
+type Slots struct {
+	Thread, Cut string
+	Conditions  []string // by pass
+}
+
 // Operation is one program.
 type Operation struct {
 	Number       int     // its place in the spec, from 1
@@ -120,6 +127,7 @@ type Operation struct {
 	// Wire.
 	WireDiameter float64   // length
 	Offsets      []float64 // wire center to contour, a length for each pass
+	Slots        Slots
 	Tab          Tab
 	StartHole    StartHole
 
@@ -191,8 +199,14 @@ type Machine struct {
 	AbsoluteArcs bool    // I and J are the center itself, else seen from the arc's start
 	ArcMismatch  float64 // length: largest difference of an arc's radii
 	BlockNumbers bool
-	MaxBlocks    int     // 0 when not limited
-	SafeZ        float64 // length above the top of the blank
+	Semicolons   bool // comments follow a semicolon
+	MaxBlocks    int  // 0 when not limited
+	Limits       Limits
+	RadiusArcs   bool     // arcs are written with R, else with their center
+	Path         PathMode // what the control does at corners; empty leaves it as it is set
+	PathBlend    float64  // length: what it may round corners by under Blended; 0 leaves it to the control
+	Start, End   []string // lines of the user's own, after the first modes and before the last
+	SafeZ        float64  // length above the top of the blank
 
 	RotaryDecimals int     // 0 to 9, of degrees
 	RotaryTable    bool    // growing rotary words turn the work, else the tool about it, counterclockwise seen on the marked face
@@ -200,5 +214,22 @@ type Machine struct {
 	RotaryRate     float64 // largest acceleration of the rotary axis, degrees/s²; 0 when not limited
 	InverseSeconds bool    // F under G93 is the seconds of the move, else one over its minutes
 }
+
+// Limits are what a control takes; 0 where there is none.
+type Limits struct {
+	Radius float64 // length: an arc above it is written as lines
+	Chord  float64 // length: an arc with a shorter one is written as a line
+	Sweep  float64 // degrees: an arc above it is split; 90 when 0
+	Bytes  int     // of a program
+	Line   int     // characters of a line
+}
+
+// PathMode is what a control does where the path has corners.
+type PathMode string
+
+const (
+	Exact   PathMode = "exact" // G61: it keeps to the path
+	Blended PathMode = "blend" // G64: it may round corners
+)
 
 func (m Machine) grid() chain.Grid { return chain.Grid{Decimals: m.Decimals} }

@@ -53,6 +53,8 @@ func planPolar(part Part, op Operation, m Machine) (Program, error) {
 	p := polarPlan{drumPlan: drumPlan{emitter: e, op: op, m: m}, part: part, way: turningOf(part.CamClockwise, m)}
 	e.p.Header = p.header()
 	e.add(Block{G: e.safety()})
+	e.pathMode()
+	e.own(m.Start...)
 	e.add(Block{T: number(op.Tool), M: []int{6}})
 	e.add(Block{S: number(op.speed()), M: op.on()})
 	for i := range op.Stock {
@@ -61,6 +63,7 @@ func planPolar(part Part, op Operation, m Machine) (Program, error) {
 		}
 	}
 	e.add(Block{M: op.off()})
+	e.own(m.End...)
 	e.add(Block{G: e.safety()})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil

@@ -20,6 +20,8 @@ const (
 	Absolute        Code = 900
 	CenterAbsolute  Code = 901
 	CenterFromStart Code = 911
+	ExactPath       Code = 610
+	Blend           Code = 640
 	FeedInverse     Code = 930
 	FeedPerMinute   Code = 940
 )
@@ -59,6 +61,9 @@ type Block struct {
 	X, Y, Z    Count
 	R          Count // the rotary axis, in counts of the program's rotary grid
 	I, J       Count
+	Round      Count  // radius of an arc that is written with R
+	P          Count  // with Blend: how far corners may be rounded
+	Own        string // a line of the user's own; then nothing else but a comment
 	F          Count
 	S, T, D, H Number
 	M          []int
@@ -81,6 +86,8 @@ type Program struct {
 	RotaryGrid   chain.Grid // of its degrees
 	AbsoluteArcs bool
 	BlockNumbers bool
+	Semicolons   bool     // comments follow a semicolon, else stand in parentheses
+	LineLength   int      // most characters of a line of comment; 0 for the writer's own
 	Header       []string // comments before the first block
 	Blocks       []Block
 	Registers    []Register // D table; empty when none is used

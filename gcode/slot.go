@@ -88,7 +88,7 @@ func (e *emitter) wall(part Part, op Operation, m Machine, w wallPass) error {
 	}
 	whole := append(chain.Path{lead(first.From, first.StartTangent(), in, -1)}, path...)
 	whole = append(whole, lead(last.To, last.EndTangent(), out, 1))
-	c, err := snap(whole, m.grid())
+	c, err := snap(whole, m)
 	if err != nil {
 		return err
 	}
@@ -137,7 +137,7 @@ func planSlot(part Part, op Operation, m Machine) (Program, error) {
 		return Program{}, err
 	}
 	e.add(Block{G: e.safety()})
-	e.add(Block{G: []Code{e.arcMode()}})
+	e.modes()
 	e.add(Block{T: number(op.Tool), M: []int{6}})
 	e.add(Block{S: number(op.speed()), M: op.on()})
 	from, top := part.StartAt-rampDegrees/2, int64(0)
@@ -163,7 +163,7 @@ func planSlot(part Part, op Operation, m Machine) (Program, error) {
 			ramp, turn = ramp.Reverse(), turn.Reverse()
 			from = end - rampDegrees - 360 - slotOverlap
 		}
-		down, err := snap(append(append(chain.Path(nil), ramp...), turn...), m.grid())
+		down, err := snap(append(append(chain.Path(nil), ramp...), turn...), m)
 		if err != nil {
 			return Program{}, err
 		}
@@ -184,6 +184,7 @@ func planSlot(part Part, op Operation, m Machine) (Program, error) {
 		}
 	}
 	e.add(Block{M: op.off()})
+	e.own(m.End...)
 	e.add(Block{G: e.safety()})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil

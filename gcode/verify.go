@@ -171,12 +171,14 @@ func (v *verifier) count() {
 	}
 }
 
-// mismatches holds the radii of every arc at its ends against the control's limit.
+// mismatches holds the radii of every arc at its ends against the control's limit, and its form against what a control may
+// take for something else.
 func (v *verifier) mismatches() {
 	for _, m := range v.p.Moves {
 		if m.Kind != read.Arc {
 			continue
 		}
+		v.form(m)
 		d := math.Abs(m.From.Dist(m.Center) - m.To.Dist(m.Center))
 		if d > v.res.ArcMismatch {
 			v.res.ArcMismatch, v.res.ArcMismatchLine = d, m.LineNo
@@ -185,6 +187,27 @@ func (v *verifier) mismatches() {
 			_, t := v.outline.near(m.To)
 			v.fail("arc-mismatch", d, v.x.ArcMismatch, t, m.LineNo, "the arc's radii at start and end differ by %.4g, the control allows %.4g", d, v.x.ArcMismatch)
 		}
+	}
+}
+
+// sweepShare is what rounding the ends of an arc may add to its sweep: a joint slides by 2 % of its shorter neighbor at most.
+const sweepShare = 1.03
+
+// form refuses arcs that a control may take for a full circle or does not take at all: ends that are equal or nearer than its limit,
+// more than half a turn, a radius above its limit.
+func (v *verifier) form(m read.Move) {
+	l, e := v.x.Limits, element(m)
+	sweep, most := math.Abs(e.Sweep())*180/math.Pi, 180.0
+	if l.Sweep > 0 {
+		most = math.Min(l.Sweep*sweepShare, most)
+	}
+	switch chord := m.From.Dist(m.To); {
+	case chord == 0 || chord < l.Chord:
+		v.fail("arc-form", chord, l.Chord, nan(), m.LineNo, "an arc whose ends are %.6g apart: a control may take it for a full circle", chord)
+	case sweep > most:
+		v.fail("arc-form", sweep, most, nan(), m.LineNo, "an arc of %.6g degrees; at most %.6g are taken", sweep, most)
+	case l.Radius > 0 && e.Radius() > l.Radius:
+		v.fail("arc-form", e.Radius(), l.Radius, nan(), m.LineNo, "an arc of radius %.6g; the control takes %.6g", e.Radius(), l.Radius)
 	}
 }
 

@@ -37,7 +37,7 @@ func ExpectedDrum(d Drum, op Operation, m Machine, eps float64) DrumExpect {
 	x := DrumExpect{Axis: d.Axis, Sense: d.sense(), Radius: d.Radius, Depth: d.Depth, RotaryTable: m.RotaryTable, RotarySpeed: m.RotarySpeed, Seconds: m.InverseSeconds,
 		Room: func(stock float64) float64 { return d.room(op, stock) }, OffCenter: !d.fills(op) && !op.RotaryShift}
 	x.Expect = Expect{Process: Slot, Number: op.programNumber(), Fluid: op.Coolant > 0, Inch: d.Inch, Eps: eps, CamClockwise: d.CamClockwise, Compensation: op.Compensation, Rotary: op.Rotary,
-		Feed: gridValue(g, op.Feed), FeedStep: g.Step(), MaxBlocks: m.MaxBlocks, ArcMismatch: m.ArcMismatch, Radius: op.radius(), Tool: op.Tool, Speed: op.speed(),
+		Feed: gridValue(g, op.Feed), FeedStep: g.Step(), MaxBlocks: m.MaxBlocks, Limits: m.Limits, Path: m.Path, PathBlend: gridValue(g, m.PathBlend), Own: ownLines(op, m), ArcMismatch: m.ArcMismatch, Radius: op.radius(), Tool: op.Tool, Speed: op.speed(),
 		PlungeFeed: gridValue(g, op.PlungeFeed), SafeZ: gridValue(g, m.SafeZ), HalfWidth: d.Width / 2}
 	height := func(z int64) float64 { return float64(z) / float64(counts(g, 1)) }
 	for k, z := range d.depths(op, g, DrumPass{}) {

@@ -66,9 +66,10 @@ func planWire(part Part, op Operation, m Machine) (Program, error) {
 	e.p.Header = header(part, op, m)
 	safe := []Code{e.units(), PlaneXY, Absolute, CompOff, WorkFirst}
 	e.add(Block{G: safe})
-	e.add(Block{G: []Code{e.arcMode()}})
+	e.modes()
 	e.line(Rapid, e.grid.Point(w.hole), Block{Comment: "START HOLE"})
 	e.note("SLOT THREAD. THE CODE OF THE MACHINE, OR BY HAND AT THIS STOP")
+	e.own(op.Slots.Thread)
 	e.add(Block{M: []int{0}, Comment: "THREAD THE WIRE"})
 	at := e.grid.Point(w.hole)
 	for _, s := range stretches {
@@ -77,6 +78,8 @@ func planWire(part Part, op Operation, m Machine) (Program, error) {
 		}
 	}
 	e.note("SLOT CUT WIRE. THE CODE OF THE MACHINE")
+	e.own(op.Slots.Cut)
+	e.own(m.End...)
 	e.add(Block{G: safe})
 	e.add(Block{M: []int{30}})
 	return *e.p, nil
@@ -178,7 +181,7 @@ func (w *wirePlan) run(e *emitter, s stretch, at chain.Point) (chain.Point, erro
 	}
 	in, out := leadIn(path, side, radius), leadOut(path, side, radius)
 	from, to := w.slot(s.from, in), w.slot(s.to, out)
-	c, err := snap(append(append(in.in(from), path...), out.away(to)...), e.grid)
+	c, err := snap(append(append(in.in(from), path...), out.away(to)...), w.m)
 	if err != nil {
 		return at, err
 	}
@@ -189,6 +192,9 @@ func (w *wirePlan) run(e *emitter, s stretch, at chain.Point) (chain.Point, erro
 		e.line(Straight, start, Block{F: e.feed(w.op.Feed)})
 	}
 	e.note(fmt.Sprintf("%s. SLOT CONDITION OF PASS %d, OFFSET %s", s.note, s.pass+1, w.m.text(offset)))
+	if s.pass < len(w.op.Slots.Conditions) {
+		e.own(w.op.Slots.Conditions[s.pass])
+	}
 	on := Block{F: e.feed(w.op.Feed)}
 	if compensated {
 		on.G, on.D = []Code{sideCode(side)}, number(s.pass+1)

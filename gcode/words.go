@@ -24,6 +24,7 @@ func (v *verifier) words() {
 			v.wrong("words", m.LineNo, "M%d is not expected here", m.Code)
 		}
 	}
+	v.settings()
 	if p.End.Comp != read.Off {
 		v.wrong("words", 0, "the program ends under %v", p.End.Comp)
 	}
@@ -35,6 +36,32 @@ func (v *verifier) words() {
 		}
 		last, known = m.State, high
 		v.state(m)
+	}
+}
+
+// settings holds what the control is told besides the path.
+func (v *verifier) settings() {
+	p, x := v.p, v.x
+	if n := x.Limits.Bytes; n > 0 && p.Bytes > n {
+		v.fail("bytes", float64(p.Bytes), float64(n), nan(), 0, "%d bytes, the control takes %d; allow a larger chord tolerance, or leave block numbers out", p.Bytes, n)
+	}
+	if n := x.Limits.Line; n > 0 && p.Longest > n {
+		v.fail("line-length", float64(p.Longest), float64(n), nan(), 0, "a line of %d characters, the control takes %d", p.Longest, n)
+	}
+	mode := map[PathMode]int{Exact: 61, Blended: 64}[x.Path]
+	if p.PathMode != mode || p.PathBlend != x.PathBlend && mode == 64 {
+		v.wrong("words", 0, "path mode G%d with P%g, expected G%d with P%g (0: none)", p.PathMode, p.PathBlend, mode, x.PathBlend)
+	}
+	if x.Process == Wire {
+		return
+	}
+	for i := range max(len(x.Own), len(p.Own)) {
+		switch {
+		case i >= len(p.Own):
+			v.wrong("words", 0, "the line %q of the user's own is missing", x.Own[i])
+		case i >= len(x.Own) || p.Own[i].Text != x.Own[i]:
+			v.wrong("words", p.Own[i].LineNo, "the line %q of the user's own is not expected here", p.Own[i].Text)
+		}
 	}
 }
 

@@ -39,6 +39,9 @@ func (j *job) otherShares() []tolerance.Share {
 		shares = append(shares, tolerance.OnContour("shift", x, tolerance.Fixed, tolerance.Parallel))
 	}
 	t := j.spec.Tolerance
+	if x := j.spec.Control.PathTolerance; x > 0 {
+		shares = append(shares, tolerance.OnContour("path mode", x, tolerance.Fixed, tolerance.Blocks))
+	}
 	if m := t.MachineTool; m != nil {
 		shares = append(shares,
 			tolerance.OnContour("resolution", m.Resolution, tolerance.Variable, tolerance.Blocks),

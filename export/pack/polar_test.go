@@ -19,7 +19,13 @@ import (
 // rowStop is the sample with some words changed.
 func rowStop(t *testing.T, change ...string) *spec.Spec {
 	t.Helper()
-	text, err := os.ReadFile(samplesFolder + "/row-stop.yaml")
+	return reworded(t, "row-stop", change...)
+}
+
+// reworded is a sample with some words changed, pair by pair.
+func reworded(t *testing.T, sample string, change ...string) *spec.Spec {
+	t.Helper()
+	text, err := os.ReadFile(samplesFolder + "/" + sample + ".yaml")
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -29,7 +35,7 @@ func rowStop(t *testing.T, change ...string) *spec.Spec {
 		}
 		text = bytes.ReplaceAll(text, []byte(change[i]), []byte(change[i+1]))
 	}
-	s, err := spec.Read("row-stop.yaml", text, synth.Vocabulary())
+	s, err := spec.Read(sample+".yaml", text, synth.Vocabulary())
 	if err != nil {
 		t.Fatal(err)
 	}

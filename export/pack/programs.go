@@ -146,7 +146,7 @@ func (j *job) tryProgram(i int, eps float64) (program, error) {
 // planned and against the exact curves.
 func (j *job) proveProgram(p program, data []byte) (program, error) {
 	p.data = data
-	back, err := read.Parse(p.data)
+	back, err := read.Parse(p.data, j.ownLines(p.index)...)
 	if err != nil {
 		return p, fmt.Errorf("%s: %w", p.name, err)
 	}
@@ -203,11 +203,27 @@ func healed(p chain.Path, count float64) chain.Path {
 	return p[:len(p)-1]
 }
 
+// ownLines are the lines that the spec declares to be the user's own in operation i.
+func (j *job) ownLines(i int) []string {
+	c := j.spec.Control
+	own := append(append([]string(nil), c.ProgramStart...), c.ProgramEnd...)
+	if w := j.spec.Operations[i].Slots; w != nil {
+		for _, l := range append([]string{w.Thread, w.CutWire}, w.Conditions...) {
+			if l != "" {
+				own = append(own, l)
+			}
+		}
+	}
+	return own
+}
+
 func (j *job) machine() gcode.Machine {
 	c := j.spec.Control
 	return gcode.Machine{Decimals: c.Decimals, AbsoluteArcs: c.AbsoluteArcs, ArcMismatch: c.ArcMismatch,
 		BlockNumbers: c.BlockNumbers, MaxBlocks: c.MaxBlocks, SafeZ: c.SafeZ,
 		RotaryDecimals: c.RotaryDecimals, RotaryTable: c.RotarySense == "table", RotarySpeed: c.RotarySpeed,
+		Limits:     gcode.Limits{Radius: c.LargestRadius, Chord: c.LeastChord, Sweep: c.SplitAngle, Bytes: c.MaxBytes, Line: c.LineLength},
+		RadiusArcs: c.RadiusArcs, Path: gcode.PathMode(c.PathMode), PathBlend: c.PathTolerance, Start: c.ProgramStart, End: c.ProgramEnd, Semicolons: c.Semicolons,
 		RotaryRate: c.RotaryAcceleration, InverseSeconds: c.InverseSeconds}
 }
 
@@ -242,6 +258,9 @@ func (j *job) operation(i int, eps float64) gcode.Operation {
 	}
 	if o.Tab != nil {
 		op.Tab = gcode.Tab{Width: o.Tab.Width, At: o.Tab.At}
+	}
+	if w := o.Slots; w != nil {
+		op.Slots = gcode.Slots{Thread: w.Thread, Cut: w.CutWire, Conditions: w.Conditions}
 	}
 	if o.StartHole != nil {
 		op.StartHole = gcode.StartHole{Radius: o.StartHole.Radius, At: o.StartHole.At}

@@ -23,7 +23,12 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 	if err != nil {
 		return sheet.ProveOut{}, err
 	}
-	back, err := read.Parse(data)
+	j := &job{spec: s, cam: cam}
+	var own []string // of every operation: which one it is stands in the program
+	for i := range s.Operations {
+		own = append(own, j.ownLines(i)...)
+	}
+	back, err := read.Parse(data, own...)
 	var at *read.Error
 	if errors.As(err, &at) {
 		return sheet.ProveOut{}, fmt.Errorf("%s:%d:%d: found %s; %s", file, at.Line, at.Column, at.Found, at.Allowed)
@@ -45,7 +50,6 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 		return sheet.ProveOut{}, fmt.Errorf("%s: found %s; allowed: those of the %d operations of %s; say which one with --operation",
 			file, found, len(s.Operations), s.File)
 	}
-	j := &job{spec: s, cam: cam}
 	j.allocate()
 	i := operation - 1
 	op := j.operation(i, j.chord)

@@ -76,19 +76,29 @@ type Misc struct {
 	Before int // index of the first move made after it; len(Moves) when none
 }
 
+// Own is a line of the user's own. What it does is not known.
+type Own struct {
+	LineNo int
+	Text   string // without its block number
+	Before int    // index of the first move made after it
+}
+
 // Program is what a control would make of a file.
 type Program struct {
-	Number   int  // O word; -1 when there is none
-	Inch     bool // G20; else G21
-	Rotary   byte // the letter of the rotary axis: 'A', 'B' or 'C'; 0 when there is none
-	Moves    []Move
-	Misc     []Misc
-	End      State // after the last block
-	Ended    bool  // M2 or M30 came
-	Comments []Comment
-	Blocks   int // lines that hold words
-	Bytes    int
-	Longest  int // bytes of the longest line
+	Number    int  // O word; -1 when there is none
+	Inch      bool // G20; else G21
+	Rotary    byte // the letter of the rotary axis: 'A', 'B' or 'C'; 0 when there is none
+	Moves     []Move
+	Misc      []Misc
+	Own       []Own   // lines that were declared to be the user's own, in order
+	PathMode  int     // 61 or 64 of the last G61 or G64; 0 when there is none
+	PathBlend float64 // length: P of that G64; 0 without
+	End       State   // after the last block
+	Ended     bool    // M2 or M30 came
+	Comments  []Comment
+	Blocks    int // lines that hold words
+	Bytes     int
+	Longest   int // bytes of the longest line
 }
 
 // Comment is the text of one comment.

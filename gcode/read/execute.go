@@ -2,6 +2,7 @@ package read
 
 import (
 	"fmt"
+	"math"
 	"slices"
 
 	"lobewright/synth/plane"
@@ -66,8 +67,18 @@ func (r *reader) modes(b block, codes map[string]int, _ []int) error {
 	if c, ok := codes["feed"]; ok && (c == 930) != r.state.Inverse {
 		r.state.Inverse, r.state.Feed = c == 930, 0 // NISTIR 6556 3.5.20: the old F means nothing now
 	}
-	if w, ok := b.axis['P']; ok && codes["path"] != 640 {
+	w, ok := b.axis['P']
+	if ok && codes["path"] != 640 {
 		return b.fault(w, "P stands with G64 only")
+	}
+	if c, set := codes["path"]; set {
+		r.p.PathMode, r.p.PathBlend = c/10, 0
+		if ok {
+			if w.value < 0 {
+				return b.fault(w, "P of G64 is not below 0")
+			}
+			r.p.PathBlend = value(w.value)
+		}
 	}
 	return nil
 }
@@ -258,6 +269,16 @@ func (r *reader) axis(b block, letter byte, at *int64, have *bool) error {
 func (r *reader) center(b block, m *Move, x0, y0 int64) error {
 	i, hasI := b.axis['I']
 	j, hasJ := b.axis['J']
+	radius, hasR := b.axis['R']
+	if hasR && m.Kind != Arc {
+		return b.fault(radius, "R stands with G2 or G3")
+	}
+	if hasR && (hasI || hasJ) {
+		return b.fault(radius, "an arc has I and J, or R")
+	}
+	if hasR {
+		return r.byRadius(b, m, radius)
+	}
 	if m.Kind != Arc {
 		if hasI || hasJ {
 			return b.fault(b.first(), "I and J stand with G2 or G3")
@@ -266,7 +287,7 @@ func (r *reader) center(b block, m *Move, x0, y0 int64) error {
 	}
 	switch {
 	case !hasI && !hasJ:
-		return b.fault(b.first(), "an arc needs its center as I and J")
+		return b.fault(b.first(), "an arc needs its center as I and J, or R")
 	case r.centerAbsolute && !(hasI && hasJ):
 		return b.fault(b.first(), "under G90.1 an arc needs both I and J")
 	case !m.KnownXY:
@@ -280,6 +301,30 @@ func (r *reader) center(b block, m *Move, x0, y0 int64) error {
 	if (cx == x0 && cy == y0) || (cx == r.x && cy == r.y) {
 		return b.fault(b.first(), "the center of an arc is not one of its ends")
 	}
+	return nil
+}
+
+// byRadius takes R: the center of the arc of at most half a turn (NISTIR 6556 3.5.3.1; near a half turn the
+// center moves by much for little of R, and a negative R asks for more than half).
+func (r *reader) byRadius(b block, m *Move, w word) error {
+	if !m.KnownXY {
+		return b.fault(w, "an arc needs a known start")
+	}
+	way := m.To.Sub(m.From)
+	half, radius := way.Norm()/2, value(w.value)
+	switch {
+	case w.value <= 0:
+		return b.fault(w, "R is above 0: an arc above half a turn is split")
+	case half == 0:
+		return b.fault(w, "an arc with R ends elsewhere than it starts")
+	case radius < half:
+		return b.fault(w, fmt.Sprintf("R is at least half the way from start to end, %.9g", half))
+	}
+	side := math.Sqrt(math.Max(0, radius*radius-half*half))
+	if !m.CCW {
+		side = -side
+	}
+	m.Center = m.From.Add(way.Scale(0.5)).Add(way.Unit().Left().Scale(side))
 	return nil
 }
 

@@ -3,17 +3,19 @@ package read
 import (
 	"bytes"
 	"fmt"
+	"slices"
 	"strings"
 )
 
-// Parse reads a program. The error is an *Error: the first fault of the file.
-func Parse(data []byte) (*Program, error) {
+// Parse reads a program. Lines that are own, but for a block number and spaces about them, are passed over and noted. The
+// error is an *Error: the first fault of the file.
+func Parse(data []byte, own ...string) (*Program, error) {
 	if len(data) > maxSize {
 		return nil, &Error{1, 1, fmt.Sprintf("more than %d bytes", maxSize), "a program has at most that many"}
 	}
 	r := &reader{p: &Program{Number: -1, Bytes: len(data)}}
 	r.state = State{D: -1, H: -1, Tool: -1, Speed: -1}
-	r.pending = -1
+	r.pending, r.own = -1, own
 	lines := 0
 	for rest, more := data, true; more; {
 		var raw []byte
@@ -35,6 +37,7 @@ func Parse(data []byte) (*Program, error) {
 type reader struct {
 	p       *Program
 	state   State
+	own     []string
 	pending int // T word that waits for M6; -1 when none
 
 	percent, closed bool // % at the start, at the end
@@ -72,6 +75,9 @@ func (r *reader) line(text string, no int) error {
 	if r.closed {
 		return &Error{no, 1, "text after the closing %", "nothing follows it"}
 	}
+	if r.isOwn(trimmed, no) {
+		return nil
+	}
 	words, comments, err := scan(text, no)
 	if err != nil {
 		return err
@@ -92,6 +98,22 @@ func (r *reader) line(text string, no int) error {
 		return err
 	}
 	return r.block(b)
+}
+
+// isOwn notes a line of the user's own.
+func (r *reader) isOwn(text string, no int) bool {
+	if rest, ok := strings.CutPrefix(text, "N"); ok {
+		if digits := len(rest) - len(strings.TrimLeft(rest, "0123456789")); digits > 0 {
+			text = strings.TrimSpace(rest[digits:])
+		}
+	}
+	if !slices.Contains(r.own, text) || r.p.Ended {
+		return false
+	}
+	r.started = true
+	r.p.Blocks++
+	r.p.Own = append(r.p.Own, Own{no, text, len(r.p.Moves)})
+	return true
 }
 
 // unprintable returns the index of the first byte that is no printable ASCII and no

@@ -60,8 +60,8 @@ func scan(line string, no int) (words []word, comments []string, err error) {
 // scanWord reads the word at line[i:].
 func scanWord(line string, i, no int) (word, int, error) {
 	w := word{letter: upper(line[i]), column: i + 1}
-	if !strings.ContainsRune("GXYZABCIJFSTDHNOMP", rune(w.letter)) || w.letter > 'Z' {
-		return w, i, &Error{no, i + 1, fmt.Sprintf("%q", line[i:i+1]), "words G X Y Z A B C I J F S T D H N O M P are read here"}
+	if !strings.ContainsRune("GXYZABCIJRFSTDHNOMP", rune(w.letter)) || w.letter > 'Z' {
+		return w, i, &Error{no, i + 1, fmt.Sprintf("%q", line[i:i+1]), "words G X Y Z A B C I J R F S T D H N O M P are read here"}
 	}
 	j := i + 1
 	for j < len(line) && (line[j] == ' ' || line[j] == '\t') {

@@ -47,13 +47,11 @@ func (w *writer) raw(s string) { w.out.WriteString(s + "\n") }
 
 // comment prints text on lines of its own, cut between words.
 func (w *writer) comment(text string) {
-	line := ""
+	line, room := "", w.width()-2
 	for _, word := range strings.Fields(Clean(text)) {
-		for len(word) > lineWidth-2 {
-			word = word[:lineWidth-2]
-		}
-		if line != "" && len(line)+1+len(word) > lineWidth-2 {
-			w.raw("(" + line + ")")
+		word = word[:min(len(word), room)]
+		if line != "" && len(line)+1+len(word) > room {
+			w.raw(w.said(line))
 			line = ""
 		}
 		if line != "" {
@@ -62,8 +60,24 @@ func (w *writer) comment(text string) {
 		line += word
 	}
 	if line != "" {
-		w.raw("(" + line + ")")
+		w.raw(w.said(line))
 	}
+}
+
+// width is the most characters of a line of comment.
+func (w *writer) width() int {
+	if n := w.p.LineLength; n > 0 {
+		return min(n, lineWidth)
+	}
+	return lineWidth
+}
+
+// said is a comment as the control takes it.
+func (w *writer) said(text string) string {
+	if w.p.Semicolons {
+		return "; " + text
+	}
+	return "(" + text + ")"
 }
 
 // Clean returns the text as a comment may hold it, in capitals.
@@ -85,6 +99,9 @@ func Clean(text string) string {
 // comment on lines of its own.
 func (w *writer) block(b gcode.Block) {
 	words := w.words(b)
+	if b.Own != "" {
+		words = []string{b.Own}
+	}
 	if len(words) == 0 {
 		w.comment(b.Comment)
 		return
@@ -98,7 +115,7 @@ func (w *writer) block(b gcode.Block) {
 	}
 	line := strings.Join(words, " ")
 	if b.Comment != "" {
-		line += " (" + strings.Join(strings.Fields(Clean(b.Comment)), " ") + ")"
+		line += " " + w.said(strings.Join(strings.Fields(Clean(b.Comment)), " "))
 	}
 	w.raw(line)
 }
@@ -116,7 +133,7 @@ func (w *writer) words(b gcode.Block) []string {
 		count  gcode.Count
 		grid   chain.Grid
 	}{{"X", b.X, w.p.Grid}, {"Y", b.Y, w.p.Grid}, {"Z", b.Z, w.p.Grid}, {string(w.p.Rotary), b.R, w.p.RotaryGrid},
-		{"I", b.I, w.p.Grid}, {"J", b.J, w.p.Grid}, {"F", b.F, w.p.Grid}} {
+		{"I", b.I, w.p.Grid}, {"J", b.J, w.p.Grid}, {"R", b.Round, w.p.Grid}, {"P", b.P, w.p.Grid}, {"F", b.F, w.p.Grid}} {
 		if a.count.On {
 			words = append(words, a.letter+a.grid.Format(a.count.V))
 		}

@@ -3,6 +3,9 @@ package spec
 import (
 	"fmt"
 	"math"
+	"regexp"
+	"strconv"
+	"strings"
 )
 
 // Checks that compare keys with one another. Each is made only when the values
@@ -13,6 +16,7 @@ func (r *reader) check(s *Spec) {
 	r.checkBody(s)
 	r.checkBlank(s)
 	r.checkInspection(s)
+	r.checkControl(s)
 	for i := range s.Operations {
 		path := fmt.Sprintf("operations[%d]", i+1)
 		r.checkAxes(path, s, &s.Operations[i])
@@ -24,6 +28,60 @@ func (r *reader) check(s *Spec) {
 		case "wire":
 			r.checkWire(path, s, op)
 		}
+	}
+}
+
+// checkControl: what goes together, and what a line of the user's own may be.
+func (r *reader) checkControl(s *Spec) {
+	c := s.Control
+	if c.PathTolerance > 0 && c.PathMode != "blend" && r.ok("control.path_mode", "control.path_tolerance") {
+		r.faultAt("control.path_tolerance", Fault{Found: figure(c.PathTolerance), Allowed: "a tolerance with path_mode: blend", Advice: "add it, or take the key out"})
+	}
+	r.checkLines("control.program_start", c.ProgramStart, c.LineLength)
+	r.checkLines("control.program_end", c.ProgramEnd, c.LineLength)
+	for i, op := range s.Operations {
+		if op.Slots == nil {
+			continue
+		}
+		path := fmt.Sprintf("operations[%d].slots.", i+1)
+		for name, line := range map[string]string{"thread": op.Slots.Thread, "cut_wire": op.Slots.CutWire} {
+			if line != "" {
+				r.checkLine(path+name, line, c.LineLength)
+			}
+		}
+		r.checkLines(path+"conditions", op.Slots.Conditions, c.LineLength)
+		if n := len(op.Slots.Conditions); n > len(op.Offsets) && r.ok(path+"conditions") {
+			r.faultAt(path+"conditions", Fault{Found: fmt.Sprintf("%d lines", n), Allowed: fmt.Sprintf("one for each pass, %d", len(op.Offsets))})
+		}
+	}
+}
+
+func (r *reader) checkLines(path string, lines []string, length int) {
+	for i, l := range lines {
+		r.checkLine(fmt.Sprintf("%s[%d]", path, i+1), l, length)
+	}
+}
+
+var (
+	ownLine = regexp.MustCompile(`^[A-Z#][A-Z0-9.,+\-*/=# ]*$`)
+	moving  = regexp.MustCompile(`[XYZABCUVWIJK] *[-+.0-9]|\bG0*[0-3]\b|\b[NO][0-9]`)
+)
+
+// checkLine: a line of the user's own is of a control's characters, fits its line, and moves no axis by a word that this
+// program knows.
+func (r *reader) checkLine(path, line string, length int) {
+	const mostOwn = 60
+	if length == 0 || length > mostOwn {
+		length = mostOwn
+	}
+	if !r.ok(path) {
+		return
+	}
+	switch word := moving.FindString(line); {
+	case !ownLine.MatchString(line) || line != strings.TrimSpace(line) || len(line)+len("N99990 ") > length:
+		r.faultAt(path, Fault{Found: strconv.Quote(line), Allowed: fmt.Sprintf("a line of capital letters, digits, spaces and . , + - * / = #, of at most %d characters", length-len("N99990 "))})
+	case word != "":
+		r.faultAt(path, Fault{Found: word + " in " + strconv.Quote(line), Allowed: "words that move no axis and are no block or program number", Advice: "what moves the tool must be proven: leave it to the program"})
 	}
 }
 

@@ -247,6 +247,7 @@ func operationTable(v Vocabulary) table[Operation] {
 			number("wire_diameter", "diameter of the wire, length", length(), func(o *Operation) *float64 { return &o.WireDiameter }).of(wire).required(),
 			numbers("offsets", "wire center to contour for each pass, length, falling, at least the wire's radius", length(), func(o *Operation) *[]float64 { return &o.Offsets }).of(wire).required(),
 			maybe("tab", "what holds the part in the blank until it is clamped and cut free", tabTable(), func(o *Operation) **Tab { return &o.Tab }).of(wire).required(),
+			maybe("slots", "lines of your own where the wire machine's codes belong", slotsTable(), func(o *Operation) **Slots { return &o.Slots }).of(wire),
 			maybe("start_hole", "where the wire is threaded", startHoleTable(), func(o *Operation) **StartHole { return &o.StartHole }).of(wire).required(),
 			choice("compensation", "path: tool-center path written; wear: the same with G41/G42 and a small offset; control: contour written; default path", []string{"path", "wear", "control"}, nil,
 				func(o *Operation, w string) { o.Compensation = w }),
@@ -260,6 +261,14 @@ func tabTable() table[Tab] {
 	return table[Tab]{what: "a tab", fields: []field[Tab]{
 		number("width", "width along the contour, length", length(), func(t *Tab) *float64 { return &t.Width }).required(),
 		number("at", "polar angle of its middle, degrees", polarAngle(), func(t *Tab) *float64 { return &t.At }).required(),
+	}}
+}
+
+func slotsTable() table[Slots] {
+	return table[Slots]{what: "wire slots", place: func(s *Slots, p Place) { s.Place = p }, fields: []field[Slots]{
+		text("thread", "line that threads the wire", func(s *Slots) *string { return &s.Thread }),
+		text("cut_wire", "line that cuts it", func(s *Slots) *string { return &s.CutWire }),
+		texts("conditions", "line that sets the generator, for each pass", func(s *Slots) *[]string { return &s.Conditions }),
 	}}
 }
 
@@ -280,6 +289,17 @@ func controlTable() table[Control] {
 				func(c *Control) *float64 { return &c.ArcMismatch }),
 			flag("block_numbers", "number the blocks, default true", func(c *Control) *bool { return &c.BlockNumbers }),
 			integer("max_blocks", "most blocks of a program; left out: no limit", 1, 100_000_000, func(c *Control) *int { return &c.MaxBlocks }),
+			choice("arc_form", "how an arc is written, default center (I and J); radius: R, of arcs up to half a turn", []string{"center", "radius"}, nil, func(c *Control, w string) { c.RadiusArcs = w == "radius" }),
+			number("largest_radius", "largest radius of an arc, length, flatter ones become lines; default 10000", length(), func(c *Control) *float64 { return &c.LargestRadius }),
+			number("least_chord", "shortest way from start to end of an arc, length, shorter ones become lines; default 10 counts of the last decimal", length(), func(c *Control) *float64 { return &c.LeastChord }),
+			number("split_angle", "largest sweep of an arc, degrees, longer ones are split; default 90", span{noun: "an angle in degrees", lo: 90, hi: 180}, func(c *Control) *float64 { return &c.SplitAngle }),
+			integer("max_bytes", "most bytes of a program; left out: no limit", 1, 100_000_000, func(c *Control) *int { return &c.MaxBytes }),
+			integer("line_length", "most characters of a line; left out: no limit, comments are at most 78 long", 64, 256, func(c *Control) *int { return &c.LineLength }),
+			choice("path_mode", "what the control does at corners of the path: exact G61, blend G64; left out: as it is set", []string{"exact", "blend"}, nil, func(c *Control, w string) { c.PathMode = w }),
+			number("path_tolerance", "by how much blending may leave the path, length, written as P with G64; it is a share of the budget", length(), func(c *Control) *float64 { return &c.PathTolerance }),
+			texts("program_start", "lines of your own after the first modes, such as G05.1 Q1; they are passed on, not proven, and may not move an axis", func(c *Control) *[]string { return &c.ProgramStart }),
+			texts("program_end", "lines of your own before the last modes", func(c *Control) *[]string { return &c.ProgramEnd }),
+			choice("comments", "how comments are written, default parentheses", []string{"parentheses", "semicolon"}, nil, func(c *Control, w string) { c.Semicolons = w == "semicolon" }),
 			choice("rotary_sense", "what a growing rotary word turns counterclockwise, seen on the marked face: the tool about the work, or the table with the work; needed for axes polar and cylinder, no default", []string{"tool", "table"}, nil,
 				func(c *Control, w string) { c.RotarySense = w }),
 			integer("rotary_decimals", "decimals of rotary words, default 3", 2, 6, func(c *Control) *int { return &c.RotaryDecimals }),

@@ -255,6 +255,7 @@ type Operation struct {
 	Offsets      []float64
 	Tab          *Tab
 	StartHole    *StartHole
+	Slots        *Slots
 
 	Place Place
 }
@@ -263,6 +264,13 @@ type Operation struct {
 type Tab struct {
 	Width float64 // length along the contour
 	At    float64 // polar angle, degrees
+}
+
+// Slots are lines of the user's own in a wire program.
+type Slots struct {
+	Thread, CutWire string
+	Conditions      []string // by pass
+	Place           Place
 }
 
 // StartHole is where the wire is threaded.
@@ -278,7 +286,16 @@ type Control struct {
 	ArcMismatch  float64 // length; default 0.002 mm, 0.0002 inch
 	BlockNumbers bool    // default true
 	MaxBlocks    int     // 0 when not limited
-	SafeZ        float64 // length above the top of the blank; default 5 mm, 0.2 inch
+	RadiusArcs   bool    // arc_form: radius; default center
+
+	LargestRadius, LeastChord float64 // length; 0 when not given
+	SplitAngle                float64 // degrees; default 90
+	MaxBytes, LineLength      int     // 0 when not limited
+	PathMode                  string  // "exact", "blend", or "" when left as it is set
+	PathTolerance             float64 // length; 0 when the control's own
+	ProgramStart, ProgramEnd  []string
+	Semicolons                bool    // comments: semicolon
+	SafeZ                     float64 // length above the top of the blank; default 5 mm, 0.2 inch
 
 	RotarySense    string  // "tool" or "table"; empty when not given
 	RotaryDecimals int     // of degrees; default 3

@@ -1,4 +1,4 @@
-#= @: found X2; an arc needs its center as I and J
+#= @: found X2; an arc needs its center as I and J, or R
 %
 O1
 N10 G21 G17 G90 G40 G49 G80 G94 G54

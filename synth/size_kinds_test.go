@@ -344,7 +344,7 @@ func BenchmarkSize(b *testing.B) {
 		if err != nil {
 			b.Fatal(err)
 		}
-		s, err = s.Load(data, func(name string) ([]byte, error) { return os.ReadFile(filepath.Join("../samples", name)) })
+		s, err = s.Load(data, Vocabulary(), func(name string) ([]byte, error) { return os.ReadFile(filepath.Join("../samples", name)) })
 		if err != nil {
 			b.Fatal(err)
 		}

@@ -20,7 +20,7 @@ const fileLimit = 4 << 20
 // tablesFlag names the folder a spec may read its table from besides its own. A spec may come
 // from anybody, so it reaches no file that its user did not put beside it or name.
 func tablesFlag() cli.Flag {
-	return &cli.StringFlag{Name: "tables", Usage: "folder outside the spec's own that its table may be read from"}
+	return &cli.StringFlag{Name: "tables", Usage: "folder outside the spec's own that its table or control settings may be read from"}
 }
 
 func readSpec(c *cli.Context, file string) (*spec.Spec, error) {
@@ -32,7 +32,7 @@ func readSpec(c *cli.Context, file string) (*spec.Spec, error) {
 	if err != nil {
 		return nil, err
 	}
-	return s.Load(data, func(name string) ([]byte, error) { return readTable(file, name, c.String("tables")) })
+	return s.Load(data, synth.Vocabulary(), func(name string) ([]byte, error) { return readTable(file, name, c.String("tables")) })
 }
 
 // readTable reads a file that a spec names from its own folder, and which must be in it or in

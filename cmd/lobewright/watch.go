@@ -55,6 +55,9 @@ func fingerprint(files []string, tables string) string {
 		data, err := readFile(f)
 		add(data, err)
 		s, err := spec.Read(f, data, synth.Vocabulary())
+		if err == nil && s.Control.File != "" {
+			add(readTable(f, s.Control.File, tables))
+		}
 		if err == nil && s.Motion.Table != nil {
 			add(readTable(f, s.Motion.Table.File, tables))
 		}

@@ -46,7 +46,7 @@ func readSample(t testing.TB, file string) *spec.Spec {
 	if err != nil {
 		t.Fatal(err)
 	}
-	s, err = s.Load(data, func(name string) ([]byte, error) { return os.ReadFile(filepath.Join(filepath.Dir(file), name)) })
+	s, err = s.Load(data, synth.Vocabulary(), func(name string) ([]byte, error) { return os.ReadFile(filepath.Join(filepath.Dir(file), name)) })
 	if err != nil {
 		t.Fatal(err)
 	}

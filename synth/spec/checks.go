@@ -34,7 +34,10 @@ func (r *reader) check(s *Spec) {
 // checkControl: what goes together, and what a line of the user's own may be.
 func (r *reader) checkControl(s *Spec) {
 	c := s.Control
-	if c.PathTolerance > 0 && c.PathMode != "blend" && r.ok("control.path_mode", "control.path_tolerance") {
+	if (c.File == "") != (c.Set == "") && r.ok("control.file", "control.set") {
+		r.faultAtKey("control", Fault{Found: "one of file and set", Allowed: "both: the file, and which of its sets"})
+	}
+	if c.PathTolerance > 0 && c.File == "" && c.PathMode != "blend" && r.ok("control.path_mode", "control.path_tolerance") {
 		r.faultAt("control.path_tolerance", Fault{Found: figure(c.PathTolerance), Allowed: "a tolerance with path_mode: blend", Advice: "add it, or take the key out"})
 	}
 	r.checkLines("control.program_start", c.ProgramStart, c.LineLength)
@@ -203,7 +206,7 @@ func (r *reader) checkAxes(path string, s *Spec, op *Operation) {
 		r.faultAt(path+".axes", Fault{Found: "polar for " + op.Process + " on a cam of kind " + s.Cam.Kind, Allowed: "xy"})
 	case op.Process == "grind" && op.Axes != "polar":
 		r.faultAt(path+".axes", Fault{Found: op.Axes + " for grind", Allowed: "polar"})
-	case op.Axes != "xy" && s.Control.RotarySense == "" && r.ok("control", "control.rotary_sense"):
+	case op.Axes != "xy" && s.Control.RotarySense == "" && s.Control.File == "" && r.ok("control", "control.rotary_sense"):
 		r.faultAtKey(path, Fault{Found: "a rotary axis whose sense is not told", Allowed: "control: {rotary_sense: tool} or {rotary_sense: table}",
 			Advice: "the wrong one is a mirrored cam, so there is no default: look at which way the table turns for a growing word"})
 	}

@@ -282,6 +282,8 @@ func startHoleTable() table[StartHole] {
 func controlTable() table[Control] {
 	return table[Control]{what: "a control", place: func(c *Control, p Place) { c.Place = p },
 		fields: []field[Control]{
+			text("file", "file of named control settings, its path taken from the spec's folder; keys given here stand above those of the set", func(c *Control) *string { return &c.File }),
+			text("set", "name of the settings in that file", func(c *Control) *string { return &c.Set }),
 			integer("decimals", "decimals of the coordinates, default 3 in mm and 4 in inch", 2, 6, func(c *Control) *int { return &c.Decimals }),
 			choice("arc_center", "how I and J give an arc's center, default incremental", []string{"incremental", "absolute"}, nil,
 				func(c *Control, w string) { c.AbsoluteArcs = w == "absolute" }),

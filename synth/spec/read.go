@@ -31,6 +31,11 @@ func Read(file string, data []byte, v Vocabulary) (*Spec, error) {
 	if len(faults) > 0 {
 		return nil, faults
 	}
+	return readRoot(file, data, root, v)
+}
+
+// readRoot reads the spec of a parsed file.
+func readRoot(file string, data []byte, root *yaml.Node, v Vocabulary) (*Spec, error) {
 	r := &reader{file: file, vocabulary: v, places: map[string]spot{}}
 	sum := sha256.Sum256(data)
 	s := &Spec{File: file, SHA256: hex.EncodeToString(sum[:]),

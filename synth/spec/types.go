@@ -281,6 +281,7 @@ type StartHole struct {
 
 // Control describes the NC control that will read the programs.
 type Control struct {
+	File, Set    string  // a file of named sets, from the spec's folder, and the one that holds what the spec leaves out; empty after Load
 	Decimals     int     // default 3 mm, 4 inch
 	AbsoluteArcs bool    // arc_center: absolute; default incremental
 	ArcMismatch  float64 // length; default 0.002 mm, 0.0002 inch

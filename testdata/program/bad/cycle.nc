@@ -1,7 +1,7 @@
-#= @: found "R"; words G X Y Z A B C I J R F S T D H N O M P are read here
+#= @: found G81; G0 G1 G2 G3 G17 G20 G21 G40 G41 G42 G43 G49 G54 to G59 G61 G64 G80 G90 G90.1 G91 G91.1 G93 G94 are read here
 %
 O1
 N10 G21 G17 G90 G40 G49 G80 G94 G54
-G81 X1 Z-1 ▸R2
+▸G81 X1 Z-1 R2
 M30
 %

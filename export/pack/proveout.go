@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 
 	"lobewright/export/sheet"
 	"lobewright/gcode"
@@ -52,15 +53,20 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 	}
 	j.allocate()
 	i := operation - 1
+	if toolDiameter > 0 && s.Operations[i].Process == "wire" {
+		return sheet.ProveOut{}, fmt.Errorf("%s: a tool diameter is of a milling operation; operation %d is wire", file, operation)
+	}
+	head := sheet.ProveOut{Tool: tool, Part: s.Part, Units: string(s.Units), File: file, Operation: operation, Process: s.Operations[i].Process, Chord: j.chord}
+	if j.drum() {
+		return j.proveOutDrum(i, back, head, toolDiameter)
+	}
 	op := j.operation(i, j.chord)
-	diameter := op.WireDiameter
+	head.ToolDiameter = op.WireDiameter
 	if op.Process != gcode.Wire {
 		if toolDiameter > 0 {
 			op.ToolDiameter = toolDiameter
 		}
-		diameter = op.ToolDiameter
-	} else if toolDiameter > 0 {
-		return sheet.ProveOut{}, fmt.Errorf("%s: a tool diameter is of a milling operation; operation %d is %s", file, operation, op.Process)
+		head.ToolDiameter = op.ToolDiameter
 	}
 	expect := gcode.Expected(j.part(op, i), op, j.machine(), j.chord)
 	result, err := gcode.Verify(back, expect)
@@ -68,8 +74,23 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 		return sheet.ProveOut{}, fmt.Errorf("%s: %w", file, err)
 	}
 	p := program{index: i, name: file, expect: expect, result: result}
-	return j.proveOutFacts(p, sheet.ProveOut{Tool: tool, Part: s.Part, Units: string(s.Units), File: file, Operation: operation,
-		Process: s.Operations[i].Process, ToolDiameter: diameter, Chord: j.chord}), nil
+	return j.proveOutFacts(p, head), nil
+}
+
+// proveOutDrum holds a program of a barrel.
+func (j *job) proveOutDrum(i int, back *read.Program, head sheet.ProveOut, toolDiameter float64) (sheet.ProveOut, error) {
+	if toolDiameter > 0 {
+		with := *j.spec
+		with.Operations = slices.Clone(with.Operations)
+		with.Operations[i].ToolDiameter = toolDiameter
+		j.spec = &with
+	}
+	head.ToolDiameter = j.spec.Operations[i].ToolDiameter
+	p, err := j.verifyDrum(program{index: i, name: head.File}, back)
+	if err != nil {
+		return sheet.ProveOut{}, err
+	}
+	return j.proveOutFacts(p, head), nil
 }
 
 // operationNumbered returns the operation, from 1, whose program number is n; 0 when there is none.
@@ -88,8 +109,12 @@ func (j *job) proveOutFacts(p program, out sheet.ProveOut) sheet.ProveOut {
 	for i, c := range r.Cuts {
 		out.Passes = append(out.Passes, j.passFacts(p, i, c))
 	}
-	exact := j.toolPath(r.FinishOffset)
-	if loop, ok := oneTurn(r.Finish, math.Pow10(-j.spec.Control.Decimals)); ok {
+	if p.finish != nil {
+		if run, err := j.follower(*p.finish); err == nil {
+			out.Follower = j.reported(run)
+		}
+	} else if loop, ok := oneTurn(r.Finish, math.Pow10(-j.spec.Control.Decimals)); ok && !j.drum() { // of walls cut apart it is not known
+		exact := j.toolPath(r.FinishOffset)
 		if run, err := j.follower(written{file: p.name, curve: "last pass", path: loop, toPitch: -exact.Left()}); err == nil {
 			out.Follower = j.reported(run)
 		}

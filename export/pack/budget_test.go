@@ -11,6 +11,7 @@ import (
 // at each cam angle the place is searched where the follower touches it, and the motion taken from that place's own
 // circle of curvature. The answers predict the change of lift and acceleration to first order.
 func TestAnswersAgainstParallels(t *testing.T) {
+	t.Parallel()
 	for _, name := range []string{"stick-lift", "tray-tilt", "lid-swing", "brush-wipe", "flap-press", "tray-sweep"} {
 		_, j, err := work(readSample(t, "../../samples/"+name+".yaml"), options())
 		if err != nil {

@@ -60,6 +60,7 @@ func (a toolPose) away(b toolPose, u, x, y, z float64) float64 {
 // where its normal is square to its velocity seen from the cam), against every position of the
 // tool in the file. Nothing of the planner, the certificate or the developed curves is used.
 func TestBarrelWallsInSpace(t *testing.T) {
+	t.Parallel()
 	for _, c := range []struct{ turns, sense, axis, tool, shift string }{
 		{"clockwise", "tool", "A", "16.04", "parallel"},
 		{"counterclockwise", "table", "A", "16.04", "parallel"},
@@ -192,6 +193,7 @@ func randomBarrel(r *rand.Rand) string {
 // A random barrel releases unless a gate of its own geometry speaks; then every curve is where
 // the certificate says, and the follower's lift on it is right.
 func TestRandomBarrelsRelease(t *testing.T) {
+	t.Parallel()
 	mine := map[string]bool{"pressure-angle": true, "undercut": true, "track": true, "wall-error": true}
 	released := 0
 	const specs = 12

@@ -59,6 +59,7 @@ func (e expectation) hold(t *testing.T, key string, got, slack float64) {
 
 // Every gate has a spec that fails it and no other.
 func TestEachGateAlone(t *testing.T) {
+	t.Parallel()
 	files, err := filepath.Glob("../../testdata/gates/*.yaml")
 	if err != nil || len(files) < 21 {
 		t.Fatal(len(files), err)

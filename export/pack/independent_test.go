@@ -83,15 +83,18 @@ func fromTheFile(t *testing.T, id string, j *job) (value, slack float64) {
 		// differ; sampling follows one of them.
 		return farthest(p.finish.exact, p.finish.path), 0.02*j.chord + 2*p.result.ArcMismatch
 	case "clearance":
-		contour := j.cam.Contour()
+		var contour []plane.Point
+		for deg := 0.0; deg < 360; deg += 0.5 {
+			zone, at := j.cam.Cycle().Zone(deg)
+			contour = append(contour, j.cam.Contour().At(zone, at).P)
+		}
 		value = math.Inf(1)
 		for _, m := range moves {
 			for k := range 201 {
 				if m.z < 0 {
 					q := m.path.PointAt(float64(k) / 200)
-					for deg := 0.0; deg < 360; deg += 0.5 {
-						zone, at := j.cam.Cycle().Zone(deg)
-						value = math.Min(value, contour.At(zone, at).P.Dist(q))
+					for _, c := range contour {
+						value = math.Min(value, c.Dist(q))
 					}
 				}
 			}

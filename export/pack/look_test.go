@@ -77,6 +77,7 @@ func labels(t *testing.T, data []byte) (w, h float64, all []label) {
 
 // What people look at of every sample: see the checks.
 func TestSamplesAreDrawn(t *testing.T) {
+	t.Parallel()
 	for _, name := range releasingSamples(t) {
 		_, j, err := work(readSample(t, name), options())
 		if err != nil {

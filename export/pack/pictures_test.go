@@ -11,6 +11,7 @@ import (
 // The pictures of the README are what the program makes now: all of the folder, each
 // named by its sample.
 func TestPicturesAreCurrent(t *testing.T) {
+	t.Parallel()
 	pictures, err := filepath.Glob(filepath.Join(samplesFolder, "pictures", "*.svg"))
 	if err != nil || len(pictures) < 4 {
 		t.Fatalf("%d pictures, %v", len(pictures), err)

@@ -79,6 +79,7 @@ func turns(data []byte) [][3]float64 {
 // stock: the least distance from the contour, sampled densely, is radius and stock, all along the spirals. And the
 // times of the moves make the asked feed over the contour.
 func TestPolarProgramsInThePlane(t *testing.T) {
+	t.Parallel()
 	for _, way := range []string{"clockwise", "counterclockwise"} {
 		for _, sense := range []string{"tool", "table"} {
 			s := rowStop(t, "rotation: clockwise", "rotation: "+way, "rotary_sense: table", "rotary_sense: "+sense)
@@ -140,6 +141,7 @@ func TestPolarProgramsInThePlane(t *testing.T) {
 
 // What is wrong in a program is found at its line, by the proof alone: the comparison with the plan is left out.
 func TestPolarDamages(t *testing.T) {
+	t.Parallel()
 	_, j, err := work(rowStop(t), options())
 	if err != nil {
 		t.Fatal(err)
@@ -214,6 +216,7 @@ func TestPolarDamages(t *testing.T) {
 
 // Seconds under G93 are sixty over what is written otherwise, and are proven as such.
 func TestInverseTimeInSeconds(t *testing.T) {
+	t.Parallel()
 	minutes, seconds := 0.0, 0.0
 	for _, total := range []*float64{&minutes, &seconds} {
 		change := []string{}

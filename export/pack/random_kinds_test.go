@@ -64,6 +64,7 @@ func spec1(roller float64) float64 { return math.Round(2*roller*1000) / 1000 }
 // A random cam of any kind releases unless a gate of its own geometry speaks, and then what
 // is written is where the certificate says, and the follower's errors on it are small.
 func TestRandomKindsRelease(t *testing.T) {
+	t.Parallel()
 	mine := map[string]bool{"pressure-angle": true, "undercut": true, "undercut-outer": true, "reach": true, "contact": true, "swing": true, "pivot": true, "arm": true, "wall": true, "blank": true}
 	for _, c := range []struct {
 		kind   string

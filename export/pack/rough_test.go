@@ -12,6 +12,7 @@ import (
 // largest smaller tolerance that does it when it is the same everywhere, found here by bisection
 // of the logarithm; the DXF's grid is too fine to matter.
 func TestRefinesWhereItIsFelt(t *testing.T) {
+	t.Parallel()
 	sum, uniformly := 0, 0
 	for _, name := range []string{"stick-lift", "tray-tilt"} {
 		limit := 0.15

@@ -58,6 +58,7 @@ func options() Options { return Options{Tool: "lobewright test", DXF: "2000"} }
 // Every sample releases, with every file of the contract, the same bytes each time,
 // and a report whose figures hold.
 func TestSamplesRelease(t *testing.T) {
+	t.Parallel()
 	for _, name := range releasingSamples(t) {
 		t.Run(strings.TrimSuffix(filepath.Base(name), ".yaml"), func(t *testing.T) {
 			s := readSample(t, name)
@@ -119,6 +120,7 @@ func TestSamplesRelease(t *testing.T) {
 
 // The refused samples are refused by the gate their comment speaks of, alone.
 func TestSamplesRefused(t *testing.T) {
+	t.Parallel()
 	for name, gate := range map[string]string{"refused-steep": "pressure-angle", "refused-roller": "undercut"} {
 		p, err := Make(readSample(t, filepath.Join(samplesFolder, name+".yaml")), options())
 		if err != nil {

@@ -15,6 +15,7 @@ import (
 // Whatever a control takes, every program of a plate and a groove keeps to it and is proven: arcs by center or radius, none flatter, shorter
 // or longer than it allows, lines no longer than it reads.
 func TestControlSettings(t *testing.T) {
+	t.Parallel()
 	r := rand.New(rand.NewSource(7))
 	for i, name := range []string{"stick-lift", "lid-swing", "carton-shift", "label-dab", "stick-lift", "flap-press"} {
 		s := readSample(t, samplesFolder+"/"+name+".yaml")

@@ -289,3 +289,19 @@ func BenchmarkSolve(b *testing.B) {
 		}
 	}
 }
+
+// A lift of 0, where the floor is, and a carried stretch soon after: the program of the least peak jerk is degenerate there, and
+// the usual steps of the method shrink to nothing.
+func TestDegenerateVertex(t *testing.T) {
+	facts := []partial.Fact{at(0, 0), carry(20, 60, 0.05)}
+	for _, jerk := range []bool{true, false} {
+		r, err := partial.Solve(partial.Problem{Facts: facts, Jerk: jerk, JerkRatio: 3.877265016857833})
+		if err != nil {
+			t.Fatal(err)
+		}
+		meets(t, "degenerate", facts, r)
+		if !jerk && !(r.Acceleration >= r.LeastAcceleration && r.Acceleration < 1.02*r.LeastAcceleration) {
+			t.Errorf("acceleration %g, bound %g", r.Acceleration, r.LeastAcceleration)
+		}
+	}
+}

@@ -92,7 +92,21 @@ var ErrNoSolution = errors.New("no solution found")
 // point it met, whose multipliers may still serve: a bound made from multipliers is true
 // for any.
 func Solve(p Problem) (Solution, error) {
+	at, err := solve(p, false)
+	if err == nil {
+		return at, nil
+	}
+	if again, err := solve(p, true); err == nil || again.Residual < at.Residual {
+		return again, err
+	}
+	return at, err
+}
+
+// solve runs the method. Cautious, it starts further inside and keeps more to the middle, without the
+// corrector: where a degenerate vertex makes the usual steps shrink to nothing, these do not. They are some two times as many.
+func solve(p Problem, cautious bool) (Solution, error) {
 	s := newSolver(p)
+	s.cautious = cautious
 	s.start()
 	at := s.point()
 	at.Residual = math.Inf(1)

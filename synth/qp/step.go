@@ -13,6 +13,7 @@ type solver struct {
 	d          []float64 // D = z/s
 	size       float64   // scale of the objective's gradient
 	gap        float64   // s'z at the present point
+	cautious   bool
 }
 
 func newSolver(p Problem) *solver {
@@ -100,7 +101,17 @@ func (s *solver) start() {
 	}
 	inside(s.s)
 	inside(s.z)
+	if s.cautious {
+		for i := range s.s {
+			s.s[i], s.z[i] = s.s[i]+deeper, s.z[i]+deeper
+		}
+	}
 }
+
+const (
+	deeper  = 10.0 // what a cautious start adds to slacks and multipliers
+	midmost = 0.2  // the least share of the gap that a cautious step keeps
+)
 
 // inside shifts a vector until all of it is above 0.
 func inside(v []float64) {
@@ -277,6 +288,10 @@ func (s *solver) advance() bool {
 	after /= float64(max(m, 1))
 	sigma := math.Pow(after/mu, 3)
 	for i := range rc {
+		if s.cautious {
+			rc[i] -= math.Max(sigma, midmost) * mu
+			continue
+		}
 		rc[i] += ds[i]*dz[i] - sigma*mu
 	}
 	dx, dy, ds, dz := s.direction(rc)

@@ -5,17 +5,7 @@ import "fmt"
 // header says what the person at the machine must compare with the set-up.
 func (p drumPlan) header() []string {
 	d, op, m := p.d, p.op, p.m
-	unit, turn := "MM", "COUNTERCLOCKWISE"
-	if d.Inch {
-		unit = "INCH"
-	}
-	if d.CamClockwise {
-		turn = "CLOCKWISE"
-	}
-	h := []string{"PART " + d.Name + " REVISION " + d.Revision}
-	if d.Title != "" {
-		h = append(h, "TITLE "+d.Title)
-	}
+	h, unit, turn := heading(d.Name, d.Revision, d.Title, d.Inch, d.CamClockwise)
 	axial, across := "X", "Y"
 	if op.Rotary == 'B' {
 		axial, across = across, axial

@@ -8,17 +8,7 @@ import (
 // header returns the comments before the first block. They hold what the person
 // at the machine must compare with the set-up; none of it is read by the control.
 func header(part Part, op Operation, m Machine) []string {
-	unit, turn := "MM", "COUNTERCLOCKWISE"
-	if part.Inch {
-		unit = "INCH"
-	}
-	if part.CamClockwise {
-		turn = "CLOCKWISE"
-	}
-	h := []string{"PART " + part.Name + " REVISION " + part.Revision}
-	if part.Title != "" {
-		h = append(h, "TITLE "+part.Title)
-	}
+	h, unit, turn := heading(part.Name, part.Revision, part.Title, part.Inch, part.CamClockwise)
 	h = append(h,
 		fmt.Sprintf("OPERATION %d %s XY", op.Number, op.Process),
 		"UNITS "+unit,
@@ -39,6 +29,22 @@ func header(part Part, op Operation, m Machine) []string {
 		h = append(h, fmt.Sprintf("SET D%d %s %s", r.Number, m.text(r.Value), r.Text))
 	}
 	return append(h, cautions(op)...)
+}
+
+// heading names the part; unit and turn are the words for its unit and the camshaft's turning direction.
+func heading(name, revision, title string, inch, clockwise bool) (h []string, unit, turn string) {
+	unit, turn = "MM", "COUNTERCLOCKWISE"
+	if inch {
+		unit = "INCH"
+	}
+	if clockwise {
+		turn = "CLOCKWISE"
+	}
+	h = []string{"PART " + name + " REVISION " + revision}
+	if title != "" {
+		h = append(h, "TITLE "+title)
+	}
+	return h, unit, turn
 }
 
 // text prints a length with the decimals of the control.

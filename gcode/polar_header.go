@@ -5,17 +5,7 @@ import "fmt"
 // header says what the person at the machine must compare with the set-up.
 func (p polarPlan) header() []string {
 	part, op, m := p.part, p.op, p.m
-	unit, turn := "MM", "COUNTERCLOCKWISE"
-	if part.Inch {
-		unit = "INCH"
-	}
-	if part.CamClockwise {
-		turn = "CLOCKWISE"
-	}
-	h := []string{"PART " + part.Name + " REVISION " + part.Revision}
-	if part.Title != "" {
-		h = append(h, "TITLE "+part.Title)
-	}
+	h, unit, turn := heading(part.Name, part.Revision, part.Title, part.Inch, part.CamClockwise)
 	process, tool := "MILL", "TOOL T%d DIAMETER %s RIGHT-HAND"
 	if op.Grinds {
 		process, tool = "GRIND", "WHEEL T%d DIAMETER %s AS IT IS DRESSED"

@@ -119,8 +119,21 @@ func (v *drumVerifier) walk() {
 		}
 	}
 	flush()
+	v.width()
 	if v.next != len(v.x.Passes) {
 		v.fail("coverage", float64(v.next), float64(len(v.x.Passes)), nan(), 0, "%d cuts, expected %d", v.next, len(v.x.Passes))
+	}
+}
+
+// width holds a tool that goes on the pitch curve alone: it makes the groove's width.
+func (v *drumVerifier) width() {
+	for _, c := range v.x.Passes {
+		if c.Pass.Side != 0 {
+			return
+		}
+	}
+	if tool, room := 2*v.x.Expect.Radius, 2*v.x.HalfWidth; math.Abs(tool-room) > wholeWidth*room {
+		v.fail("groove-width", tool, room, nan(), 0, "the tool cuts the groove %.6g wide, wanted %.6g", tool, room)
 	}
 }
 

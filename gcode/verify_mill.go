@@ -2,6 +2,7 @@ package gcode
 
 import (
 	"math"
+	"slices"
 
 	"lobewright/gcode/read"
 	"lobewright/synth/plane"
@@ -128,6 +129,9 @@ func (v *verifier) millCut(group []read.Move, k int) {
 		}
 	}
 	r.first, r.last = v.followed(group, r.cut.Stock, v.band)
+	if r.first == r.last && v.x.Rotary != 0 { // another tool: the narrow band of a slide is about where most moves end
+		r.first, r.last = v.followed(group, v.median(group), v.band)
+	}
 	tool := r.cut.Offset - v.x.Eps
 	if r.first == r.last {
 		v.fail("coverage", 0, 360, nan(), line, "no move of this cut follows the contour at %.6g", r.cut.Offset)
@@ -172,4 +176,15 @@ func (v *verifier) followed(group []read.Move, distance, band float64) (first, l
 		i = next
 	}
 	return first, last
+}
+
+// median is the distance from the contour above and below which as many moves end.
+func (v *verifier) median(group []read.Move) float64 {
+	var all []float64
+	for _, m := range group {
+		d, _ := v.outline.near(m.To)
+		all = append(all, d)
+	}
+	slices.Sort(all)
+	return all[len(all)/2]
 }

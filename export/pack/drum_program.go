@@ -13,12 +13,18 @@ import (
 	"lobewright/tolerance/fit"
 )
 
+// drumAxis is the path of the axis of a tool of a diameter, at a distance from the camshaft axis, both lengths.
+func (j *job) drumAxis(i int, diameter float64) func(p gcode.DrumPass, z float64) *synth.Curve {
+	rotary := j.spec.Operations[i].Shift == "rotary"
+	return func(p gcode.DrumPass, z float64) *synth.Curve {
+		return j.cam.ToolAxis(synth.DrumTool{Radius: diameter/2 + p.Stock, Side: p.Side, Rotary: rotary, At: z})
+	}
+}
+
 // drumPart is the barrel as an operation sees it, its paths fitted to eps.
 func (j *job) drumPart(i int, eps float64) gcode.Drum {
 	s, op := j.spec, j.spec.Operations[i]
-	axis := func(p gcode.DrumPass, z float64) *synth.Curve {
-		return j.cam.ToolAxis(synth.DrumTool{Radius: op.ToolDiameter/2 + p.Stock, Side: p.Side, Rotary: op.Shift == "rotary", At: z})
-	}
+	axis := j.drumAxis(i, op.ToolDiameter)
 	return gcode.Drum{Name: s.Part, Title: s.Title, Revision: s.Revision, Inch: s.Units == spec.Inch, CamClockwise: s.Camshaft.Clockwise,
 		Radius: s.Cam.Radius, Length: s.Cam.Length, Depth: s.Cam.GrooveDepth, Width: j.cam.GrooveWidth(), Begins: j.begins(),
 		Axis: func(p gcode.DrumPass, z float64) gcode.Curve { return axis(p, z) },
@@ -52,9 +58,16 @@ func (j *job) drumOperation(i int) gcode.Operation {
 	return op
 }
 
-// verifyDrum holds a program against the exact paths of its tool.
+// verifyDrum holds a program against the exact paths of its tool, which is that of the operation.
 func (j *job) verifyDrum(p program, back *read.Program) (program, error) {
+	return j.verifyDrumTool(p, back, j.spec.Operations[p.index].ToolDiameter)
+}
+
+// verifyDrumTool does so with a tool of another diameter (a length) than the operation's in the machine.
+func (j *job) verifyDrumTool(p program, back *read.Program, diameter float64) (program, error) {
 	expect := gcode.ExpectedDrum(j.drumPart(p.index, j.chord), j.drumOperation(p.index), j.machine(), j.chord)
+	axis := j.drumAxis(p.index, diameter)
+	expect.Axis, expect.Expect.Radius = func(p gcode.DrumPass, z float64) gcode.Curve { return axis(p, z) }, diameter/2
 	result, err := gcode.VerifyDrum(back, expect)
 	if err != nil {
 		return p, fmt.Errorf("%s: %w", p.name, err)

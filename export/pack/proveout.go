@@ -4,7 +4,6 @@ import (
 	"errors"
 	"fmt"
 	"math"
-	"slices"
 
 	"lobewright/export/sheet"
 	"lobewright/gcode"
@@ -79,14 +78,11 @@ func ProveOut(s *spec.Spec, file string, data []byte, operation int, toolDiamete
 
 // proveOutDrum holds a program of a barrel.
 func (j *job) proveOutDrum(i int, back *read.Program, head sheet.ProveOut, toolDiameter float64) (sheet.ProveOut, error) {
-	if toolDiameter > 0 {
-		with := *j.spec
-		with.Operations = slices.Clone(with.Operations)
-		with.Operations[i].ToolDiameter = toolDiameter
-		j.spec = &with
-	}
 	head.ToolDiameter = j.spec.Operations[i].ToolDiameter
-	p, err := j.verifyDrum(program{index: i, name: head.File}, back)
+	if toolDiameter > 0 {
+		head.ToolDiameter = toolDiameter
+	}
+	p, err := j.verifyDrumTool(program{index: i, name: head.File}, back, head.ToolDiameter)
 	if err != nil {
 		return sheet.ProveOut{}, err
 	}

@@ -169,6 +169,7 @@ func (p drumPlan) slot() error {
 		// A ramp at either end, each with a station where it ends.
 		path := append(p.cut(turn, 0, rampDegrees), p.cut(turn, rampDegrees, 360)[1:]...)
 		path = append(path, p.cut(turn, 360, 360+rampDegrees)[1:]...)
+		path = p.short(path)
 		if k%2 == 1 {
 			path = reversed(path)
 		}
@@ -212,6 +213,7 @@ func (p drumPlan) wall(w DrumPass, forward bool) error {
 	path := p.slide(middle, turn, -leadDegrees, 0)
 	path = append(path, p.cut(turn, 0, 360+slotOverlap)[1:]...)
 	path = append(path, p.slide(middle, turn, 360+slotOverlap+leadDegrees, 360+slotOverlap)[1:]...)
+	path = p.short(path)
 	if !forward {
 		path = reversed(path)
 	}
@@ -234,7 +236,7 @@ func (p drumPlan) wall(w DrumPass, forward bool) error {
 
 // approach goes over a station and down to a height, in counts.
 func (p drumPlan) approach(s station, z int64, first bool) {
-	over := Block{Motion: Rapid, R: count(s.r)}
+	over := Block{Motion: Rapid, R: p.rotaryWord(s.r)}
 	p.linear(&over, s, true)
 	p.add(over)
 	if first {
@@ -260,7 +262,7 @@ func (p drumPlan) offCenter() bool { return !p.d.fills(p.op) && !p.op.RotaryShif
 
 // move adds a feed move in inverse time.
 func (p drumPlan) move(from, to station, z0, z1 int64, feed float64, first bool) {
-	b := Block{Motion: Straight, R: count(to.r)}
+	b := Block{Motion: Straight, R: p.rotaryWord(to.r)}
 	if first {
 		b.G = []Code{FeedInverse}
 	}

@@ -21,6 +21,7 @@ func (p drumPlan) header() []string {
 		fmt.Sprintf("%c0 POLAR ANGLE 0 UNDER THE TOOL. GROWING %c %s,", op.Rotary, op.Rotary, carries),
 		"SEEN ON THE MARKED FACE. CAM TURNS "+turn+" SEEN SO.",
 		"A WRONG ROTARY SENSE IS A MIRRORED CAM",
+		m.rotaryWords(op.Rotary),
 		"Z0 OUTER RADIUS "+m.text(d.Radius)+". TOOL AXIS RADIAL, Z PLUS AWAY. SAFE Z "+m.text(m.SafeZ),
 		fmt.Sprintf("%s0 TOOL OVER THE CAMSHAFT AXIS", across),
 		"BARREL LENGTH "+m.text(d.Length)+", TURNED TO ITS RADIUS",

@@ -25,6 +25,7 @@ type Expect struct {
 	CamClockwise bool
 	Curve        func(offset float64) Curve
 	Rotary       byte    // letter of the rotary axis; 0 when there is none
+	Modulo       bool    // the rotary axis rolls over and goes the short way
 	Turning      Turning // of a plate on a rotary and a radial axis
 	Grinds       bool    // a wheel, else a cutter
 	Compensation Compensation
@@ -90,7 +91,7 @@ func Expected(part Part, op Operation, m Machine, eps float64) Expect {
 	}
 	x.Clockwise, x.Radius, x.Tool, x.Speed = op.clockwise(), op.radius(), op.Tool, op.speed()
 	if op.Rotary != 0 && op.Process == Mill {
-		x.Rotary, x.Grinds, x.Turning = op.Rotary, op.Grinds, Turning{way: turningOf(part.CamClockwise, m), Speed: m.RotarySpeed, Rate: m.RotaryRate, Seconds: m.InverseSeconds, band: part.slideBand()}
+		x.Rotary, x.Modulo, x.Grinds, x.Turning = op.Rotary, m.RotaryModulo, op.Grinds, Turning{way: turningOf(part.CamClockwise, m), Speed: m.RotarySpeed, Rate: m.RotaryRate, Seconds: m.InverseSeconds, band: part.slideBand()}
 	}
 	x.PlungeFeed, x.SafeZ = written(op.PlungeFeed), written(m.SafeZ)
 	x.BlankDiameter, x.ClampRadius = part.BlankDiameter, part.ClampRadius

@@ -209,6 +209,7 @@ type Machine struct {
 	SafeZ        float64  // length above the top of the blank
 
 	RotaryDecimals int     // 0 to 9, of degrees
+	RotaryModulo   bool    // the axis rolls over: rotary words are 0 to 360 and the control goes the short way, else they run on
 	RotaryTable    bool    // growing rotary words turn the work, else the tool about it, counterclockwise seen on the marked face
 	RotarySpeed    float64 // largest speed of the rotary axis, degrees/min; 0 when not limited
 	RotaryRate     float64 // largest acceleration of the rotary axis, degrees/s²; 0 when not limited

@@ -146,7 +146,7 @@ func (p polarPlan) pass(i int) error {
 	from, to := start, start+360+p.op.overlap()
 	slide := p.part.slideDegrees(float64(p.cut(turn, from, to)[0].axial) * p.grid.Step())
 	path := append(p.slideTo(turn, from-slide, from), p.cut(turn, from, to)...)
-	path = append(path, p.slideTo(turn, to+slide, to)...)
+	path = p.short(append(path, p.slideTo(turn, to+slide, to)...))
 	if p.op.clockwise() == p.part.CamClockwise { // against the cam angle
 		path = reversed(path)
 	}
@@ -161,14 +161,14 @@ func (p polarPlan) pass(i int) error {
 	for k, z := range zs {
 		p.note(fmt.Sprintf("PASS %d STOCK %s DEPTH %d OF %d", i+1, p.grid.Format(counts(p.grid, p.op.Stock[i])), k+1, len(zs)))
 		first := path[0]
-		p.add(Block{Motion: Rapid, R: count(first.r), X: far})
+		p.add(Block{Motion: Rapid, R: p.rotaryWord(first.r), X: far})
 		if i == 0 && k == 0 {
 			p.z(Rapid, p.m.SafeZ, Block{G: []Code{LengthOn}, H: number(p.op.Tool)})
 		}
 		p.add(Block{G: []Code{FeedPerMinute}, Motion: Straight, Z: count(z), F: p.feed(p.op.PlungeFeed)})
 		p.add(Block{Motion: Straight, X: count(first.axial), F: p.feed(p.op.Feed)})
 		for n, s := range path[1:] {
-			b := Block{Motion: Straight, R: count(s.r), X: count(s.axial)}
+			b := Block{Motion: Straight, R: p.rotaryWord(s.r), X: count(s.axial)}
 			if n == 0 {
 				b.G = []Code{FeedInverse}
 			}

@@ -22,6 +22,7 @@ func (p polarPlan) header() []string {
 		fmt.Sprintf("%c0 POLAR ANGLE 0 UNDER THE TOOL. GROWING %c %s,", op.Rotary, op.Rotary, carries),
 		"SEEN ON THE MARKED FACE. CAM TURNS "+turn+" SEEN SO.",
 		"A WRONG ROTARY SENSE IS A MIRRORED CAM",
+		m.rotaryWords(op.Rotary),
 	)
 	h = append(h, body(part, m)...)
 	h = append(h,

@@ -11,7 +11,7 @@ import (
 // does not go all around), "clearance" (a lead, link, plunge or rapid comes too near to
 // the finished contour), "lead" (a lead is not tangent to its cut), "reach" (the tool on its own cut gouges another
 // flank), "clamp", "blank" (a rapid through material), "arc-mismatch", "block-count",
-// "depth", "feed", "words" (units, tool, spindle, compensation, end), "order" (wire).
+// "depth", "feed", "rotary-speed", "rotary-acceleration", "groove-width" (the tool is not as wide as the groove), "words" (units, tool, spindle, compensation, end), "order" (wire).
 type Failure struct {
 	ID       string
 	Value    float64 // found; NaN when it is no number
@@ -41,6 +41,7 @@ type Result struct {
 	ClearanceLine   int
 	ArcMismatch     float64 // largest, length
 	ArcMismatchLine int
+	Rotary          Spin // where the work turns
 	Blocks, Bytes   int
 	Lines, Arcs     int        // feed moves by kind
 	ShortestMove    float64    // of the feed moves in the plane, length
@@ -49,6 +50,12 @@ type Result struct {
 	Finish          chain.Path // the last cut as written, growing cam angle (wire: its longest stretch)
 	FinishOffset    float64    // distance of Finish from the finished contour, length
 	Failures        []Failure
+}
+
+// Spin is the hardest that a program drives its rotary axis, with the lines of the file; 0 when it has none.
+type Spin struct {
+	Speed, Rate         float64 // degrees/min, degrees/s²
+	SpeedLine, RateLine int
 }
 
 // Rapid rates that Seconds assumes, length/min. Common practice, no source.

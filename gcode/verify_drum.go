@@ -26,6 +26,7 @@ type DrumExpect struct {
 	Room                 func(stock float64) float64
 	RotaryTable          bool
 	RotarySpeed          float64 // degrees/min; 0 when not limited
+	RotaryRate           float64 // degrees/s²; 0 when not limited
 	Seconds              bool    // F under G93 is seconds
 	OffCenter            bool
 }
@@ -34,9 +35,9 @@ type DrumExpect struct {
 // exact path at every depth.
 func ExpectedDrum(d Drum, op Operation, m Machine, eps float64) DrumExpect {
 	g := m.grid()
-	x := DrumExpect{Axis: d.Axis, Sense: d.sense(), Radius: d.Radius, Depth: d.Depth, RotaryTable: m.RotaryTable, RotarySpeed: m.RotarySpeed, Seconds: m.InverseSeconds,
+	x := DrumExpect{Axis: d.Axis, Sense: d.sense(), Radius: d.Radius, Depth: d.Depth, RotaryTable: m.RotaryTable, RotarySpeed: m.RotarySpeed, RotaryRate: m.RotaryRate, Seconds: m.InverseSeconds,
 		Room: func(stock float64) float64 { return d.room(op, stock) }, OffCenter: !d.fills(op) && !op.RotaryShift}
-	x.Expect = Expect{Process: Slot, Number: op.programNumber(), Fluid: op.Coolant > 0, Inch: d.Inch, Eps: eps, CamClockwise: d.CamClockwise, Compensation: op.Compensation, Rotary: op.Rotary,
+	x.Expect = Expect{Process: Slot, Number: op.programNumber(), Fluid: op.Coolant > 0, Inch: d.Inch, Eps: eps, CamClockwise: d.CamClockwise, Compensation: op.Compensation, Rotary: op.Rotary, Modulo: m.RotaryModulo,
 		Feed: gridValue(g, op.Feed), FeedStep: g.Step(), MaxBlocks: m.MaxBlocks, Limits: m.Limits, Path: m.Path, PathBlend: gridValue(g, m.PathBlend), Own: ownLines(op, m), ArcMismatch: m.ArcMismatch, Radius: op.radius(), Tool: op.Tool, Speed: op.speed(),
 		PlungeFeed: gridValue(g, op.PlungeFeed), SafeZ: gridValue(g, m.SafeZ), HalfWidth: d.Width / 2}
 	height := func(z int64) float64 { return float64(z) / float64(counts(g, 1)) }
@@ -57,6 +58,8 @@ type drumVerifier struct {
 	verifier
 	x    DrumExpect
 	next int // pass that is expected next
+	spin spin
+	way  float64 // sign of the last turn
 	z    float64
 }
 
@@ -77,6 +80,9 @@ func VerifyDrum(p *read.Program, x DrumExpect) (Result, error) {
 		return Result{}, fmt.Errorf("verify: a program, a path, passes and a positive Eps are needed")
 	}
 	v := &drumVerifier{verifier: verifier{p: p, x: x.Expect}, x: x}
+	if x.Modulo {
+		v.p = unwound(p, func(line int, format string, args ...any) { v.wrong("words", line, format, args...) })
+	}
 	v.words()
 	v.walk()
 	v.tally()
@@ -107,11 +113,13 @@ func (v *drumVerifier) walk() {
 			v.wrong("words", m.LineNo, "an arc where two axes of different kinds move")
 		case m.Kind == read.Rapid:
 			flush()
+			v.spin.stop()
 			v.rapid(m)
 		case !m.KnownXY || !m.KnownZ || !m.KnownR:
 			v.wrong("depth", m.LineNo, "a feed move from an unknown place")
 		case !m.Inverse:
 			flush()
+			v.spin.stop()
 			v.plunge(m)
 		default:
 			v.feed(m)
@@ -186,9 +194,14 @@ func (v *drumVerifier) feed(m read.Move) {
 	if math.Abs(m.Feed-want) > v.x.FeedStep+rounding*want {
 		v.fail("feed", m.Feed, want, nan(), m.LineNo, "F%g, expected F%.6g for this move at %g a minute", m.Feed, want, asked)
 	}
-	if speed := math.Abs(m.ToR-m.FromR) / minutes(m.Feed, v.x.Seconds); v.x.RotarySpeed > 0 && speed > v.x.RotarySpeed {
-		v.fail("rotary-speed", speed, v.x.RotarySpeed, nan(), m.LineNo, "the rotary axis runs at %.6g degrees/min, it may at %.6g; take a lower feed", speed, v.x.RotarySpeed)
+	by := m.ToR - m.FromR
+	if by*v.way < 0 { // a turn back begins from rest
+		v.spin.stop()
 	}
+	v.way = by
+	v.spin.move(m, minutes(m.Feed, v.x.Seconds), v.x.RotarySpeed, v.x.RotaryRate, func(id string, value, limit float64, line int, format string, args ...any) {
+		v.fail(id, value, limit, nan(), line, format, args...)
+	})
 	if m.Comp != read.Off {
 		v.wrong("words", m.LineNo, "a move under %v: the groove is cut without compensation", m.Comp)
 	}
@@ -357,6 +370,7 @@ func (v *drumVerifier) between(moves []read.Move, c DrumCut, forward bool) {
 // tally fills the figures that need no proof.
 func (v *drumVerifier) tally() {
 	r := &v.res
+	r.Rotary = v.spin.worst
 	r.Blocks, r.Bytes, r.ShortestMove = v.p.Blocks, v.p.Bytes, math.Inf(1)
 	rapid := RapidMM
 	if v.p.Inch {

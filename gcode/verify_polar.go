@@ -29,6 +29,10 @@ func minutes(f float64, seconds bool) float64 {
 // spirals (spiral.go), by what holds programs in the plane. What those arcs may be off is taken from the tolerance first.
 func verifyPolar(p *read.Program, x Expect) (Result, error) {
 	f := &flattened{p: p, x: x, enough: x.Eps / 200}
+	if x.Modulo {
+		p = unwound(p, func(line int, format string, args ...any) { f.fail("words", nan(), nan(), line, format, args...) })
+		f.p = p
+	}
 	for i := range p.Moves {
 		f.move(i)
 	}
@@ -75,8 +79,7 @@ type flattened struct {
 	knownX   bool
 	touch    map[float64]touching
 	failures []Failure
-	before   float64 // degrees/s of the last move under inverse time, with its seconds
-	lasted   float64
+	spin     spin
 	plunges  int // feed moves of Z so far
 }
 
@@ -92,6 +95,9 @@ func (f *flattened) move(i int) {
 	f.knownX = f.knownX || m.HasXY
 	s := spiral{f.x.Turning.way.polar(m.FromR), f.x.Turning.way.polar(m.ToR), m.From.X, m.To.X}
 	turns := m.FromR != m.ToR
+	if m.Kind == read.Rapid {
+		f.spin.stop()
+	}
 	if m.Kind != read.Rapid && m.HasZ {
 		f.plunges++
 	}
@@ -176,16 +182,7 @@ func (f *flattened) hold(m read.Move, s spiral) float64 {
 	if math.Abs(m.Feed-want) > f.x.FeedStep+rounding*want {
 		f.fail("feed", m.Feed, want, m.LineNo, "F%g, expected F%.6g for this move at %g a minute over the contour", m.Feed, want, f.x.Feed)
 	}
-	took := minutes(m.Feed, t.Seconds)
-	speed := (m.ToR - m.FromR) / took
-	if t.Speed > 0 && math.Abs(speed) > t.Speed {
-		f.fail("rotary-speed", math.Abs(speed), t.Speed, m.LineNo, "the rotary axis runs at %.6g degrees/min, it may at %.6g; take a lower feed", math.Abs(speed), t.Speed)
-	}
-	// Between the middles of two moves the speed changes by what they differ in.
-	if rate := math.Abs(speed/60-f.before) / (30 * (took + f.lasted)); f.lasted > 0 && t.Rate > 0 && rate > t.Rate {
-		f.fail("rotary-acceleration", rate, t.Rate, m.LineNo, "the rotary axis is accelerated by %.6g degrees/s² from the move before, it may be by %.6g; take a lower feed", rate, t.Rate)
-	}
-	f.before, f.lasted = speed/60, took
+	f.spin.move(m, minutes(m.Feed, t.Seconds), t.Speed, t.Rate, f.fail)
 	return f.x.Feed
 }
 
@@ -202,6 +199,7 @@ func (f *flattened) between(first, last int) int {
 
 // tally replaces the figures that the arcs falsify.
 func (f *flattened) tally(r *Result) {
+	r.Rotary = f.spin.worst
 	r.Arcs, r.Lines, r.ArcMismatch, r.ArcMismatchLine, r.ShortestMove = 0, 0, 0, 0, math.Inf(1)
 	rapid, total := RapidMM, 0.0
 	if f.p.Inch {

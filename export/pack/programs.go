@@ -221,7 +221,7 @@ func (j *job) machine() gcode.Machine {
 	c := j.spec.Control
 	return gcode.Machine{Decimals: c.Decimals, AbsoluteArcs: c.AbsoluteArcs, ArcMismatch: c.ArcMismatch,
 		BlockNumbers: c.BlockNumbers, MaxBlocks: c.MaxBlocks, SafeZ: c.SafeZ,
-		RotaryDecimals: c.RotaryDecimals, RotaryTable: c.RotarySense == "table", RotarySpeed: c.RotarySpeed,
+		RotaryDecimals: c.RotaryDecimals, RotaryModulo: c.RotaryModulo, RotaryTable: c.RotarySense == "table", RotarySpeed: c.RotarySpeed,
 		Limits:     gcode.Limits{Radius: c.LargestRadius, Chord: c.LeastChord, Sweep: c.SplitAngle, Bytes: c.MaxBytes, Line: c.LineLength},
 		RadiusArcs: c.RadiusArcs, Path: gcode.PathMode(c.PathMode), PathBlend: c.PathTolerance, Start: c.ProgramStart, End: c.ProgramEnd, Semicolons: c.Semicolons,
 		RotaryRate: c.RotaryAcceleration, InverseSeconds: c.InverseSeconds}
@@ -335,6 +335,7 @@ func (j *job) programGates(p program) []gate.Gate {
 		gates = append(gates, gate.Gate{ID: "block-count", Of: p.short(), Value: float64(r.Blocks), Limit: float64(limit), CamAngle: none, Polar: none,
 			Pass: r.Blocks <= limit, Text: fmt.Sprintf("blocks of %s; allow a larger chord, fewer passes or a larger max_blocks", p.name)})
 	}
+	gates = append(gates, j.rotaryGates(p)...)
 	kinds := map[string]int{} // index of the gate that names the first failure of its kind
 	for _, f := range r.Failures {
 		if j.judged(p, f) {
@@ -358,15 +359,31 @@ func (j *job) programGates(p program) []gate.Gate {
 	return gates
 }
 
+// rotaryGates hold the rotary axis against the limits that the spec gives.
+func (j *job) rotaryGates(p program) []gate.Gate {
+	spin, c, none := p.result.Rotary, j.spec.Control, math.NaN()
+	if p.expect.Rotary == 0 {
+		return nil
+	}
+	one := func(id, unit, what string, value, limit float64, line int) gate.Gate {
+		return gate.Gate{ID: id, Of: p.short(), Value: value, Limit: limit, Unit: unit, CamAngle: none, Polar: none, Pass: value <= limit,
+			Text: fmt.Sprintf("largest %s of the rotary axis in %s (line %d); take a lower feed", what, p.name, line)}
+	}
+	var gates []gate.Gate
+	if c.RotarySpeed > 0 {
+		gates = append(gates, one("rotary-speed", "deg/min", "speed", spin.Speed, c.RotarySpeed, spin.SpeedLine))
+	}
+	if c.RotaryAcceleration > 0 {
+		gates = append(gates, one("rotary-acceleration", "deg/s²", "acceleration, from one move to the next,", spin.Rate, c.RotaryAcceleration, spin.RateLine))
+	}
+	return gates
+}
+
 // failureUnit is the unit of a failure's value and limit; length is the part's.
 func failureUnit(id, length string) string {
 	switch id {
 	case "lead", "coverage":
 		return "deg"
-	case "rotary-speed":
-		return "deg/min"
-	case "rotary-acceleration":
-		return "deg/s²"
 	case "words", "feed":
 		return ""
 	}
@@ -378,7 +395,7 @@ func failureUnit(id, length string) string {
 func (j *job) judged(p program, f gcode.Failure) bool {
 	fails := !(p.result.Deviation.Bound <= j.chord)
 	switch f.ID {
-	case "arc-mismatch", "block-count":
+	case "arc-mismatch", "block-count", "rotary-speed", "rotary-acceleration":
 		return true
 	case "deviation":
 		return fails

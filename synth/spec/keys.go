@@ -305,6 +305,7 @@ func controlTable() table[Control] {
 			choice("rotary_sense", "what a growing rotary word turns counterclockwise, seen on the marked face: the tool about the work, or the table with the work; needed for axes polar and cylinder, no default", []string{"tool", "table"}, nil,
 				func(c *Control, w string) { c.RotarySense = w }),
 			integer("rotary_decimals", "decimals of rotary words, default 3", 2, 6, func(c *Control) *int { return &c.RotaryDecimals }),
+			choice("rotary_words", "whether rotary words run on, default unwound: past 360 and below 0; modulo: 0 to 360, for an axis that rolls over and goes the short way", []string{"unwound", "modulo"}, nil, func(c *Control, w string) { c.RotaryModulo = w == "modulo" }),
 			number("rotary_acceleration", "largest acceleration of the rotary axis, degrees/s2; left out: no limit", span{noun: "degrees/s2", lo: 0, hi: mostRate, above: true}, func(c *Control) *float64 { return &c.RotaryAcceleration }),
 			choice("inverse_time", "what F is under G93, default per_minute: one over the minutes of a move; seconds: its seconds", []string{"per_minute", "seconds"}, nil, func(c *Control, w string) { c.InverseSeconds = w == "seconds" }),
 			number("rotary_speed", "largest speed of the rotary axis, degrees/min; left out: no limit", span{noun: "degrees/min", lo: 0, hi: mostRate, above: true}, func(c *Control) *float64 { return &c.RotarySpeed }),

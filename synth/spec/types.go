@@ -302,6 +302,7 @@ type Control struct {
 	RotaryDecimals int     // of degrees; default 3
 	RotarySpeed    float64 // degrees/min; 0 when not limited
 
+	RotaryModulo       bool    // rotary_words: modulo; default unwound
 	RotaryAcceleration float64 // degrees/s²; 0 when not limited
 	InverseSeconds     bool    // F under G93 is seconds, else one over minutes
 	Place              Place

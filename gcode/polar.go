@@ -90,24 +90,28 @@ func (t turning) polar(word float64) float64 {
 	return word
 }
 
-// stations puts one turn of the path at an offset on the grids: axial is the radial word.
-func (p polarPlan) stations(offset float64) (turn []station, path chain.Path, err error) {
-	path, scale, err := p.op.Spirals(offset)
+// stations puts one turn of the path at an offset on the grids: axial is the radial word. The joints slide along it a little, to
+// where both words are near it (chain.Snap), in a plane of which the unit is a count of either.
+func (p polarPlan) stations(offset float64) (turn []station, path []chain.Segment, err error) {
+	fitted, scale, err := p.op.Spirals(offset)
 	if err != nil {
 		return nil, nil, err
 	}
-	if len(path) == 0 {
-		return nil, nil, fmt.Errorf("path at %g outside the contour: it has no elements", offset)
+	counted := make(chain.Path, len(fitted))
+	in := func(v plane.Point) plane.Point {
+		return plane.Point{X: p.way.polar(v.X/scale*180/math.Pi) * float64(counts(p.p.RotaryGrid, 1)), Y: v.Y * float64(counts(p.grid, 1))}
 	}
-	at := func(i int) station {
-		v := path[0].From
-		if i > 0 {
-			v = path[i-1].To
-		}
-		return station{r: counts(p.p.RotaryGrid, p.way.polar(v.X/scale*180/math.Pi)), axial: counts(p.grid, v.Y)}
+	for i, e := range fitted {
+		counted[i] = chain.Element{From: in(e.From), To: in(e.To), Source: e.Source}
 	}
-	for i := range len(path) + 1 {
-		turn = append(turn, at(i))
+	c, err := chain.Snap(counted, chain.Grid{}, chain.SnapOptions{})
+	if err != nil {
+		return nil, nil, fmt.Errorf("path at %g outside the contour: %w", offset, err)
+	}
+	path = c.Segments
+	turn = append(turn, station{r: path[0].From.X, axial: path[0].From.Y})
+	for _, s := range path {
+		turn = append(turn, station{r: s.To.X, axial: s.To.Y})
 	}
 	first, last := turn[0], len(turn)-1
 	whole := 360 * counts(p.p.RotaryGrid, 1)
@@ -122,7 +126,7 @@ func (p polarPlan) stations(offset float64) (turn []station, path chain.Path, er
 }
 
 // startOf is how far the tool has turned at the cam angle where passes start.
-func (p polarPlan) startOf(turn []station, path chain.Path) float64 {
+func (p polarPlan) startOf(turn []station, path []chain.Segment) float64 {
 	t := p.part.StartAt
 	from := path[0].Source.From
 	t -= 360 * math.Floor((t-from)/360)

@@ -96,7 +96,7 @@ func TestSamplesRelease(t *testing.T) {
 					t.Errorf("%s, %s: deviation %+v, follower %v", q.File, q.Curve, q.Deviation, q.Follower)
 				}
 				if spirals := slices.ContainsFunc(p.Report.Operations, func(o sheet.Operation) bool { return o.File == q.File && o.Axes == "polar" }); spirals {
-					if q.SegmentsFloor != nil || q.Arcs > 0 || float64(q.Lines) > 1.5*q.Theory {
+					if q.SegmentsFloor != nil || q.Arcs > 0 || float64(q.Lines) > 1.2*q.Theory {
 						t.Errorf("%s, %s: %d spirals, %g in theory, floor %v", q.File, q.Curve, q.Lines, q.Theory, q.SegmentsFloor)
 					}
 					continue

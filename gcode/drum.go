@@ -293,19 +293,9 @@ func (p drumPlan) stations(pass DrumPass) ([]station, error) {
 	if err != nil {
 		return nil, err
 	}
-	var out []station
-	add := func(v plane.Point, t float64) {
-		polar := v.X / p.d.Radius
-		beside := 0.0
-		if pass.Side != 0 && !p.op.RotaryShift {
-			polar = p.d.sense() * t * math.Pi / 180
-			beside = v.X - p.d.Radius*polar
-		}
-		out = append(out, p.station(polar, beside, v.Y))
-	}
-	add(path[0].From, path[0].Source.From)
-	for _, e := range path {
-		add(e.To, e.Source.To)
+	out, err := p.onGrids(path, pass.Side != 0 && !p.op.RotaryShift)
+	if err != nil {
+		return nil, err
 	}
 	first, last := out[0], &out[len(out)-1]
 	whole := int64(360) * counts(p.p.RotaryGrid, 1)
@@ -324,17 +314,45 @@ func (p drumPlan) stations(pass DrumPass) ([]station, error) {
 	return apart, nil
 }
 
+// onGrids puts the joints of a path on the grids; parallel when the tool leaves the radial line.
+func (p drumPlan) onGrids(path chain.Path, parallel bool) (out []station, err error) {
+	if !parallel {
+		chained, err := p.slid(path, func(v plane.Point) (degrees, length float64) { return p.word(v.X / p.d.Radius), v.Y })
+		if err != nil {
+			return nil, err
+		}
+		out = append(out, station{r: chained[0].From.X - p.whole, axial: chained[0].From.Y})
+		for _, s := range chained {
+			out = append(out, station{r: s.To.X - p.whole, axial: s.To.Y})
+		}
+		return out, nil
+	}
+	add := func(v plane.Point, t float64) {
+		polar := p.d.sense() * t * math.Pi / 180
+		out = append(out, p.station(polar, v.X-p.d.Radius*polar, v.Y))
+	}
+	add(path[0].From, path[0].Source.From)
+	for _, e := range path {
+		add(e.To, e.Source.To)
+	}
+	return out, nil
+}
+
+// word is the rotary word, degrees, at a polar angle in radians.
+func (p drumPlan) word(polar float64) float64 {
+	if p.m.RotaryTable { // the work turns, so the tool goes the other way over it
+		return -polar * 180 / math.Pi
+	}
+	return polar * 180 / math.Pi
+}
+
 // station rounds a pose: polar angle (radians), what the tool is beside it towards growing polar
 // angle and the axial position (lengths).
 func (p drumPlan) station(polar, beside, axial float64) station {
-	r := polar * 180 / math.Pi
-	if p.m.RotaryTable { // the work turns, so the tool goes the other way over it
-		r = -r
-	}
 	if p.op.Rotary == 'A' { // Z up, the datum end at the left: growing polar angle is towards -Y
 		beside = -beside
 	}
-	return station{r: counts(p.p.RotaryGrid, r) - p.whole, axial: counts(p.grid, axial), across: counts(p.grid, beside)}
+	return station{r: counts(p.p.RotaryGrid, p.word(polar)) - p.whole, axial: counts(p.grid, axial), across: counts(p.grid, beside)}
 }
 
 // cut returns the stations from one turned angle to another (degrees, from below to), with

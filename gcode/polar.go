@@ -90,25 +90,16 @@ func (t turning) polar(word float64) float64 {
 	return word
 }
 
-// stations puts one turn of the path at an offset on the grids: axial is the radial word. The joints slide along it a little, to
-// where both words are near it (chain.Snap), in a plane of which the unit is a count of either.
+// stations puts one turn of the path at an offset on the grids: axial is the radial word.
 func (p polarPlan) stations(offset float64) (turn []station, path []chain.Segment, err error) {
 	fitted, scale, err := p.op.Spirals(offset)
 	if err != nil {
 		return nil, nil, err
 	}
-	counted := make(chain.Path, len(fitted))
-	in := func(v plane.Point) plane.Point {
-		return plane.Point{X: p.way.polar(v.X/scale*180/math.Pi) * float64(counts(p.p.RotaryGrid, 1)), Y: v.Y * float64(counts(p.grid, 1))}
-	}
-	for i, e := range fitted {
-		counted[i] = chain.Element{From: in(e.From), To: in(e.To), Source: e.Source}
-	}
-	c, err := chain.Snap(counted, chain.Grid{}, chain.SnapOptions{})
+	path, err = p.slid(fitted, func(v plane.Point) (degrees, axial float64) { return p.way.polar(v.X / scale * 180 / math.Pi), v.Y })
 	if err != nil {
 		return nil, nil, fmt.Errorf("path at %g outside the contour: %w", offset, err)
 	}
-	path = c.Segments
 	turn = append(turn, station{r: path[0].From.X, axial: path[0].From.Y})
 	for _, s := range path {
 		turn = append(turn, station{r: s.To.X, axial: s.To.Y})

@@ -5,6 +5,8 @@ import (
 	"math"
 
 	"lobewright/gcode/read"
+	"lobewright/synth/plane"
+	"lobewright/tolerance/chain"
 )
 
 // Rotary words within a turn.
@@ -44,6 +46,23 @@ func (p drumPlan) short(path []station) []station {
 		out = append(out, b)
 	}
 	return out
+}
+
+// slid puts a path of which words tells the rotary (degrees) and the linear word on both grids: X and Y of the segments are counts of
+// them. The joints slide along it a little, to where both are near it (chain.Snap in a plane of which the unit is a count of
+// either): a vertex that is only rounded takes a count of the tolerance.
+func (p drumPlan) slid(path chain.Path, words func(plane.Point) (degrees, length float64)) ([]chain.Segment, error) {
+	rotary, linear := float64(counts(p.p.RotaryGrid, 1)), float64(counts(p.grid, 1))
+	in := func(v plane.Point) plane.Point {
+		r, l := words(v)
+		return plane.Point{X: r * rotary, Y: l * linear}
+	}
+	counted := make(chain.Path, len(path))
+	for i, e := range path {
+		counted[i] = chain.Element{From: in(e.From), To: in(e.To), Source: e.Source}
+	}
+	c, err := chain.Snap(counted, chain.Grid{}, chain.SnapOptions{})
+	return c.Segments, err
 }
 
 // rotaryWords says which of the two the words are.

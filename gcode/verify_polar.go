@@ -129,10 +129,17 @@ func (f *flattened) move(i int) {
 // mostSlack is the share of the tolerance that the arcs for a spiral may need: a move that is near its path needs far less.
 const mostSlack = 0.25
 
+// mostTurned, degrees, bounds the work that a wrong word can ask of the proof: a move of a pass turns by little more than 360.
+const mostTurned = 720.0
+
 // inverse adds a move under inverse time, and holds its F.
 func (f *flattened) inverse(m read.Move, s spiral) {
 	if m.HasZ {
 		f.fail("words", nan(), nan(), m.LineNo, "Z moves under inverse time")
+	}
+	if by := math.Abs(s.to - s.from); by > mostTurned {
+		f.fail("words", by, mostTurned, m.LineNo, "the work turns by %.6g degrees in one move; a pass goes around once, and moves up to %g degrees are looked at", by, mostTurned)
+		return
 	}
 	path, slack := s.arcs(f.enough)
 	if most := f.x.Eps * mostSlack; slack <= most {

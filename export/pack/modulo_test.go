@@ -14,6 +14,7 @@ import (
 // With rotary_words: modulo the samples on a rotary axis release as they do without: same passes, same certificate where no move had to be
 // split, and the words, run on by the short way, turn the work as much.
 func TestRotaryWordsWithinATurn(t *testing.T) {
+	t.Parallel()
 	for _, name := range []string{"row-stop", "tray-sweep", "lane-guide"} {
 		text, err := os.ReadFile(samplesFolder + "/" + name + ".yaml")
 		if err != nil {

@@ -38,6 +38,7 @@ operations:
 // its path is a subtraction. The certificate is never below that and, where the grid does not count, at most 1.01 times it; and the
 // radii at the joints are those of the circle's polar equation r = e·cos φ + √(R² - e²·sin² φ).
 func TestEccentricCircleIsGround(t *testing.T) {
+	t.Parallel()
 	for _, c := range []struct {
 		base, arm float64
 		control   string

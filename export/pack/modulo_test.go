@@ -15,7 +15,7 @@ import (
 // split, and the words, run on by the short way, turn the work as much.
 func TestRotaryWordsWithinATurn(t *testing.T) {
 	t.Parallel()
-	for _, name := range []string{"row-stop", "tray-sweep", "lane-guide"} {
+	for _, name := range []string{"row-stop", "tray-sweep"} {
 		text, err := os.ReadFile(samplesFolder + "/" + name + ".yaml")
 		if err != nil {
 			t.Fatal(err)

@@ -118,6 +118,9 @@ func unplain(file string, data []byte, root *yaml.Node) Faults {
 		if len(faults) >= mostFaults {
 			return
 		}
+		if n.Line > len(lines) { // a value left out at the very end: the library ends the last line itself
+			n.Line, n.Column = len(lines), utf8.RuneCountInString(lines[len(lines)-1])+1
+		}
 		switch {
 		case depth > mostDepth:
 			fault(n, fmt.Sprintf("values nested more than %d deep", mostDepth))

@@ -61,7 +61,7 @@ func TestProveoutEveryKind(t *testing.T) {
 		sample, program string
 		leads           int // blocks at either end of a cut that may be off without harm
 	}{
-		{"stick-lift", "1-mill", 3}, {"stick-lift", "2-wire", 4}, {"carton-shift", "1-mill", 3}, {"row-stop", "2-grind", 9}, {"tray-sweep", "1-mill", 3}, {"tally-pin", "1-mill", 3},
+		{"stick-lift", "1-mill", 3}, {"stick-lift", "2-wire", 4}, {"carton-shift", "1-mill", 3}, {"tally-pin", "1-mill", 3},
 	} {
 		spec, lines := programOf(t, c.sample, c.program)
 		r := rand.New(rand.NewSource(int64(11 + k)))

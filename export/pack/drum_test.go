@@ -196,7 +196,7 @@ func TestRandomBarrelsRelease(t *testing.T) {
 	t.Parallel()
 	mine := map[string]bool{"pressure-angle": true, "undercut": true, "track": true, "wall-error": true}
 	released := 0
-	const specs = 12
+	const specs = 8
 	for seed := range int64(specs) {
 		text := randomBarrel(rand.New(rand.NewSource(77_000 + seed)))
 		s, err := spec.Read("random.yaml", []byte(text), synth.Vocabulary())

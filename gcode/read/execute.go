@@ -10,7 +10,7 @@ import (
 
 // block executes one block in the order of NISTIR 6556 table 5: feed and speed,
 // tool, spindle, coolant, modes, motion, stops.
-func (r *reader) block(b block) error {
+func (r *reader) block(b *block) error {
 	codes, err := b.codes()
 	if err != nil {
 		return err
@@ -19,20 +19,35 @@ func (r *reader) block(b block) error {
 	if err != nil {
 		return err
 	}
-	for _, step := range []func(block, map[string]int, []int) error{r.number, r.modes, r.technology, r.spindle, r.compensation, r.moves, r.stops} {
-		if err := step(b, codes, ms); err != nil {
+	if b.has('O') {
+		if err := r.number(b); err != nil {
 			return err
 		}
 	}
+	if len(b.g) > 0 || b.has('P') {
+		if err := r.modes(b, &codes); err != nil {
+			return err
+		}
+	}
+	if err := r.technology(b); err != nil {
+		return err
+	}
+	if err := r.spindle(b, ms); err != nil {
+		return err
+	}
+	if err := r.compensation(b, &codes); err != nil {
+		return err
+	}
+	if err := r.moves(b, &codes); err != nil {
+		return err
+	}
+	r.stops(b, ms)
 	return nil
 }
 
 // number takes the O word: once, before any move.
-func (r *reader) number(b block, _ map[string]int, _ []int) error {
-	w, ok := b.axis['O']
-	if !ok {
-		return nil
-	}
+func (r *reader) number(b *block) error {
+	w, _ := b.get('O')
 	v, err := b.whole(w)
 	if err != nil {
 		return err
@@ -45,33 +60,33 @@ func (r *reader) number(b block, _ map[string]int, _ []int) error {
 }
 
 // modes takes units, plane, distance, center, path and work words.
-func (r *reader) modes(b block, codes map[string]int, _ []int) error {
-	if c, ok := codes["units"]; ok {
+func (r *reader) modes(b *block, codes *modes) error {
+	if c, ok := codes.get(unitsWords); ok {
 		if r.unit != 0 && r.unit != c/10 {
 			return b.fault(b.g[0], "the units do not change inside a program")
 		}
 		r.unit = c / 10
 	}
-	if c, ok := codes["distance"]; ok {
+	if c, ok := codes.get(distanceWords); ok {
 		r.distance = c / 10
 	}
-	if c, ok := codes["center"]; ok {
+	if c, ok := codes.get(centerWords); ok {
 		r.centerAbsolute = c == 901
 	}
-	if c, ok := codes["work"]; ok {
+	if c, ok := codes.get(workWords); ok {
 		if r.state.Work != 0 && r.state.Work != c/10 {
 			return b.fault(b.g[0], "the work coordinate system does not change inside a program")
 		}
 		r.state.Work = c / 10
 	}
-	if c, ok := codes["feed"]; ok && (c == 930) != r.state.Inverse {
+	if c, ok := codes.get(feedWords); ok && (c == 930) != r.state.Inverse {
 		r.state.Inverse, r.state.Feed = c == 930, 0 // NISTIR 6556 3.5.20: the old F means nothing now
 	}
-	w, ok := b.axis['P']
-	if ok && codes["path"] != 640 {
+	w, ok := b.get('P')
+	if ok && codes.code[pathWords] != 640 {
 		return b.fault(w, "P stands with G64 only")
 	}
-	if c, set := codes["path"]; set {
+	if c, set := codes.get(pathWords); set {
 		r.p.PathMode, r.p.PathBlend = c/10, 0
 		if ok {
 			if w.value < 0 {
@@ -84,8 +99,8 @@ func (r *reader) modes(b block, codes map[string]int, _ []int) error {
 }
 
 // technology takes F, S and T.
-func (r *reader) technology(b block, _ map[string]int, _ []int) (err error) {
-	if w, ok := b.axis['F']; ok {
+func (r *reader) technology(b *block) (err error) {
+	if w, ok := b.get('F'); ok {
 		if w.value <= 0 {
 			return b.fault(w, "a feed is above 0")
 		}
@@ -99,7 +114,7 @@ func (r *reader) technology(b block, _ map[string]int, _ []int) (err error) {
 }
 
 // spindle takes the M words that act before the motion.
-func (r *reader) spindle(b block, _ map[string]int, ms []int) error {
+func (r *reader) spindle(b *block, ms []int) error {
 	for i, m := range ms {
 		switch m {
 		case 6:
@@ -126,14 +141,14 @@ func (r *reader) spindle(b block, _ map[string]int, ms []int) error {
 	return nil
 }
 
-func (r *reader) note(b block, code int) {
+func (r *reader) note(b *block, code int) {
 	r.p.Misc = append(r.p.Misc, Misc{b.no, code, len(r.p.Moves)})
 }
 
 // compensation takes G40 to G42 with D, G43 and G49 with H.
-func (r *reader) compensation(b block, codes map[string]int, _ []int) (err error) {
-	c, ok := codes["compensation"]
-	if w, has := b.axis['D']; has && !(ok && c != 400) {
+func (r *reader) compensation(b *block, codes *modes) (err error) {
+	c, ok := codes.get(compensationWords)
+	if w, has := b.get('D'); has && !(ok && c != 400) {
 		return b.fault(w, "D stands with G41 or G42")
 	}
 	if ok {
@@ -145,8 +160,8 @@ func (r *reader) compensation(b block, codes map[string]int, _ []int) (err error
 			r.state.D = -1
 		}
 	}
-	length, ok := codes["length"]
-	if w, has := b.axis['H']; has && !(ok && length == 430) {
+	length, ok := codes.get(lengthWords)
+	if w, has := b.get('H'); has && !(ok && length == 430) {
 		return b.fault(w, "H stands with G43")
 	}
 	if ok {
@@ -159,41 +174,45 @@ func (r *reader) compensation(b block, codes map[string]int, _ []int) (err error
 }
 
 // moves takes the motion word and the axis words.
-func (r *reader) moves(b block, codes map[string]int, _ []int) error {
-	if c, ok := codes["motion"]; ok {
+func (r *reader) moves(b *block, codes *modes) error {
+	if c, ok := codes.get(motionWords); ok {
 		r.hasMotion = c != 800
 		r.motion = c / 10
 	}
-	if b.first().column == 0 {
+	if b.held&axes == 0 {
 		return nil
 	}
-	first := b.first()
 	switch {
 	case !r.hasMotion:
-		return b.fault(first, "a move needs G0, G1, G2 or G3 before it")
+		return b.fault(b.first(), "a move needs G0, G1, G2 or G3 before it")
 	case r.unit == 0:
-		return b.fault(first, "G20 or G21 comes before the first move")
+		return b.fault(b.first(), "G20 or G21 comes before the first move")
 	case r.distance == 0:
-		return b.fault(first, "G90 or G91 comes before the first move")
+		return b.fault(b.first(), "G90 or G91 comes before the first move")
 	}
 	if r.state.Inverse && r.motion != 0 && !b.has('F') {
-		return b.fault(first, "under G93 every feed move has its own F")
+		return b.fault(b.first(), "under G93 every feed move has its own F")
 	}
 	return r.move(b)
 }
 
+// axes are the letters of a move, a bit each from A.
+const axes = 1<<('X'-'A') | 1<<('Y'-'A') | 1<<('Z'-'A') | rotaries | 1<<('I'-'A') | 1<<('J'-'A')
+
+const rotaries = 1 | 1<<('B'-'A') | 1<<('C'-'A')
+
 // first returns the leftmost word of the axes.
-func (b block) first() word {
+func (b *block) first() word {
 	var f word
 	for _, letter := range []byte("XYZABCIJ") {
-		if w, ok := b.axis[letter]; ok && (f.column == 0 || w.column < f.column) {
+		if w, ok := b.get(letter); ok && (f.column == 0 || w.column < f.column) {
 			f = w
 		}
 	}
 	return f
 }
 
-func (r *reader) move(b block) error {
+func (r *reader) move(b *block) error {
 	m := Move{LineNo: b.no, N: b.n, State: r.state, Kind: Kind(min(r.motion, 2)), CCW: r.motion == 3,
 		HasXY: b.has('X') || b.has('Y'), HasZ: b.has('Z'), KnownXY: r.haveX && r.haveY, KnownZ: r.haveZ}
 	if m.Tool < 0 {
@@ -225,10 +244,13 @@ func (r *reader) move(b block) error {
 
 // letter returns the letter of the block's rotary word, 0 when it has none. A program has one
 // rotary axis.
-func (r *reader) letter(b block) (byte, error) {
+func (r *reader) letter(b *block) (byte, error) {
 	found := byte(0)
+	if b.held&rotaries == 0 {
+		return 0, nil
+	}
 	for _, c := range []byte("ABC") {
-		w, ok := b.axis[c]
+		w, ok := b.get(c)
 		switch {
 		case !ok:
 			continue
@@ -245,8 +267,8 @@ func (r *reader) letter(b block) (byte, error) {
 // maxTravel keeps sums of coordinates exact in a double.
 const maxTravel = int64(maxWhole) * billion
 
-func (r *reader) axis(b block, letter byte, at *int64, have *bool) error {
-	w, ok := b.axis[letter]
+func (r *reader) axis(b *block, letter byte, at *int64, have *bool) error {
+	w, ok := b.get(letter)
 	if !ok {
 		return nil
 	}
@@ -266,10 +288,10 @@ func (r *reader) axis(b block, letter byte, at *int64, have *bool) error {
 }
 
 // center takes I and J.
-func (r *reader) center(b block, m *Move, x0, y0 int64) error {
-	i, hasI := b.axis['I']
-	j, hasJ := b.axis['J']
-	radius, hasR := b.axis['R']
+func (r *reader) center(b *block, m *Move, x0, y0 int64) error {
+	i, hasI := b.get('I')
+	j, hasJ := b.get('J')
+	radius, hasR := b.get('R')
 	if hasR && m.Kind != Arc {
 		return b.fault(radius, "R stands with G2 or G3")
 	}
@@ -306,7 +328,7 @@ func (r *reader) center(b block, m *Move, x0, y0 int64) error {
 
 // byRadius takes R: the center of the arc of at most half a turn (NISTIR 6556 3.5.3.1; near a half turn the
 // center moves by much for little of R, and a negative R asks for more than half).
-func (r *reader) byRadius(b block, m *Move, w word) error {
+func (r *reader) byRadius(b *block, m *Move, w word) error {
 	if !m.KnownXY {
 		return b.fault(w, "an arc needs a known start")
 	}
@@ -329,7 +351,7 @@ func (r *reader) byRadius(b block, m *Move, w word) error {
 }
 
 // stops takes the M words that act after the motion.
-func (r *reader) stops(b block, _ map[string]int, ms []int) error {
+func (r *reader) stops(b *block, ms []int) {
 	for _, m := range ms {
 		switch m {
 		case 0, 1:
@@ -343,7 +365,6 @@ func (r *reader) stops(b block, _ map[string]int, ms []int) error {
 		}
 		r.note(b, m)
 	}
-	return nil
 }
 
 func value(v int64) float64 { return float64(v) / billion }

@@ -16,14 +16,16 @@ func Parse(data []byte, own ...string) (*Program, error) {
 	r := &reader{p: &Program{Number: -1, Bytes: len(data)}}
 	r.state = State{D: -1, H: -1, Tool: -1, Speed: -1}
 	r.pending, r.own = -1, own
-	lines := 0
+	lines := bytes.Count(data, []byte{'\n'})
+	r.p.Moves = make([]Move, 0, min(lines, len(data)/leastMove, maxLines))
+	lines = 0
 	for rest, more := data, true; more; {
 		var raw []byte
 		raw, rest, more = bytes.Cut(rest, []byte{'\n'})
 		if lines++; lines > maxLines {
 			return nil, &Error{lines, 1, "one line more", fmt.Sprintf("a program has at most %d lines", maxLines)}
 		}
-		if err := r.line(strings.TrimSuffix(string(raw[:min(len(raw), maxLine+2)]), "\r"), lines); err != nil {
+		if err := r.line(bytes.TrimSuffix(raw[:min(len(raw), maxLine+2)], []byte{'\r'}), lines); err != nil {
 			return nil, err
 		}
 	}
@@ -33,12 +35,17 @@ func Parse(data []byte, own ...string) (*Program, error) {
 	return r.p, nil
 }
 
+// leastMove is the shortest line that moves: X1 and its end.
+const leastMove = 3
+
 // reader is the control's state while it reads.
 type reader struct {
 	p       *Program
 	state   State
 	own     []string
-	pending int // T word that waits for M6; -1 when none
+	words   []word // of the line, kept for its memory
+	now     block  // likewise
+	pending int    // T word that waits for M6; -1 when none
 
 	percent, closed bool // % at the start, at the end
 	started         bool // a line with words came
@@ -57,30 +64,32 @@ type reader struct {
 }
 
 // line reads one line of the file.
-func (r *reader) line(text string, no int) error {
+func (r *reader) line(text []byte, no int) error {
 	if len(text) > maxLine {
 		return &Error{no, maxLine + 1, fmt.Sprintf("a line of more than %d characters", maxLine), "a line has at most that many"}
 	}
 	r.p.Longest = max(r.p.Longest, len(text))
-	if i := unprintable(text); i >= 0 {
+	words, plain := quick(r.words[:0], text)
+	if i := unprintable(text); !plain && i >= 0 {
 		return &Error{no, i + 1, fmt.Sprintf("byte %#02x", text[i]), "programs are printable ASCII"}
 	}
-	trimmed := strings.TrimSpace(text)
-	if trimmed == "%" {
+	trimmed := bytes.TrimSpace(text)
+	switch {
+	case len(trimmed) == 0:
+		return nil
+	case len(trimmed) == 1 && trimmed[0] == '%':
 		return r.tape(no)
-	}
-	if trimmed == "" {
-		return nil
-	}
-	if r.closed {
+	case r.closed:
 		return &Error{no, 1, "text after the closing %", "nothing follows it"}
-	}
-	if r.isOwn(trimmed, no) {
+	case len(r.own) > 0 && r.isOwn(string(trimmed), no):
 		return nil
 	}
-	words, comments, err := scan(text, no)
-	if err != nil {
-		return err
+	var comments []string
+	if !plain {
+		var err error
+		if words, comments, err = scan(r.words[:0], text, no); err != nil {
+			return err
+		}
 	}
 	for _, c := range comments {
 		r.p.Comments = append(r.p.Comments, Comment{no, strings.TrimSpace(c)})
@@ -89,38 +98,48 @@ func (r *reader) line(text string, no int) error {
 	if len(words) == 0 {
 		return nil
 	}
+	r.words = words
 	if r.p.Ended {
-		return &Error{no, words[0].column, words[0].text + " after the end of the program", "nothing follows M2 or M30 but %"}
+		return &Error{no, int(words[0].column), words[0].in(text) + " after the end of the program", "nothing follows M2 or M30 but %"}
 	}
 	r.p.Blocks++
-	b, err := sort(words, no)
-	if err != nil {
+	if err := r.now.sort(words, text, no); err != nil {
 		return err
 	}
-	return r.block(b)
+	return r.block(&r.now)
 }
 
-// isOwn notes a line of the user's own.
+// isOwn notes a line of the user's own, which is the same with other spaces, letters in lower case, another block number or a
+// comment behind it.
 func (r *reader) isOwn(text string, no int) bool {
+	text = usual(text)
 	if rest, ok := strings.CutPrefix(text, "N"); ok {
 		if digits := len(rest) - len(strings.TrimLeft(rest, "0123456789")); digits > 0 {
 			text = strings.TrimSpace(rest[digits:])
 		}
 	}
-	if !slices.Contains(r.own, text) || r.p.Ended {
+	bare := text
+	if k := strings.IndexAny(text, "(;"); k >= 0 {
+		bare = strings.TrimSpace(text[:k])
+	}
+	i := slices.IndexFunc(r.own, func(o string) bool { return usual(o) == text || usual(o) == bare })
+	if i < 0 || r.p.Ended {
 		return false
 	}
 	r.started = true
 	r.p.Blocks++
-	r.p.Own = append(r.p.Own, Own{no, text, len(r.p.Moves)})
+	r.p.Own = append(r.p.Own, Own{no, r.own[i], len(r.p.Moves)})
 	return true
 }
 
+// usual is a line in capitals with one space between its words.
+func usual(line string) string { return strings.ToUpper(strings.Join(strings.Fields(line), " ")) }
+
 // unprintable returns the index of the first byte that is no printable ASCII and no
 // tab, or -1. Bytes above 126 are refused in comments too: controls garble them.
-func unprintable(s string) int {
-	for i := 0; i < len(s); i++ {
-		if (s[i] < ' ' && s[i] != '\t') || s[i] > '~' {
+func unprintable(s []byte) int {
+	for i, c := range s {
+		if (c < ' ' && c != '\t') || c > '~' {
 			return i
 		}
 	}

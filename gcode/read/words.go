@@ -1,6 +1,7 @@
 package read
 
 import (
+	"bytes"
 	"fmt"
 	"strconv"
 	"strings"
@@ -8,10 +9,10 @@ import (
 
 // word is a letter with its number in billionths.
 type word struct {
-	letter byte
-	value  int64
-	column int
-	text   string
+	value      int64
+	column     uint16 // of the letter, from 1
+	start, end uint16 // where its number stands in the line: what a fault shows
+	letter     byte
 }
 
 const (
@@ -28,64 +29,70 @@ const (
 	maxLines = 200_000
 )
 
-// scan cuts one line into words and comments. A comment in parentheses is one
-// item; a semicolon makes a comment of the rest.
-func scan(line string, no int) (words []word, comments []string, err error) {
+// letters are those that are read, a bit each from A.
+const letters = 1 | 1<<('B'-'A') | 1<<('C'-'A') | 1<<('D'-'A') | 1<<('F'-'A') | 1<<('G'-'A') | 1<<('H'-'A') | 1<<('I'-'A') | 1<<('J'-'A') |
+	1<<('M'-'A') | 1<<('N'-'A') | 1<<('O'-'A') | 1<<('P'-'A') | 1<<('R'-'A') | 1<<('S'-'A') | 1<<('T'-'A') | 1<<('X'-'A') | 1<<('Y'-'A') | 1<<('Z'-'A')
+
+// scan cuts one line into words, appended to those given, and comments. A comment in
+// parentheses is one item; a semicolon makes a comment of the rest.
+func scan(words []word, line []byte, no int) (_ []word, comments []string, err error) {
 	for i := 0; i < len(line); {
 		c := line[i]
 		switch {
 		case c == ' ' || c == '\t':
 			i++
 		case c == '(':
-			end := strings.IndexAny(line[i+1:], "()")
+			end := bytes.IndexAny(line[i+1:], "()")
 			if end < 0 || line[i+1+end] == '(' {
 				return nil, nil, &Error{no, i + 1, "a comment that does not end", "comments end with ) on their line and hold no ("}
 			}
-			comments = append(comments, line[i+1:i+1+end])
+			comments = append(comments, string(line[i+1:i+1+end]))
 			i += end + 2
 		case c == ';':
-			return words, append(comments, line[i+1:]), nil
+			return words, append(comments, string(line[i+1:])), nil
 		default:
-			w, next, err := scanWord(line, i, no)
+			w, err := scanWord(line, i, no)
 			if err != nil {
 				return nil, nil, err
 			}
 			words = append(words, w)
-			i = next
+			i = int(w.end)
 		}
 	}
 	return words, comments, nil
 }
 
 // scanWord reads the word at line[i:].
-func scanWord(line string, i, no int) (word, int, error) {
-	w := word{letter: upper(line[i]), column: i + 1}
-	if !strings.ContainsRune("GXYZABCIJRFSTDHNOMP", rune(w.letter)) || w.letter > 'Z' {
-		return w, i, &Error{no, i + 1, fmt.Sprintf("%q", line[i:i+1]), "words G X Y Z A B C I J R F S T D H N O M P are read here"}
+func scanWord(line []byte, i, no int) (word, error) {
+	w := word{letter: upper(line[i]), column: uint16(i + 1)}
+	if w.letter < 'A' || w.letter > 'Z' || letters>>(w.letter-'A')&1 == 0 {
+		return w, &Error{no, i + 1, fmt.Sprintf("%q", line[i:i+1]), "words G X Y Z A B C I J R F S T D H N O M P are read here"}
 	}
 	j := i + 1
 	for j < len(line) && (line[j] == ' ' || line[j] == '\t') {
 		j++
 	}
-	start := j
-	for j < len(line) && strings.IndexByte("+-.0123456789", line[j]) >= 0 {
+	w.start = uint16(j)
+	for j < len(line) && inNumber(line[j]) {
 		j++
 	}
-	w.text = string(w.letter) + line[start:j]
-	value, fault := parseNumber(line[start:j])
+	w.end = uint16(j)
+	exact, fault := parseNumber(string(line[w.start:j]))
 	if fault != "" {
-		if start == j { // no number at all: say what stands in its place
+		if int(w.start) == j { // no number at all: say what stands in its place
 			j = min(j+1, len(line))
 		}
 		found := "nothing"
-		if start < j {
-			found = strconv.Quote(line[start:j])
+		if int(w.start) < j {
+			found = strconv.Quote(string(line[w.start:j]))
 		}
-		return w, j, &Error{no, start + 1, fmt.Sprintf("%s after %c", found, w.letter), fault}
+		return w, &Error{no, int(w.start) + 1, fmt.Sprintf("%s after %c", found, w.letter), fault}
 	}
-	w.value = value
-	return w, j, nil
+	w.value = exact
+	return w, nil
 }
+
+func inNumber(c byte) bool { return '0' <= c && c <= '9' || c == '.' || c == '-' || c == '+' }
 
 func upper(c byte) byte {
 	if 'a' <= c && c <= 'z' {

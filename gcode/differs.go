@@ -84,7 +84,7 @@ func centerOf(from, to plane.Point, radius float64, ccw bool) plane.Point {
 	return from.Add(way.Scale(0.5)).Add(way.Unit().Left().Scale(side))
 }
 
-// codes applies the G words that change a move.
+// codes applies the G words that last.
 func (s *said) codes(b Block) {
 	for _, c := range b.G {
 		switch c {
@@ -102,6 +102,10 @@ func (s *said) codes(b Block) {
 			if s.state.Inverse != (c == FeedInverse) {
 				s.state.Inverse, s.state.Feed = c == FeedInverse, 0
 			}
+		case ExactPath:
+			s.path, s.blend = 61, 0
+		case Blend:
+			s.path, s.blend = 64, s.value(b.P.V)
 		}
 	}
 }
@@ -138,14 +142,6 @@ func (s *said) block(b Block) {
 	}
 	if b.Own != "" {
 		s.own = append(s.own, read.Own{Text: b.Own, Before: len(s.moves)})
-	}
-	for _, c := range b.G {
-		switch c {
-		case ExactPath:
-			s.path, s.blend = 61, 0
-		case Blend:
-			s.path, s.blend = 64, s.value(b.P.V)
-		}
 	}
 }
 

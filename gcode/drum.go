@@ -116,7 +116,6 @@ type drumPlan struct {
 	*emitter
 	d     Drum
 	op    Operation
-	m     Machine
 	whole int64 // whole turns taken off the rotary words, so that they begin within the first, counts
 }
 
@@ -128,7 +127,7 @@ func PlanDrum(d Drum, op Operation, m Machine) (Program, error) {
 	}
 	e := newEmitter(Part{Inch: d.Inch}, op, m)
 	e.p.Rotary, e.p.RotaryGrid = op.Rotary, chain.Grid{Decimals: m.RotaryDecimals}
-	p := drumPlan{emitter: e, d: d, op: op, m: m}
+	p := drumPlan{emitter: e, d: d, op: op}
 	turn, err := p.stations(DrumPass{})
 	if err != nil {
 		return Program{}, err
@@ -136,11 +135,7 @@ func PlanDrum(d Drum, op Operation, m Machine) (Program, error) {
 	round := 360 * counts(e.p.RotaryGrid, 1)
 	p.whole = int64(math.Floor(float64(turn[0].r)/float64(round))) * round
 	e.p.Header = p.header()
-	e.add(Block{G: e.safety()})
-	e.pathMode()
-	e.own(m.Start...)
-	e.add(Block{T: number(op.Tool), M: []int{6}})
-	e.add(Block{S: number(op.speed()), M: op.on()})
+	e.begin(op)
 	if err := p.slot(); err != nil {
 		return Program{}, err
 	}
@@ -150,10 +145,7 @@ func PlanDrum(d Drum, op Operation, m Machine) (Program, error) {
 			return Program{}, err
 		}
 	}
-	e.add(Block{M: op.off()})
-	e.own(m.End...)
-	e.add(Block{G: e.safety()})
-	e.add(Block{M: []int{30}})
+	e.end(op)
 	return *e.p, nil
 }
 
@@ -270,8 +262,21 @@ func (p drumPlan) move(from, to station, z0, z1 int64, feed float64, first bool)
 	if z1 != z0 {
 		b.Z = count(z1)
 	}
-	b.F = count(max(1, counts(p.grid, inverseTime(feed, p.length(from, to, z0, z1), p.m.InverseSeconds))))
+	b.F = p.inverse(feed, p.length(from, to, z0, z1))
 	p.add(b)
+}
+
+// inverse is the F word, at least 1 count, of a move of a length over the work at a feed.
+func (p drumPlan) inverse(feed, length float64) Count {
+	return count(max(1, counts(p.grid, inverseTime(feed, length, p.m.InverseSeconds))))
+}
+
+// inverseTime is F under G93.
+func inverseTime(feed, length float64, seconds bool) float64 {
+	if seconds {
+		return 60 * length / feed
+	}
+	return feed / length
 }
 
 // length is how far the tool goes over the work, at the outer radius.

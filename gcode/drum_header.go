@@ -10,18 +10,13 @@ func (p drumPlan) header() []string {
 	if op.Rotary == 'B' {
 		axial, across = across, axial
 	}
-	carries := "TURNS THE TOOL COUNTERCLOCKWISE ABOUT THE WORK"
-	if m.RotaryTable {
-		carries = "TURNS THE WORK COUNTERCLOCKWISE"
-	}
 	h = append(h,
 		fmt.Sprintf("OPERATION %d MILL A BARREL CAM", op.Number),
 		"UNITS "+unit+" AND DEGREES",
 		fmt.Sprintf("%s0 DATUM END, %s PLUS TOWARDS THE MARKED FACE", axial, axial),
-		fmt.Sprintf("%c0 POLAR ANGLE 0 UNDER THE TOOL. GROWING %c %s,", op.Rotary, op.Rotary, carries),
-		"SEEN ON THE MARKED FACE. CAM TURNS "+turn+" SEEN SO.",
-		"A WRONG ROTARY SENSE IS A MIRRORED CAM",
-		m.rotaryWords(op.Rotary),
+	)
+	h = append(h, m.turns(op.Rotary, turn)...)
+	h = append(h,
 		"Z0 OUTER RADIUS "+m.text(d.Radius)+". TOOL AXIS RADIAL, Z PLUS AWAY. SAFE Z "+m.text(m.SafeZ),
 		fmt.Sprintf("%s0 TOOL OVER THE CAMSHAFT AXIS", across),
 		"BARREL LENGTH "+m.text(d.Length)+", TURNED TO ITS RADIUS",

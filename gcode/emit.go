@@ -100,9 +100,25 @@ func (e *emitter) own(lines ...string) {
 	}
 }
 
+// begin adds what every milling program says before its first move: a known state, the tool, the spindle.
+func (e *emitter) begin(op Operation) {
+	e.add(Block{G: e.safety()})
+	e.modes()
+	e.add(Block{T: number(op.Tool), M: []int{6}})
+	e.add(Block{S: number(op.speed()), M: op.on()})
+}
+
+// end adds what every milling program says after its last move.
+func (e *emitter) end(op Operation) {
+	e.add(Block{M: op.off()})
+	e.own(e.m.End...)
+	e.add(Block{G: e.safety()})
+	e.add(Block{M: []int{30}})
+}
+
 // modes adds what follows the first safety block: how arcs are written, the path mode, the user's own start.
 func (e *emitter) modes() {
-	if !e.m.RadiusArcs {
+	if !e.m.RadiusArcs && e.p.Rotary == 0 { // a rotary program has no arcs
 		e.add(Block{G: []Code{e.arcMode()}})
 	}
 	e.pathMode()

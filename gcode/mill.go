@@ -54,19 +54,13 @@ func planMill(part Part, op Operation, m Machine) (Program, error) {
 	e := newEmitter(part, op, m)
 	e.p.Registers = registers(op)
 	e.p.Header = header(part, op, m)
-	e.add(Block{G: e.safety()})
-	e.modes()
-	e.add(Block{T: number(op.Tool), M: []int{6}})
-	e.add(Block{S: number(op.speed()), M: op.on()})
+	e.begin(op)
 	for i := range op.Stock {
 		if err := millPass(e, part, op, m, i); err != nil {
 			return Program{}, fmt.Errorf("pass %d of %d: %w", i+1, len(op.Stock), err)
 		}
 	}
-	e.add(Block{M: op.off()})
-	e.own(m.End...)
-	e.add(Block{G: e.safety()})
-	e.add(Block{M: []int{30}})
+	e.end(op)
 	return *e.p, nil
 }
 
@@ -176,7 +170,7 @@ func millPath(part Part, op Operation, m Machine, i int) (chain.Chain, error) {
 		return chain.Chain{}, err
 	}
 	in, out := leadIn(path, op.side(), leadRadius), leadOut(path, op.side(), leadRadius)
-	far := part.plungeRadius(op, l.path)
+	far := part.plungeRadius(op, reach(l.path))
 	path = append(append(in.in(in.outside(far, exitShare*r)), path...), out.away(out.straight(exitShare*r))...)
 	return snap(path, m)
 }
@@ -192,16 +186,21 @@ func (l loop) around(t, overlap float64, back bool) (chain.Path, error) {
 }
 
 // plungeRadius returns the distance from the camshaft axis at which the tool is
-// outside the blank. Without a blank in the spec the farthest point of the
-// pass stands for its rim.
-func (p Part) plungeRadius(op Operation, path chain.Path) float64 {
+// outside the blank. Without a blank in the spec the farthest that the tool's center
+// goes in the pass, a length, stands for its rim.
+func (p Part) plungeRadius(op Operation, farthest float64) float64 {
 	if p.BlankDiameter > 0 {
 		return p.BlankDiameter/2 + op.radius() + p.gap()
 	}
+	return farthest + op.radius() + p.gap()
+}
+
+// reach returns a distance from the camshaft axis, length, beyond which no point of the path is.
+func reach(path chain.Path) float64 {
 	lo, hi := path.Bounds()
 	far := 0.0
 	for _, c := range []plane.Point{lo, hi, {X: lo.X, Y: hi.Y}, {X: hi.X, Y: lo.Y}} {
 		far = math.Max(far, c.Radius())
 	}
-	return far + op.radius() + p.gap()
+	return far
 }

@@ -50,22 +50,15 @@ func planPolar(part Part, op Operation, m Machine) (Program, error) {
 	}
 	e := newEmitter(part, op, m)
 	e.p.Rotary, e.p.RotaryGrid = op.Rotary, chain.Grid{Decimals: m.RotaryDecimals}
-	p := polarPlan{drumPlan: drumPlan{emitter: e, op: op, m: m}, part: part, way: turningOf(part.CamClockwise, m)}
+	p := polarPlan{drumPlan: drumPlan{emitter: e, op: op}, part: part, way: turningOf(part.CamClockwise, m)}
 	e.p.Header = p.header()
-	e.add(Block{G: e.safety()})
-	e.pathMode()
-	e.own(m.Start...)
-	e.add(Block{T: number(op.Tool), M: []int{6}})
-	e.add(Block{S: number(op.speed()), M: op.on()})
+	e.begin(op)
 	for i := range op.Stock {
 		if err := p.pass(i); err != nil {
 			return Program{}, fmt.Errorf("pass %d of %d: %w", i+1, len(op.Stock), err)
 		}
 	}
-	e.add(Block{M: op.off()})
-	e.own(m.End...)
-	e.add(Block{G: e.safety()})
-	e.add(Block{M: []int{30}})
+	e.end(op)
 	return *e.p, nil
 }
 
@@ -150,7 +143,7 @@ func (p polarPlan) pass(i int) error {
 	for i := range path { // every pass begins within the first turn
 		path[i].r -= turns
 	}
-	touch := p.touching(offset)
+	touch := newTouching(p.part.Curve(offset), p.part.Curve(offset-p.op.radius()), p.way)
 	far := count(counts(p.grid, p.part.plungeRadius(p.op, farthest(turn, p.grid))))
 	zs := depths(p.part, p.op, p.grid, i)
 	for k, z := range zs {
@@ -167,7 +160,7 @@ func (p polarPlan) pass(i int) error {
 			if n == 0 {
 				b.G = []Code{FeedInverse}
 			}
-			b.F = p.inverse(touch.length(p.polarMove(path[n], s)))
+			b.F = p.inverse(p.op.Feed, touch.length(p.polarMove(path[n], s)))
 			p.add(b)
 		}
 		p.add(Block{G: []Code{FeedPerMinute}, Motion: Straight, X: far, F: p.feed(p.op.Feed)})
@@ -176,27 +169,13 @@ func (p polarPlan) pass(i int) error {
 	return nil
 }
 
-// farthest is a path that reaches as far from the axis as the turn does.
-func farthest(turn []station, g chain.Grid) chain.Path {
+// farthest is how far from the axis the turn goes, length.
+func farthest(turn []station, g chain.Grid) float64 {
 	most := 0.0
 	for _, s := range turn {
 		most = math.Max(most, float64(s.axial)*g.Step())
 	}
-	return chain.Path{{From: plane.Point{X: most}, To: plane.Point{X: most}}}
-}
-
-// inverse is the F word of a move of a length over the contour.
-func (p polarPlan) inverse(length float64) Count {
-	f := inverseTime(p.op.Feed, length, p.m.InverseSeconds)
-	return count(max(1, counts(p.grid, f)))
-}
-
-// inverseTime is F under G93.
-func inverseTime(feed, length float64, seconds bool) float64 {
-	if seconds {
-		return 60 * length / feed
-	}
-	return feed / length
+	return most
 }
 
 // polarMove is what a control makes of the move from one station to another.
@@ -224,11 +203,6 @@ func (p polarPlan) slideTo(turn []station, outer, on float64) []station {
 	return out
 }
 
-// touching tells how long the contour is that a move passes over.
-func (p polarPlan) touching(offset float64) touching {
-	return newTouching(p.part.Curve(offset), p.part.Curve(offset-p.op.radius()), p.way)
-}
-
 // touching is the tool's center path and the contour that it cuts, with the stock it leaves.
 type touching struct {
 	center, contact Curve
@@ -247,9 +221,8 @@ func (t touching) length(s spiral) float64 {
 		return l
 	}
 	a, b := t.angle(s.from), t.angle(s.to)
-	turns := math.Round(((s.to-s.from)*t.way.cam - (b - a)) / 360)
-	b += 360 * turns
-	rise := (s.r1 - t.radius(s.to)) - (s.r0 - t.radius(s.from))
+	rise := (s.r1 - pointAt(t.center, b).Radius()) - (s.r0 - pointAt(t.center, a).Radius())
+	b += 360 * math.Round(((s.to-s.from)*t.way.cam-(b-a))/360)
 	t.known[s] = math.Hypot(t.along(math.Min(a, b), math.Max(a, b)), rise)
 	return t.known[s]
 }
@@ -262,7 +235,8 @@ func (t touching) angle(polar float64) float64 {
 		p := pointAt(t.center, at)
 		return math.Atan2(ray.X*p.Y-ray.Y*p.X, ray.X*p.X+ray.Y*p.Y) * t.way.cam
 	}
-	// The polar angle runs within half a turn of the cam angle and grows with it: Newton's steps of slope 1 a degree, then secants.
+	// The polar angle runs within half a turn of the cam angle and grows with it: a first step
+	// of slope 1 a degree, then Newton's, of the speed that a small difference shows.
 	at := first - aside(first)*180/math.Pi
 	for range 60 {
 		step := aside(at) * 180 / math.Pi
@@ -276,9 +250,6 @@ func (t touching) angle(polar float64) float64 {
 	}
 	return at
 }
-
-// radius is the path's distance from the camshaft axis at a polar angle.
-func (t touching) radius(polar float64) float64 { return pointAt(t.center, t.angle(polar)).Radius() }
 
 // along is the length of the contour between two cam angles, by chords of an arc each.
 func (t touching) along(a, b float64) float64 {

@@ -10,20 +10,13 @@ func (p polarPlan) header() []string {
 	if op.Grinds {
 		process, tool = "GRIND", "WHEEL T%d DIAMETER %s AS IT IS DRESSED"
 	}
-	carries := "TURNS THE TOOL COUNTERCLOCKWISE ABOUT THE WORK"
-	if m.RotaryTable {
-		carries = "TURNS THE WORK COUNTERCLOCKWISE"
-	}
 	h = append(h,
 		fmt.Sprintf("OPERATION %d %s ON A ROTARY AND A RADIAL AXIS", op.Number, process),
 		"UNITS "+unit+" AND DEGREES",
 		"X0 CAMSHAFT AXIS, X PLUS OUTWARDS THROUGH THE TOOL. Z TOWARDS THE VIEWER OF THE MARKED FACE",
 		"THE RADIAL AXIS GOES THROUGH THE CAMSHAFT AXIS. CHECK THAT NOTHING IS BESIDE IT",
-		fmt.Sprintf("%c0 POLAR ANGLE 0 UNDER THE TOOL. GROWING %c %s,", op.Rotary, op.Rotary, carries),
-		"SEEN ON THE MARKED FACE. CAM TURNS "+turn+" SEEN SO.",
-		"A WRONG ROTARY SENSE IS A MIRRORED CAM",
-		m.rotaryWords(op.Rotary),
 	)
+	h = append(h, m.turns(op.Rotary, turn)...)
 	h = append(h, body(part, m)...)
 	h = append(h,
 		fmt.Sprintf(tool, op.Tool, m.text(op.ToolDiameter)),

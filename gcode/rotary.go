@@ -65,6 +65,20 @@ func (p drumPlan) slid(path chain.Path, words func(plane.Point) (degrees, length
 	return c.Segments, err
 }
 
+// turns says in a header which way the rotary axis goes; turn is the cam's own sense.
+func (m Machine) turns(letter byte, turn string) []string {
+	carries := "TURNS THE TOOL COUNTERCLOCKWISE ABOUT THE WORK"
+	if m.RotaryTable {
+		carries = "TURNS THE WORK COUNTERCLOCKWISE"
+	}
+	return []string{
+		fmt.Sprintf("%c0 POLAR ANGLE 0 UNDER THE TOOL. GROWING %c %s,", letter, letter, carries),
+		"SEEN ON THE MARKED FACE. CAM TURNS " + turn + " SEEN SO.",
+		"A WRONG ROTARY SENSE IS A MIRRORED CAM",
+		m.rotaryWords(letter),
+	}
+}
+
 // rotaryWords says which of the two the words are.
 func (m Machine) rotaryWords(letter byte) string {
 	if m.RotaryModulo {

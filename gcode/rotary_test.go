@@ -25,7 +25,7 @@ func asRead(p drumPlan, path []station) *read.Program {
 // moves, no word leaves the turn and none could be taken the other way.
 func TestRollingOverLosesNothing(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
-		p := drumPlan{emitter: &emitter{p: &Program{RotaryGrid: chain.Grid{Decimals: rapid.IntRange(2, 6).Draw(t, "decimals")}}}, m: Machine{RotaryModulo: true}}
+		p := drumPlan{emitter: &emitter{m: Machine{RotaryModulo: true}, p: &Program{RotaryGrid: chain.Grid{Decimals: rapid.IntRange(2, 6).Draw(t, "decimals")}}}}
 		one := counts(p.p.RotaryGrid, 1)
 		r := rapid.Int64Range(-800*one, 800*one).Draw(t, "first")
 		path := []station{{r: r}}

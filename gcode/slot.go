@@ -136,10 +136,7 @@ func planSlot(part Part, op Operation, m Machine) (Program, error) {
 	if err != nil {
 		return Program{}, err
 	}
-	e.add(Block{G: e.safety()})
-	e.modes()
-	e.add(Block{T: number(op.Tool), M: []int{6}})
-	e.add(Block{S: number(op.speed()), M: op.on()})
+	e.begin(op)
 	from, top := part.StartAt-rampDegrees/2, int64(0)
 	for k, z := range slotDepths(part, op, e.grid) {
 		// Forwards from a to b and one turn; backwards the same from its end.
@@ -183,10 +180,7 @@ func planSlot(part Part, op Operation, m Machine) (Program, error) {
 			return Program{}, fmt.Errorf("wall at %g from the pitch curve: %w", w.offset, err)
 		}
 	}
-	e.add(Block{M: op.off()})
-	e.own(m.End...)
-	e.add(Block{G: e.safety()})
-	e.add(Block{M: []int{30}})
+	e.end(op)
 	return *e.p, nil
 }
 

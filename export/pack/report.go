@@ -240,23 +240,24 @@ func (j *job) operationFacts(p program) sheet.Operation {
 	set := func(name, format string, args ...any) {
 		o.Setup = append(o.Setup, sheet.Fact{Name: name, Text: fmt.Sprintf(format, args...)})
 	}
-	carries := "turns the tool counterclockwise about the work"
-	if j.spec.Control.RotarySense == "table" {
-		carries = "turns the table with the work counterclockwise"
-	}
-	words := "run on past 360, so the axis must not roll over"
-	if j.spec.Control.RotaryModulo {
-		words = "stay within a turn, so the axis must roll over and go the short way"
-	}
 	switch op.Axes {
 	case "polar":
 		set("Work zero", "X0 camshaft axis, X plus outwards through the tool; Z0 top of the blank; the radial axis goes through the camshaft axis")
-		set("Rotary axis", "%s0 with polar angle 0 under the tool; growing %s %s, seen on the marked face: the other sense is a mirrored cam; its words %s", op.RotaryAxis, op.RotaryAxis, carries, words)
 	case "cylinder":
 		set("Work zero", "axial 0 datum end, plus towards the marked face; Z0 outer radius; the tool's axis radial")
-		set("Rotary axis", "%s0 with polar angle 0 under the tool; growing %s %s, seen on the marked face: the other sense is a mirrored cam; its words %s", op.RotaryAxis, op.RotaryAxis, carries, words)
 	default:
 		set("Work zero", "X0 Y0 camshaft axis, angular datum at its polar angle, seen on the marked face; Z0 top of the blank")
+	}
+	if op.Axes == "polar" || op.Axes == "cylinder" {
+		carries := "turns the tool counterclockwise about the work"
+		if j.spec.Control.RotarySense == "table" {
+			carries = "turns the table with the work counterclockwise"
+		}
+		words := "run on past 360, so the axis must not roll over"
+		if j.spec.Control.RotaryModulo {
+			words = "stay within a turn, so the axis must roll over and go the short way"
+		}
+		set("Rotary axis", "%s0 with polar angle 0 under the tool; growing %s %s, seen on the marked face: the other sense is a mirrored cam; its words %s", op.RotaryAxis, op.RotaryAxis, carries, words)
 	}
 	set("View", "on the marked face, which is the Z0 face; a part cut from its back is mirrored")
 	set("Turning direction", "the camshaft turns %s, seen so", j.rotation())

@@ -16,9 +16,8 @@ func Parse(data []byte, own ...string) (*Program, error) {
 	r := &reader{p: &Program{Number: -1, Bytes: len(data)}}
 	r.state = State{D: -1, H: -1, Tool: -1, Speed: -1}
 	r.pending, r.own = -1, own
-	lines := bytes.Count(data, []byte{'\n'})
-	r.p.Moves = make([]Move, 0, min(lines, len(data)/leastMove, maxLines))
-	lines = 0
+	r.p.Moves = make([]Move, 0, min(bytes.Count(data, []byte{'\n'}), len(data)/leastMove, maxLines))
+	lines := 0
 	for rest, more := data, true; more; {
 		var raw []byte
 		raw, rest, more = bytes.Cut(rest, []byte{'\n'})
@@ -70,8 +69,10 @@ func (r *reader) line(text []byte, no int) error {
 	}
 	r.p.Longest = max(r.p.Longest, len(text))
 	words, plain := quick(r.words[:0], text)
-	if i := unprintable(text); !plain && i >= 0 {
-		return &Error{no, i + 1, fmt.Sprintf("byte %#02x", text[i]), "programs are printable ASCII"}
+	if !plain {
+		if i := unprintable(text); i >= 0 {
+			return &Error{no, i + 1, fmt.Sprintf("byte %#02x", text[i]), "programs are printable ASCII"}
+		}
 	}
 	trimmed := bytes.TrimSpace(text)
 	switch {

@@ -1,57 +1,17 @@
 package main
 
 import (
-	"bytes"
-	"encoding/json"
 	"fmt"
 	"math/rand"
-	"os"
-	"path/filepath"
 	"regexp"
 	"slices"
 	"strconv"
 	"strings"
 	"testing"
-
-	"lobewright/export/sheet"
 )
 
 // feedBlock is a block that cuts: it has axis words and no G0.
 var feedBlock = regexp.MustCompile(`^N\d+ .*[XYZABC]-?[\d.]+`)
-
-// programOf releases a sample and returns the lines of one of its programs.
-func programOf(t *testing.T, sample, program string) (spec string, lines []string) {
-	t.Helper()
-	dir := t.TempDir()
-	spec = "../../samples/" + sample + ".yaml"
-	var out, messages bytes.Buffer
-	if status := run([]string{"lobewright", "release", spec, "-o", dir}, &out, &messages); status != statusDone {
-		t.Fatal(status, messages.String())
-	}
-	data, err := os.ReadFile(filepath.Join(dir, sample, sample+"."+program+".nc"))
-	if err != nil {
-		t.Fatal(err)
-	}
-	return spec, strings.Split(string(data), "\n")
-}
-
-// proveLines proves lines out against an operation.
-func proveLines(t *testing.T, spec string, lines []string, operation string) (sheet.ProveOut, string) {
-	t.Helper()
-	file := filepath.Join(t.TempDir(), "edited.nc")
-	if err := os.WriteFile(file, []byte(strings.Join(lines, "\n")), 0o644); err != nil {
-		t.Fatal(err)
-	}
-	var out, messages bytes.Buffer
-	status := run([]string{"lobewright", "proveout", spec, file, "--operation", operation, "--json"}, &out, &messages)
-	var p sheet.ProveOut
-	if status != statusInput {
-		if err := json.Unmarshal(out.Bytes(), &p); err != nil {
-			t.Fatal(err, messages.String())
-		}
-	}
-	return p, messages.String()
-}
 
 // Programs of every kind stay proven under edits that change nothing a control does, 40 on each, and of 40
 // damages on the mill and the wire, 14 on the others (a word of an axis moved, a block left out, a feed of ten times as much, a tool that is another) every one is
@@ -100,7 +60,7 @@ func TestProveoutEveryKind(t *testing.T) {
 			i := cuts[r.Intn(len(cuts))]
 			harmless[i] = harmlessEdit(r, harmless[i])
 		}
-		if p, messages := proveLines(t, spec, harmless, operation); !p.Proven {
+		if p, _, messages := proved(t, spec, harmless, "--operation", operation); !p.Proven {
 			t.Errorf("%s: edits that change nothing are reported: %.300s %s", c.program, fmt.Sprint(p.Faults), messages)
 		}
 		missed := 0
@@ -126,7 +86,7 @@ func TestProveoutEveryKind(t *testing.T) {
 					damaged[i] = regexp.MustCompile(` F[\d.]+`).ReplaceAllString(lines[i], " F9999.")
 				}
 			}
-			p, messages := proveLines(t, spec, damaged, operation)
+			p, _, messages := proved(t, spec, damaged, "--operation", operation)
 			found := strings.Contains(messages, fmt.Sprintf("edited.nc:%d:", i+1))
 			for _, f := range p.Faults {
 				found = found || want[f.Line]

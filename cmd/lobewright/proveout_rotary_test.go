@@ -1,17 +1,11 @@
 package main
 
 import (
-	"bytes"
-	"encoding/json"
 	"fmt"
 	"math/rand"
-	"os"
-	"path/filepath"
 	"regexp"
 	"strings"
 	"testing"
-
-	"lobewright/export/sheet"
 )
 
 // onRotary are programs of samples cut on a rotary axis: of a plate, and of a barrel in inches.
@@ -30,39 +24,14 @@ var turning = regexp.MustCompile(`^N\d+ (?:G93 )?G1 .*[ABC]-?[\d.]+ F`)
 
 func releasedOn(t *testing.T, sample, program string) rotaryProgram {
 	t.Helper()
-	p, dir := rotaryProgram{spec: "../../samples/" + sample + ".yaml"}, t.TempDir()
-	var out, messages bytes.Buffer
-	if status := run([]string{"lobewright", "release", p.spec, "-o", dir}, &out, &messages); status != statusDone {
-		t.Fatal(status, messages.String())
-	}
-	data, err := os.ReadFile(filepath.Join(dir, sample, sample+"."+program+".nc"))
-	if err != nil {
-		t.Fatal(err)
-	}
-	p.lines = strings.Split(string(data), "\n")
+	var p rotaryProgram
+	p.spec, p.lines = programOf(t, sample, program)
 	for i, l := range p.lines {
 		if turning.MatchString(l) {
 			p.turns = append(p.turns, i)
 		}
 	}
 	return p
-}
-
-// proved runs the command on other lines of the program.
-func (p rotaryProgram) proved(t *testing.T, lines []string, flags ...string) (out sheet.ProveOut, status int, messages string) {
-	t.Helper()
-	file := filepath.Join(t.TempDir(), "edited.nc")
-	if err := os.WriteFile(file, []byte(strings.Join(lines, "\n")), 0o644); err != nil {
-		t.Fatal(err)
-	}
-	var stdout, stderr bytes.Buffer
-	status = run(append([]string{"lobewright", "proveout", p.spec, file, "--json"}, flags...), &stdout, &stderr)
-	if status != statusInput {
-		if err := json.Unmarshal(stdout.Bytes(), &out); err != nil {
-			t.Fatal(err, stderr.String())
-		}
-	}
-	return out, status, stderr.String()
 }
 
 // moved adds to the word of a letter.
@@ -107,7 +76,7 @@ func TestProveoutRotaryDamage(t *testing.T) {
 			case "far":
 				l[i] = moved(l[i], "ABC", 3600)
 			}
-			out, status, messages := p.proved(t, l)
+			out, status, messages := proved(t, p.spec, l)
 			// The end of a block is the start of the next.
 			if status == statusDone {
 				t.Errorf("%s %s, damage %d, %s at line %d, %q: not found", c.sample, c.program, n, kind, i+1, p.lines[i])
@@ -121,7 +90,7 @@ func TestProveoutRotaryDamage(t *testing.T) {
 				whole[i] = regexp.MustCompile(`G2[01]`).ReplaceAllString(l, other)
 			}
 		}
-		if out, status, _ := p.proved(t, whole); status != statusGate || len(out.Faults) == 0 || out.Faults[0].ID != "words" {
+		if out, status, _ := proved(t, p.spec, whole); status != statusGate || len(out.Faults) == 0 || out.Faults[0].ID != "words" {
 			t.Errorf("%s %s, all of it in the other units: status %d, %+v", c.sample, c.program, status, out.Faults)
 		}
 	}
@@ -141,7 +110,7 @@ func TestProveoutRotaryTool(t *testing.T) {
 		{"lane-guide", "1-mill", "0.68", "deviation", 0.00375},
 	} {
 		p := releasedOn(t, c.sample, c.program)
-		out, status, _ := p.proved(t, p.lines, "--tool-diameter", c.diameter)
+		out, status, _ := proved(t, p.spec, p.lines, "--tool-diameter", c.diameter)
 		found := false
 		for _, f := range out.Faults {
 			found = found || f.ID == c.id

@@ -16,30 +16,31 @@ import (
 
 const liftSpec = "../../samples/stick-lift.yaml"
 
-// releasedProgram releases the chalk stick lift and returns the lines of its mill program.
-func releasedProgram(t *testing.T) []string {
+// programOf releases a sample and returns the lines of one of its programs.
+func programOf(t *testing.T, sample, program string) (spec string, lines []string) {
 	t.Helper()
 	dir := t.TempDir()
+	spec = "../../samples/" + sample + ".yaml"
 	var out, messages bytes.Buffer
-	if status := run([]string{"lobewright", "release", liftSpec, "-o", dir}, &out, &messages); status != statusDone {
+	if status := run([]string{"lobewright", "release", spec, "-o", dir}, &out, &messages); status != statusDone {
 		t.Fatal(status, messages.String())
 	}
-	data, err := os.ReadFile(filepath.Join(dir, "stick-lift", "stick-lift.1-mill.nc"))
+	data, err := os.ReadFile(filepath.Join(dir, sample, sample+"."+program+".nc"))
 	if err != nil {
 		t.Fatal(err)
 	}
-	return strings.Split(string(data), "\n")
+	return spec, strings.Split(string(data), "\n")
 }
 
-// proved runs the command on a program and returns what it found.
-func proved(t *testing.T, lines []string, flags ...string) (sheet.ProveOut, int, string) {
+// proved runs the command on a program of a spec and returns what it found.
+func proved(t *testing.T, spec string, lines []string, flags ...string) (sheet.ProveOut, int, string) {
 	t.Helper()
 	file := filepath.Join(t.TempDir(), "edited.nc")
 	if err := os.WriteFile(file, []byte(strings.Join(lines, "\n")), 0o644); err != nil {
 		t.Fatal(err)
 	}
 	var out, messages bytes.Buffer
-	status := run(append([]string{"lobewright", "proveout", liftSpec, file, "--json"}, flags...), &out, &messages)
+	status := run(append([]string{"lobewright", "proveout", spec, file, "--json"}, flags...), &out, &messages)
 	var p sheet.ProveOut
 	if status != statusInput {
 		if err := json.Unmarshal(out.Bytes(), &p); err != nil {
@@ -78,7 +79,7 @@ func arcLines(lines []string) []int {
 // Our own program is proven as it stands, and after edits that change nothing a
 // control would do.
 func TestProveoutHarmlessEdits(t *testing.T) {
-	lines := releasedProgram(t)
+	spec, lines := programOf(t, "stick-lift", "1-mill")
 	edits := map[string]func([]string){
 		"as written": func([]string) {},
 		"spacing": func(l []string) {
@@ -120,7 +121,7 @@ func TestProveoutHarmlessEdits(t *testing.T) {
 	for name, edit := range edits {
 		l := append([]string(nil), lines...)
 		edit(l)
-		if p, status, messages := proved(t, l); status != statusDone || !p.Proven || len(p.Passes) != 9 || p.Follower == nil {
+		if p, status, messages := proved(t, spec, l); status != statusDone || !p.Proven || len(p.Passes) != 9 || p.Follower == nil {
 			t.Errorf("%s: status %d, faults %+v, %s", name, status, p.Faults, messages)
 		}
 	}
@@ -128,7 +129,7 @@ func TestProveoutHarmlessEdits(t *testing.T) {
 
 // Damages at 40 seeded places over all passes are each reported at their line.
 func TestProveoutFindsDamage(t *testing.T) {
-	lines := releasedProgram(t)
+	spec, lines := programOf(t, "stick-lift", "1-mill")
 	arcs := arcLines(lines)
 	r := rand.New(rand.NewSource(3))
 	for n := range 40 {
@@ -153,7 +154,7 @@ func TestProveoutFindsDamage(t *testing.T) {
 		case "inch":
 			l[i] = strings.Replace(l[i], " G", " G20 G", 1)
 		}
-		p, status, messages := proved(t, l)
+		p, status, messages := proved(t, spec, l)
 		if status == statusDone {
 			t.Errorf("damage %d, %s at line %d, %q: not found", n, kind, i+1, lines[i])
 		} else if !at(p, messages, i+1) && !(kind == "moved" && at(p, messages, i+2)) { // the end of a block is the start of the next
@@ -165,7 +166,8 @@ func TestProveoutFindsDamage(t *testing.T) {
 // A cutter other than the spec's leaves the contour too large or too small by half the
 // difference in diameter, and the follower too high by about that.
 func TestProveoutToolDiameter(t *testing.T) {
-	p, status, _ := proved(t, releasedProgram(t), "--tool-diameter", "15.9")
+	spec, lines := programOf(t, "stick-lift", "1-mill")
+	p, status, _ := proved(t, spec, lines, "--tool-diameter", "15.9")
 	if status != statusGate || p.Proven {
 		t.Fatalf("status %d, proven %v", status, p.Proven)
 	}

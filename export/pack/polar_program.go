@@ -18,13 +18,19 @@ func (j *job) polarAxes(op *gcode.Operation, o spec.Operation, eps float64) {
 		path, _, err := op.Spirals(offset)
 		return path, err
 	}
-	made := map[float64]func() (chain.Path, float64, error){}
+	type spirals struct {
+		path  chain.Path
+		scale float64
+		err   error
+	}
+	made := map[float64]spirals{}
 	op.Spirals = func(offset float64) (chain.Path, float64, error) {
-		if made[offset] == nil { // a pass is run again at each depth and as a spring pass
-			path, scale, err := j.fitSpirals(offset, eps)
-			made[offset] = func() (chain.Path, float64, error) { return path, scale, err }
+		m, ok := made[offset]
+		if !ok { // a pass is run again at each depth and as a spring pass
+			m.path, m.scale, m.err = j.fitSpirals(offset, eps)
+			made[offset] = m
 		}
-		return made[offset]()
+		return m.path, m.scale, m.err
 	}
 }
 
